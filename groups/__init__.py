@@ -1,0 +1,1 @@
+"""Functional groups, activity coefficients and phase equilibrium, without any web framework."""
