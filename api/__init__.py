@@ -1,0 +1,1 @@
+"""The HTTP service, the command line and the Python client over `groups`."""
