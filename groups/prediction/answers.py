@@ -1,0 +1,130 @@
+"""The answers of the prediction doors, as plain frozen records.
+
+Arrays run over points first, components last. A number that could not be had is NaN, and the
+matching `failure` (or the reasons of `confidence`) says why.
+"""
+
+from dataclasses import dataclass
+
+from groups.arrays import BoolArray, FloatArray
+from groups.confidence import Confidence
+from groups.equilibrium import Azeotrope
+from groups.pure import VapourPressure
+from groups.structure.molecule import Molecule
+
+
+@dataclass(frozen=True, slots=True)
+class MethodUse:
+    """One table behind an answer: its identifier, its weight (0..1) and why it was taken."""
+
+    method: str
+    weight: float
+    why: str
+
+
+@dataclass(frozen=True, slots=True)
+class ActivityAnswer:
+    """Activity coefficients and excess properties at given points of one mixture."""
+
+    components: tuple[Molecule, ...]
+    method: str
+    methods_used: tuple[MethodUse, ...]
+    temperature_K: FloatArray  # (n_points,)
+    mole_fractions: FloatArray  # (n_points, n_components)
+    ln_gamma: FloatArray  # (n_points, n_components)
+    ln_gamma_combinatorial: FloatArray  # (n_points, n_components)
+    ln_gamma_residual: FloatArray  # (n_points, n_components)
+    excess_gibbs_RT: FloatArray  # (n_points,), dimensionless
+    excess_enthalpy_J_mol: FloatArray  # (n_points,)
+    confidence: tuple[Confidence, ...]  # one a point
+
+    @property
+    def gamma(self) -> FloatArray:
+        """Activity coefficients, symmetric convention, shape (n_points, n_components)."""
+        import numpy as np
+
+        return np.exp(self.ln_gamma)
+
+
+@dataclass(frozen=True, slots=True)
+class InfiniteDilutionAnswer:
+    """ln gamma of one solute at infinite dilution in one solvent; NaN where refused."""
+
+    solute: Molecule
+    solvent: Molecule
+    temperature_K: float
+    ln_gamma_inf: float
+    method: str | None
+    methods_used: tuple[MethodUse, ...]
+    confidence: Confidence
+
+
+@dataclass(frozen=True, slots=True)
+class PhasePointAnswer:
+    """One bubble point, dew point or flash of a mixture."""
+
+    components: tuple[Molecule, ...]
+    method: str
+    methods_used: tuple[MethodUse, ...]
+    temperature_K: float
+    pressure_kPa: float
+    vapour_fraction: float  # 0 at a bubble point, 1 at a dew point
+    x: FloatArray  # (n_components,) liquid
+    y: FloatArray  # (n_components,) vapour
+    gamma: FloatArray  # (n_components,)
+    saturation_kPa: FloatArray  # (n_components,)
+    relative_volatility: FloatArray  # (n_components,) K_i over the K of the last component
+    liquid_stable: bool | None
+    failure: str | None
+    vapour_pressures: tuple[VapourPressure, ...]
+    confidence: Confidence
+
+
+@dataclass(frozen=True, slots=True)
+class LiquidSplitAnswer:
+    """Two liquids in equilibrium at one temperature, or none (`phases` empty)."""
+
+    components: tuple[Molecule, ...]
+    method: str
+    methods_used: tuple[MethodUse, ...]
+    temperature_K: float
+    splits: bool
+    phases: tuple[FloatArray, ...]  # compositions (n_components,) of the coexisting liquids
+    ln_gamma: tuple[FloatArray, ...]
+    confidence: Confidence
+
+
+@dataclass(frozen=True, slots=True)
+class AzeotropeAnswer:
+    """All azeotropes of a mixture at one pressure or one temperature."""
+
+    components: tuple[Molecule, ...]
+    method: str
+    methods_used: tuple[MethodUse, ...]
+    pressure_kPa: float | None
+    temperature_K: float | None
+    azeotropes: tuple[Azeotrope, ...]
+    vapour_pressures: tuple[VapourPressure, ...]
+    confidence: Confidence
+
+
+@dataclass(frozen=True, slots=True)
+class DiagramAnswer:
+    """A Txy or Pxy diagram of a binary."""
+
+    kind: str
+    components: tuple[Molecule, ...]
+    method: str
+    methods_used: tuple[MethodUse, ...]
+    x1: FloatArray  # (n_points,)
+    y1: FloatArray
+    temperature_K: FloatArray
+    pressure_kPa: FloatArray
+    gamma: FloatArray  # (n_points, 2)
+    relative_volatility: FloatArray  # (n_points,), of component 1 over 2
+    stable: BoolArray  # (n_points,) False inside a liquid-liquid gap
+    failure: tuple[str | None, ...]
+    azeotropes: tuple[Azeotrope, ...]
+    liquid_split: tuple[float, float] | None  # x1 of the two liquids at the boiling conditions
+    vapour_pressures: tuple[VapourPressure, ...]
+    confidence: Confidence
