@@ -1,0 +1,153 @@
+"""Reasons that come from the molecules themselves, whatever the table."""
+
+from collections.abc import Mapping, Sequence
+from itertools import combinations
+
+from groups.confidence.confidence import Reason
+from groups.confidence.vapour_rules import label
+from groups.structure.assignment import Assignment
+from groups.structure.functional import (
+    is_hydrophobe,
+    longest_chain,
+    neighbouring_polar_groups,
+    polar_groups,
+)
+from groups.structure.molecule import Molecule
+
+LONG_CHAIN_ATOMS = 10  # common practice, no source
+SIZE_RATIO = 4.0  # ratio of heavy atoms; common practice, no source
+WATER = "O"
+
+
+def polar_reasons(molecules: Sequence[Molecule]) -> list[Reason]:
+    """Neighbouring polar groups and polyfunctional molecules."""
+    reasons = []
+    for molecule in molecules:
+        polar = polar_groups(molecule.mol)
+        if neighbouring_polar_groups(molecule.mol):
+            names = " and ".join(dict.fromkeys(group.name for group in polar))
+            reasons.append(
+                Reason(
+                    "neighbouring_polar_groups",
+                    f"In {label(molecule)} polar groups ({names}) sit next to each other and "
+                    "weaken one another (induction, internal hydrogen bonds). Group methods do "
+                    "not see it and mostly overstate the polarity.",
+                    label(molecule),
+                    "moderate",
+                )
+            )
+        elif len(polar) > 1:
+            reasons.append(
+                Reason(
+                    "polyfunctional",
+                    f"{label(molecule)} carries {len(polar)} polar groups; most parameters were "
+                    "fitted to molecules with one.",
+                    label(molecule),
+                    "moderate",
+                )
+            )
+    return reasons
+
+
+def polyol_reasons(molecules: Sequence[Molecule]) -> list[Reason]:
+    """Molecules with two or more hydroxyl groups, where every table errs."""
+    return [
+        Reason(
+            "polyol",
+            f"{label(molecule)} is a polyol; with every published table such mixtures, above all "
+            "with water, can be off by a quarter to two thirds in pressure.",
+            label(molecule),
+            "low",
+        )
+        for molecule in molecules
+        if sum(group.name in HYDROXYL_NAMES for group in polar_groups(molecule.mol)) > 1
+    ]
+
+
+def size_reasons(molecules: Sequence[Molecule]) -> list[Reason]:
+    """Long chains and strong size asymmetry."""
+    reasons = [
+        Reason(
+            "long_chain",
+            f"{label(molecule)} has a chain of {longest_chain(molecule.mol)} atoms; the "
+            "combinatorial part is uncertain there and the original form overstates "
+            "the negative deviation.",
+            label(molecule),
+            "moderate",
+        )
+        for molecule in molecules
+        if longest_chain(molecule.mol) > LONG_CHAIN_ATOMS
+    ]
+    sizes = [molecule.mol.GetNumHeavyAtoms() for molecule in molecules]
+    largest, smallest = max(sizes), min(sizes)
+    if largest >= SIZE_RATIO * smallest and largest > LONG_CHAIN_ATOMS:
+        big, small = molecules[sizes.index(largest)], molecules[sizes.index(smallest)]
+        reasons.append(
+            Reason(
+                "size_asymmetry",
+                f"{label(big)} is {largest / smallest:.0f} times the size of {label(small)}; "
+                "free-volume effects that no group method holds become felt.",
+                f"{label(big)} / {label(small)}",
+                "moderate",
+            )
+        )
+    return reasons
+
+
+def water_reasons(molecules: Sequence[Molecule]) -> list[Reason]:
+    """Hydrophobes in water, at whatever dilution the mixture reaches."""
+    if all(molecule.canonical_smiles != WATER for molecule in molecules):
+        return []
+    return [
+        Reason(
+            "hydrophobe_in_water",
+            f"{label(molecule)} barely dissolves in water. Its dilute activity coefficient "
+            "there is the hardest number for a group method: original UNIFAC tends to be too "
+            "low for alkanes, and an error of a factor 2 to 10 is common.",
+            label(molecule),
+            "low",
+        )
+        for molecule in molecules
+        if is_hydrophobe(molecule.mol)
+    ]
+
+
+def isomer_reasons(
+    molecules: Sequence[Molecule], assignments: Sequence[Assignment]
+) -> list[Reason]:
+    """Components of one mixture that the table sees as the same groups."""
+    return [
+        Reason(
+            "isomers_not_told_apart",
+            f"{label(first)} and {label(second)} consist of the same groups; the method sees no "
+            "difference between them but their vapour pressures.",
+            f"{label(first)} / {label(second)}",
+            "moderate",
+        )
+        for (first, a), (second, b) in combinations(zip(molecules, assignments, strict=True), 2)
+        if a.counts == b.counts
+    ]
+
+
+def ambiguity_reasons(
+    molecules: Sequence[Molecule], changes_ln_gamma: Mapping[str, float]
+) -> list[Reason]:
+    """Molecules whose other, equally good group covers change ln gamma.
+
+    Parameters
+    ----------
+    molecules : sequence of Molecule
+    changes_ln_gamma : mapping of str to float
+        Canonical SMILES to the largest change in ln gamma that another cover brings.
+    """
+    return [
+        Reason(
+            "ambiguous_assignment",
+            f"{label(molecule)} can be split into groups in another, equally good way, which "
+            f"changes ln gamma by {changes_ln_gamma[molecule.canonical_smiles]:.2f}.",
+            label(molecule),
+            "moderate",
+        )
+        for molecule in molecules
+        if changes_ln_gamma.get(molecule.canonical_smiles, 0.0) > 0.1
+    ]

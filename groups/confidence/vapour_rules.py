@@ -1,0 +1,112 @@
+"""Reasons that come from the vapour side: vapour pressures, ideal-gas limits, association."""
+
+from collections.abc import Sequence
+
+from groups.confidence.confidence import Reason
+from groups.pure import VapourPressure
+from groups.structure.functional import is_carboxylic_acid
+from groups.structure.molecule import Molecule
+
+# Common practice, no source: an ideal vapour errs by about 1 to 3 % at 300 kPa and by 5 to 15 %
+# at 1 MPa for organic vapours.
+MODERATE_PRESSURE_KPA = 300.0
+HIGH_PRESSURE_KPA = 1000.0
+NEAR_CRITICAL_REDUCED_TEMPERATURE = 0.9
+
+
+def label(molecule: Molecule) -> str:
+    """What to call a molecule in a message: its name, else its SMILES."""
+    return molecule.name or molecule.canonical_smiles
+
+
+def pressure_reasons(highest_kPa: float) -> list[Reason]:
+    """A reason if the pressure is too high for an ideal vapour."""
+    if not highest_kPa > MODERATE_PRESSURE_KPA:
+        return []
+    high = highest_kPa > HIGH_PRESSURE_KPA
+    return [
+        Reason(
+            "pressure_too_high_for_ideal_vapour",
+            f"At {highest_kPa:.0f} kPa the vapour is not ideal; the ideal vapour used here tends "
+            "to overstate the bubble pressure"
+            + (" by 5 to 15 % or more." if high else " by a few per cent."),
+            f"{highest_kPa:.0f} kPa",
+            "low" if high else "moderate",
+        )
+    ]
+
+
+def critical_reasons(
+    molecules: Sequence[Molecule], lines: Sequence[VapourPressure], highest_K: float
+) -> list[Reason]:
+    """A reason a component that is near or above its critical temperature."""
+    reasons = []
+    for molecule, line in zip(molecules, lines, strict=True):
+        critical = line.critical_temperature_K
+        if critical is None or highest_K <= NEAR_CRITICAL_REDUCED_TEMPERATURE * critical:
+            continue
+        name = label(molecule)
+        if highest_K >= critical:
+            text = (
+                f"{name} is above its critical temperature ({critical:.1f} K): it has no vapour "
+                "pressure there, and the continued one is only a rough stand-in."
+            )
+            reasons.append(Reason("supercritical_component", text, name, "low"))
+        else:
+            text = (
+                f"{name} is near its critical temperature ({critical:.1f} K); its vapour is far "
+                "from ideal and its liquid compressible."
+            )
+            reasons.append(Reason("near_critical_component", text, name, "moderate"))
+    return reasons
+
+
+def association_reasons(molecules: Sequence[Molecule]) -> list[Reason]:
+    """A reason a carboxylic acid, whose vapour holds dimers."""
+    return [
+        Reason(
+            "vapour_dimers",
+            f"{label(molecule)} forms dimers in the vapour even at low pressure. With an ideal "
+            "vapour its volatility in mixtures is misjudged; relative volatilities with water or "
+            "esters can be off by tens of per cent.",
+            label(molecule),
+            "low",
+        )
+        for molecule in molecules
+        if is_carboxylic_acid(molecule.mol)
+    ]
+
+
+def saturation_reasons(
+    molecules: Sequence[Molecule],
+    lines: Sequence[VapourPressure],
+    lowest_K: float,
+    highest_K: float,
+) -> list[Reason]:
+    """Reasons for vapour pressures that are estimated or used outside their range."""
+    reasons = []
+    for molecule, line in zip(molecules, lines, strict=True):
+        name, error = label(molecule), 100.0 * line.uncertainty_ln
+        if line.source.startswith("estimated"):
+            reasons.append(
+                Reason(
+                    "vapour_pressure_estimated",
+                    f"The vapour pressure of {name} is estimated ({line.equation}), about "
+                    f"{error:.0f} % uncertain; every K-value of it carries that error.",
+                    name,
+                    "low" if error > 15.0 else "moderate",
+                )
+            )
+        lower, upper = line.range_K
+        if lowest_K < lower - 0.5 or highest_K > upper + 0.5:
+            outside = max(lower - lowest_K, highest_K - upper)
+            reasons.append(
+                Reason(
+                    "vapour_pressure_extrapolated",
+                    f"The vapour pressure of {name} holds from {lower:.0f} to {upper:.0f} K and "
+                    f"is continued by {outside:.0f} K.",
+                    name,
+                    "low" if outside > 50.0 else "moderate",
+                )
+            )
+    return reasons

@@ -1,0 +1,151 @@
+"""Activity coefficients at infinite dilution, many pairs at once."""
+
+from collections import defaultdict
+from collections.abc import Mapping, Sequence
+
+import numpy as np
+
+from groups.activity import ln_gamma_infinite_pairs
+from groups.activity.choice import OnMissing
+from groups.confidence import Reason, graded
+from groups.confidence.agreement_rules import agreement_reasons
+from groups.confidence.parameter_rules import temperature_reasons
+from groups.errors import MissingParameterError, MixwrightError, PredictionError
+from groups.parameters import table
+from groups.prediction.answers import InfiniteDilutionAnswer, MethodUse
+from groups.prediction.checks import check_components, check_temperatures
+from groups.prediction.choosing import Choice, choose
+from groups.prediction.liquid import liquid
+from groups.prediction.mixture_reasons import mixture_reasons
+from groups.structure.molecule import Molecule
+
+DilutePair = tuple[Molecule, Molecule, float]
+
+
+def infinite_dilution(
+    pairs: Sequence[DilutePair],
+    method: str = "auto",
+    on_missing: OnMissing = "estimate",
+) -> tuple[InfiniteDilutionAnswer, ...]:
+    """ln gamma at infinite dilution of each solute in each solvent.
+
+    Parameters
+    ----------
+    pairs : sequence of (Molecule, Molecule, float)
+        Solute, solvent and temperature in K.
+    method : str
+        An identifier of `ALL_METHODS`.
+    on_missing : {"refuse", "estimate"}
+
+    Returns
+    -------
+    tuple of InfiniteDilutionAnswer
+        One a pair, in order; NaN with a reason where no number could be had.
+
+    Raises
+    ------
+    InvalidInputError
+        If a temperature lies outside its range, a pair repeats one molecule, or the method does
+        not exist.
+
+    Source
+    ------
+    The table named by `method` in each answer; see `groups.activity`.
+    """
+    _check(pairs)
+    if method == "ideal":
+        return tuple(_ideal(pair) for pair in pairs)
+    choices = [_choice_or_refusal(pair, method, on_missing) for pair in pairs]
+    numbers = _numbers_by_method(pairs, choices)
+    return tuple(
+        _refused(pair, method, choice)
+        if isinstance(choice, PredictionError)
+        else _answered(pair, choice, {m: column[k] for m, column in numbers.items()})
+        for k, (pair, choice) in enumerate(zip(pairs, choices, strict=True))
+    )
+
+
+def _check(pairs: Sequence[DilutePair]) -> None:
+    for index, (solute, solvent, temperature_K) in enumerate(pairs):
+        try:
+            check_components([solute, solvent], least=2, most=2)
+            check_temperatures(temperature_K)
+        except MixwrightError as error:
+            error.field = f"pairs[{index}]"
+            raise
+
+
+def _choice_or_refusal(
+    pair: DilutePair, method: str, on_missing: OnMissing
+) -> Choice | PredictionError:
+    try:
+        return choose(pair[:2], method, on_missing)
+    except PredictionError as error:
+        return error
+
+
+def _numbers_by_method(
+    pairs: Sequence[DilutePair], choices: Sequence[Choice | PredictionError]
+) -> dict[str, np.ndarray]:
+    """ln gamma-infinity by every table that describes the pair; each table is asked once."""
+    rows: dict[str, list[int]] = defaultdict(list)
+    for index, choice in enumerate(choices):
+        if isinstance(choice, Choice):
+            for method in (choice.taken.method, *choice.others):
+                rows[method].append(index)
+    numbers = {}
+    for method, indices in rows.items():
+        column = np.full(len(pairs), np.nan)
+        counts = [_counts(choices[k], method) for k in indices]
+        column[indices] = ln_gamma_infinite_pairs(
+            method,
+            [solute for solute, _ in counts],
+            [solvent for _, solvent in counts],
+            np.array([pairs[k][2] for k in indices]),
+        )
+        numbers[method] = column
+    return numbers
+
+
+def _counts(
+    choice: Choice | PredictionError, method: str
+) -> tuple[Mapping[int, int], Mapping[int, int]]:
+    assert isinstance(choice, Choice)
+    solute, solvent = choice.counts(method)
+    return solute, solvent
+
+
+def _answered(
+    pair: DilutePair, choice: Choice, numbers: Mapping[str, float]
+) -> InfiniteDilutionAnswer:
+    solute, solvent, temperature_K = pair
+    taken = choice.taken.method
+    ln_gamma = float(numbers[taken])
+    spreads = {other: abs(float(numbers[other]) - ln_gamma) for other in choice.others}
+    reasons = [
+        *mixture_reasons((solute, solvent), choice),
+        *temperature_reasons(table(taken), temperature_K, temperature_K),
+        *agreement_reasons(taken, spreads),
+    ]
+    return InfiniteDilutionAnswer(
+        solute,
+        solvent,
+        temperature_K,
+        ln_gamma,
+        taken,
+        (MethodUse(taken, 1.0, choice.why),),
+        graded(reasons),
+    )
+
+
+def _ideal(pair: DilutePair) -> InfiniteDilutionAnswer:
+    mixture = liquid(pair[:2], "ideal", "refuse")
+    return InfiniteDilutionAnswer(
+        *pair, 0.0, "ideal", mixture.methods_used, graded(mixture.fixed_reasons)
+    )
+
+
+def _refused(pair: DilutePair, method: str, error: PredictionError) -> InfiniteDilutionAnswer:
+    code = "missing_parameter" if isinstance(error, MissingParameterError) else "no_groups"
+    confidence = graded([Reason(code, str(error), method, "none")])
+    return InfiniteDilutionAnswer(*pair, float("nan"), None, (), confidence)

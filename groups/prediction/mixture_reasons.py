@@ -1,0 +1,81 @@
+"""Reasons to doubt a mixture that depend on neither temperature nor composition."""
+
+from collections.abc import Mapping, Sequence
+
+import numpy as np
+
+from groups.activity import activity_model
+from groups.confidence import Reason
+from groups.confidence.parameter_rules import completed_reasons, suspect_reasons
+from groups.confidence.structure_rules import (
+    ambiguity_reasons,
+    isomer_reasons,
+    polar_reasons,
+    polyol_reasons,
+    size_reasons,
+    water_reasons,
+)
+from groups.errors import MissingParameterError
+from groups.parameters import table
+from groups.prediction.choosing import Choice
+from groups.structure.molecule import Molecule
+
+REFERENCE_TEMPERATURE_K = 298.15
+
+
+def mixture_reasons(molecules: Sequence[Molecule], choice: Choice) -> tuple[Reason, ...]:
+    """Reasons from the table taken and from the molecules, whatever the conditions.
+
+    Parameters
+    ----------
+    molecules : sequence of Molecule
+    choice : Choice
+
+    Returns
+    -------
+    tuple of Reason
+    """
+    taken = choice.taken
+    groups = table(taken.method)
+    return (
+        *choice.reasons,
+        *completed_reasons(groups, taken.main_numbers),
+        *suspect_reasons(groups, taken.main_numbers),
+        *polyol_reasons(molecules),
+        *water_reasons(molecules),
+        *polar_reasons(molecules),
+        *size_reasons(molecules),
+        *isomer_reasons(molecules, choice.assignments[taken.method]),
+        *ambiguity_reasons(molecules, _changes_by_alternatives(molecules, choice)),
+    )
+
+
+def _changes_by_alternatives(molecules: Sequence[Molecule], choice: Choice) -> dict[str, float]:
+    """Largest change in ln gamma that another, equally good cover of a molecule brings.
+
+    Taken at equal fractions and at infinite dilution of each component, at 298.15 K.
+    """
+    method = choice.taken.method
+    counts = choice.counts(method)
+    changes: dict[str, float] = {}
+    for index, assignment in enumerate(choice.assignments[method]):
+        for alternative in assignment.alternatives:
+            other = [*counts[:index], dict(alternative), *counts[index + 1 :]]
+            change = _largest_change(method, counts, other)
+            smiles = molecules[index].canonical_smiles
+            changes[smiles] = max(changes.get(smiles, 0.0), change)
+    return changes
+
+
+def _largest_change(
+    method: str, counts: Sequence[Mapping[int, int]], other: Sequence[Mapping[int, int]]
+) -> float:
+    """Largest |change in ln gamma| between two ways to split; 0 where the other has no number."""
+    n = len(counts)
+    points = np.vstack([np.full((1, n), 1.0 / n), np.eye(n)])
+    try:
+        alternative = activity_model(other, method).ln_gamma(REFERENCE_TEMPERATURE_K, points)
+    except MissingParameterError:
+        return 0.0
+    first = activity_model(counts, method).ln_gamma(REFERENCE_TEMPERATURE_K, points)
+    return float(np.max(np.abs(alternative - first)))
