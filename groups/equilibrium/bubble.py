@@ -63,7 +63,7 @@ def bubble_pressure(
         y = np.exp(ln_partial - correction - ln_pressure[:, None])
         absurd = ~(np.abs(ln_pressure) < 600.0)
         pressure = np.exp(np.where(absurd, 0.0, ln_pressure))
-        change = _new_correction(system, T, pressure, y, correction)
+        change = new_correction(system, T, pressure, y, correction)
         if change <= VAPOUR_TOLERANCE:
             break
     failure = tuple(ABSURD_PRESSURE if a else None for a in absurd)
@@ -106,7 +106,7 @@ def bubble_temperature(
         search = _BubbleSearch(system, np.log(P), x, correction)
         T, found = rising_root(search, T)
         y = search.vapour
-        change = _new_correction(system, T, P, y, correction)
+        change = new_correction(system, T, P, y, correction)
         if change <= VAPOUR_TOLERANCE:
             break
     failure = tuple(None if ok else NO_BUBBLE_TEMPERATURE for ok in found)
@@ -150,7 +150,7 @@ class _BubbleSearch:
         return total - self.ln_pressure[index], (y * slopes).sum(axis=1)
 
 
-def _new_correction(
+def new_correction(
     system: System, T: FloatArray, P: FloatArray, y: FloatArray, correction: FloatArray
 ) -> float:
     """Put the correction of this vapour into `correction`; the largest change."""

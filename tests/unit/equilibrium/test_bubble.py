@@ -2,10 +2,10 @@
 
 import numpy as np
 import pytest
+from equilibrium_mixtures import BENZENE, LINES, TOLUENE, regular_system
 
 from groups.equilibrium import bubble_pressure, bubble_temperature
 from groups.errors import FractionSumError, OutOfRangeError, ShapeError
-from tests.unit.equilibrium.mixtures import BENZENE, LINES, TOLUENE, regular_system
 
 IDEAL_PAIR = regular_system(0.0, lines=(BENZENE, TOLUENE))
 # Rounding of exp and log over about ten operations.

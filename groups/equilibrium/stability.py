@@ -1,0 +1,88 @@
+"""Would this liquid split? The tangent-plane test for any number of components."""
+
+from dataclasses import dataclass
+
+import numpy as np
+import numpy.typing as npt
+
+from groups.arrays import BoolArray, FloatArray
+from groups.equilibrium.conditions import checked_fractions, checked_temperature, paired
+from groups.equilibrium.states import safe_log
+from groups.equilibrium.system import LiquidModel
+from groups.equilibrium.tangent_plane import stationary_points, trial_starts
+
+#: A tangent-plane distance above minus this counts as zero: the trial found the liquid itself,
+#: whose distance is zero to the rounding of ln gamma.
+ZERO_DISTANCE = 1e-10
+
+
+@dataclass(frozen=True, slots=True)
+class Stability:
+    """Result of the tangent-plane test of n liquids.
+
+    Attributes
+    ----------
+    stable : bool array of shape (n,)
+    distance : array of shape (n,)
+        Lowest tangent-plane distance found, in units of RT; negative where unstable.
+    trial : array of shape (n, n_components)
+        The trial liquid at that distance: a first guess of a second liquid where unstable.
+    """
+
+    stable: BoolArray
+    distance: FloatArray
+    trial: FloatArray
+
+
+def stability(
+    liquid: LiquidModel, temperature_K: npt.ArrayLike, mole_fractions: npt.ArrayLike
+) -> Stability:
+    """Tangent-plane test of liquids against splitting into two liquids.
+
+    Parameters
+    ----------
+    liquid : LiquidModel
+    temperature_K : float or array of shape (n,)
+        In K, 40 to 2000.
+    mole_fractions : array of shape (n_components,) or (n, n_components)
+        Each row sums to 1. Zeros are allowed: a component that is absent stays absent.
+
+    Returns
+    -------
+    Stability
+
+    Raises
+    ------
+    OutOfRangeError, FractionSumError, ShapeError
+
+    Source
+    ------
+    Michelsen, Fluid Phase Equilibria 9 (1982) 1-19. Starts: each pure component, pairs of them,
+    the mean, the ideal answer, and both sides of the liquid itself (which a spinodal needs).
+    """
+    x = checked_fractions(mole_fractions, liquid.n_components)
+    T, x = paired(checked_temperature(temperature_K), x)
+    m, n = x.shape
+    if not m:
+        return Stability(np.empty(0, dtype=bool), np.empty(0), x)
+    plane = safe_log(x) + liquid.ln_gamma(T, x)
+    beside = [_beside(x, factor) for factor in (0.9, 1.1)] if n <= 3 else []
+    starts = np.concatenate([trial_starts(plane), *beside])
+    s = len(starts)
+    points = stationary_points(
+        liquid, np.tile(T, s), np.tile(plane, (s, 1)), starts.reshape(s * m, n)
+    )
+    # A trial that has not converged but lies below the plane is proof enough.
+    height = np.where(np.isfinite(points.height), points.height, 0.0).reshape(s, m)
+    best = height.argmin(axis=0)
+    rows = np.arange(m)
+    distance = height[best, rows]
+    trial = points.liquid.reshape(s, m, n)[best, rows]
+    return Stability(distance >= -ZERO_DISTANCE, distance, trial)
+
+
+def _beside(x: FloatArray, factor: float) -> FloatArray:
+    """The liquids with one component at a time raised or lowered."""
+    n = x.shape[1]
+    moved = x[None] * (1.0 + (factor - 1.0) * np.eye(n))[:, None, :]
+    return np.asarray(moved / moved.sum(axis=2, keepdims=True))
