@@ -174,7 +174,7 @@ class VapourPressure:
             miss = self.ln_kPa(1.0 / u) - target
             lower, upper = np.where(miss > 0.0, u, lower), np.where(miss > 0.0, upper, u)
             step = u + miss / (self.slope(1.0 / u) / u**2)
-            u = np.where((step > lower) & (step < upper), step, 0.5 * (lower + upper))
+            u = np.where((step >= lower) & (step <= upper), step, 0.5 * (lower + upper))
             if np.all((np.abs(miss) < _LN_P_TOLERANCE) | (upper - lower < 1e-15 * upper)):
                 break
         u = np.where(target >= ln_edges[0], above, np.where(target <= ln_edges[1], below, u))
