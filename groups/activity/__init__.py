@@ -1,5 +1,6 @@
 """Activity coefficients of liquid mixtures with the UNIFAC family of methods."""
 
+from groups.activity.batch import ln_gamma_infinite_pairs, missing_parameter_pairs
 from groups.activity.excess import (
     excess_enthalpy,
     excess_gibbs,
@@ -19,4 +20,6 @@ __all__ = [
     "excess_gibbs",
     "excess_heat_capacity",
     "ln_gamma_infinite",
+    "ln_gamma_infinite_pairs",
+    "missing_parameter_pairs",
 ]

@@ -71,7 +71,11 @@ def _check_ranges(T: FloatArray, x: FloatArray) -> None:
 
 
 def evaluate(
-    kernel: Kernel, T: FloatArray, x: FloatArray, tail: tuple[int, ...], width: int
+    kernel: Kernel,
+    T: FloatArray,
+    x: FloatArray,
+    tail: tuple[int, ...],
+    widths: tuple[int, int],
 ) -> FloatArray:
     """Run a kernel over all points, a cache-sized block at a time.
 
@@ -85,8 +89,9 @@ def evaluate(
         Mole fractions.
     tail : tuple of int
         Shape of the answer at one point.
-    width : int
-        Numbers that the kernel's largest working array needs at one point.
+    widths : tuple of int
+        Numbers that the kernel's largest working array needs for one temperature, and those it
+        needs for one point.
 
     Returns
     -------
@@ -108,7 +113,7 @@ def evaluate(
         ) from error
     flat_T, flat_x = _as_grid(T, x, points)
     answer = np.empty((flat_T.size, flat_x.shape[1], *tail))
-    for rows, columns in _blocks(flat_T.size, flat_x.shape[1], width):
+    for rows, columns in _blocks(flat_T.size, flat_x.shape[1], widths):
         shared = flat_x[:, columns] if flat_x.shape[0] == 1 else flat_x[rows, columns]
         answer[rows, columns] = kernel(flat_T[rows], shared)
     return answer.reshape(*points, *tail)
@@ -131,9 +136,10 @@ def _as_grid(
     return every_T, np.broadcast_to(x, (*points, n_components)).reshape(-1, 1, n_components)
 
 
-def _blocks(n_rows: int, n_columns: int, width: int) -> Iterator[tuple[slice, slice]]:
-    columns = max(1, min(n_columns, BLOCK_NUMBERS // width))
-    rows = max(1, BLOCK_NUMBERS // (width * columns))
+def _blocks(n_rows: int, n_columns: int, widths: tuple[int, int]) -> Iterator[tuple[slice, slice]]:
+    of_row, of_point = widths
+    columns = max(1, min(n_columns, BLOCK_NUMBERS // of_point))
+    rows = max(1, BLOCK_NUMBERS // max(of_row, of_point * columns))
     for row in range(0, n_rows, rows):
         for column in range(0, n_columns, columns):
             yield slice(row, row + rows), slice(column, column + columns)

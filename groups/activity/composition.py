@@ -10,6 +10,55 @@ from groups.errors import InvalidInputError, MissingParameterError
 from groups.parameters import MethodTable
 
 
+def group_entries(
+    parameters: MethodTable, assignments: Sequence[Mapping[int, int]]
+) -> tuple[IntArray, IntArray, FloatArray]:
+    """Return the group counts of several molecules as flat columns.
+
+    Parameters
+    ----------
+    parameters : MethodTable
+        Published table.
+    assignments : sequence of mapping
+        One mapping a molecule: subgroup number to count.
+
+    Returns
+    -------
+    tuple of IntArray, IntArray, FloatArray, each of shape (n_entries,)
+        Index of the molecule, index of the subgroup in the table, count.
+
+    Raises
+    ------
+    InvalidInputError
+        For a subgroup number that the table lacks.
+    """
+    column = {int(number): k for k, number in enumerate(parameters.subgroup_numbers)}
+    owners, columns, counts = [], [], []
+    for i, assignment in enumerate(assignments):
+        for number, count in assignment.items():
+            if number not in column:
+                raise InvalidInputError(
+                    f"Method '{parameters.method}' has no subgroup {number} (component {i}).",
+                    cure="Use the subgroup numbers of GET /v1/methods/{id}.",
+                    field=f"components[{i}]",
+                )
+            if not count >= 0:
+                raise InvalidInputError(
+                    f"A group count must be 0 or more. Got {count} of subgroup {number} "
+                    f"(component {i}).",
+                    cure="Give each group as often as it occurs in the molecule.",
+                    field=f"components[{i}]",
+                )
+            owners.append(i)
+            columns.append(column[number])
+            counts.append(count)
+    return (
+        np.array(owners, dtype=np.int64),
+        np.array(columns, dtype=np.int64),
+        np.array(counts, dtype=np.float64),
+    )
+
+
 def counts_matrix(parameters: MethodTable, assignments: Sequence[Mapping[int, int]]) -> FloatArray:
     """Return nu, how often each subgroup occurs in each component.
 
@@ -36,18 +85,21 @@ def counts_matrix(parameters: MethodTable, assignments: Sequence[Mapping[int, in
             cure="Give at least one component.",
             field="components",
         )
-    columns = {int(number): k for k, number in enumerate(parameters.subgroup_numbers)}
-    nu = np.zeros((len(assignments), len(columns)))
-    for i, counts in enumerate(assignments):
-        for number, count in counts.items():
-            if number not in columns:
-                raise InvalidInputError(
-                    f"Method '{parameters.method}' has no subgroup {number} (component {i}).",
-                    cure="Use the subgroup numbers of GET /v1/methods/{id}.",
-                    field=f"components[{i}]",
-                )
-            nu[i, columns[number]] += count
+    owner, column, count = group_entries(parameters, assignments)
+    nu = np.zeros((len(assignments), parameters.subgroup_numbers.size))
+    nu[owner, column] = count
     return nu
+
+
+def check_components(volume: FloatArray, area: FloatArray) -> None:
+    """Raise for a component without groups, or whose groups all lack a volume or a surface."""
+    empty = np.flatnonzero(~((volume > 0.0) & (area > 0.0)))
+    if empty.size:
+        raise InvalidInputError(
+            f"Component {empty[0]} has no groups with a volume and a surface.",
+            cure="Give the groups of every component, with counts of at least 1.",
+            field=f"components[{empty[0]}]",
+        )
 
 
 def missing_parameters(parameters: MethodTable) -> BoolArray:
@@ -92,7 +144,7 @@ def mixture_groups(
     main_of_subgroup = np.equal.outer(parameters.subgroup_main, np.arange(parameters.a.shape[0]))
     surface = (nu * parameters.Q) @ main_of_subgroup
     volume, area = nu @ parameters.R, surface.sum(axis=1)
-    _check_components(volume, area)
+    check_components(volume, area)
     present = np.flatnonzero(surface.any(axis=0))
     _check_parameters(parameters, present)
     square = np.ix_(present, present)
@@ -115,16 +167,6 @@ def _with_zero_diagonal(values: FloatArray) -> FloatArray:
     own = values.copy()
     np.fill_diagonal(own, np.nan_to_num(np.diagonal(values)))
     return own
-
-
-def _check_components(volume: FloatArray, area: FloatArray) -> None:
-    empty = np.flatnonzero(~((volume > 0.0) & (area > 0.0)))
-    if empty.size:
-        raise InvalidInputError(
-            f"Component {empty[0]} has no groups with a volume and a surface.",
-            cure="Give the groups of every component, with counts of at least 1.",
-            field=f"components[{empty[0]}]",
-        )
 
 
 def _check_parameters(parameters: MethodTable, present: IntArray) -> None:

@@ -29,13 +29,11 @@ temperatures share the compositions; B is (t, C, M); results are (t, m, C).
 """
 
 from dataclasses import dataclass
-from typing import Literal
 
 import numpy as np
 
 from groups.arrays import FloatArray
-
-PsiForm = Literal["constant", "quadratic", "logarithmic"]
+from groups.parameters import PsiForm
 
 COORDINATION_NUMBER = 10.0  # z of the lattice, the same in every published table
 REFERENCE_TEMPERATURE_K = 298.15  # T0 of the logarithmic form, Larsen et al. 1987
@@ -125,16 +123,32 @@ def ln_psi(
 
 def group_fields(groups: MixtureGroups, T: FloatArray, order: int = 0) -> tuple[FloatArray, ...]:
     """Return B and, up to `order`, dB/dT and d2B/dT2; each (t, C, M) for T of shape (t,)."""
-    parameters = (groups.a, groups.b, groups.c, groups.psi)
-    at = T[:, None, None]
+    # (M, t, M) with the summed group first makes Z psi one product instead of one a temperature.
+    parameters = (groups.a[:, None], groups.b[:, None], groups.c[:, None], groups.psi)
+    at = T[:, None]
     psi = np.exp(ln_psi(*parameters, at))
-    fields = [groups.surface @ psi]
+    weights = [psi]
     if order >= 1:
         slope = ln_psi(*parameters, at, 1)
-        fields.append(groups.surface @ (psi * slope))
+        weights.append(psi * slope)
     if order >= 2:
-        fields.append(groups.surface @ (psi * (slope**2 + ln_psi(*parameters, at, 2))))
-    return tuple(fields)
+        weights.append(psi * (slope**2 + ln_psi(*parameters, at, 2)))
+    n, n_main = groups.surface.shape
+    return tuple(
+        (groups.surface @ weight.reshape(n_main, -1)).reshape(n, -1, n_main).swapaxes(0, 1)
+        for weight in weights
+    )
+
+
+def _product(left: FloatArray, right: FloatArray) -> FloatArray:
+    """left @ right, (t, m, K) by (t, K, L) or (K, L), without a library call for every row."""
+    if right.ndim == 2:
+        product = left.reshape(-1, left.shape[-1]) @ right
+        return product.reshape(*left.shape[:-1], right.shape[-1])
+    if left.shape[-2] == 1:
+        single: FloatArray = np.einsum("...mk,...kl->...ml", left, right)
+        return single
+    return left @ right
 
 
 def combinatorial(groups: MixtureGroups, x: FloatArray) -> FloatArray:
@@ -161,22 +175,14 @@ def combinatorial(groups: MixtureGroups, x: FloatArray) -> FloatArray:
 def residual(groups: MixtureGroups, x: FloatArray, B: FloatArray) -> FloatArray:
     """Return the residual part of ln gamma, (t, m, C); the equation in the module's head."""
     Z, q = groups.surface, groups.area
-    D = x @ B
-    N_D = (x @ Z) / D
+    D = _product(x, B)
+    N_D = _product(x, Z) / D
+    part = _product(N_D, -B.swapaxes(1, 2))
     # ln s is the same for every group and sum_m Z_im = q_i, so it is added once a point.
-    np.log(D, out=D)
-    part: FloatArray = D @ -Z.T
-    part -= N_D @ B.swapaxes(1, 2)
+    part -= _product(np.log(D, out=D), Z.T)
     part += q * np.log(x @ q)[..., None]
-    part += (q + _pure(groups, B))[:, None, :]
+    part += (q + np.einsum("im,tim->ti", Z, np.log(B / q[:, None])))[:, None, :]
     return part
-
-
-def _pure(groups: MixtureGroups, B: FloatArray) -> FloatArray:
-    """Sum_m Z_im ln(B_im / q_i): what pure i takes from the reference solution, (t, C)."""
-    Z, q = groups.surface, groups.area
-    pure: FloatArray = np.einsum("im,tim->ti", Z, np.log(B / q[:, None]))
-    return pure
 
 
 def residual_slope(
@@ -187,11 +193,12 @@ def residual_slope(
     The combinatorial part does not depend on temperature, so this is the whole slope.
     """
     Z = groups.surface
-    D, dD = x @ B, x @ dB
-    N_D, dD_D = (x @ Z) / D, dD / D
-    slope: FloatArray = (N_D * dD_D) @ B.swapaxes(1, 2)
-    slope -= N_D @ dB.swapaxes(1, 2)
-    slope -= dD_D @ Z.T
+    D, dD = _product(x, B), _product(x, dB)
+    N_D, dD_D = _product(x, Z) / D, dD / D
+    # (B/D)' = B'/D - B D'/D^2
+    slope = _product(N_D * dD_D, B.swapaxes(1, 2))
+    slope -= _product(N_D, dB.swapaxes(1, 2))
+    slope -= _product(dD_D, Z.T)
     slope += np.einsum("im,tim->ti", Z, dB / B)[:, None, :]
     return slope
 
@@ -201,13 +208,13 @@ def residual_curvature(
 ) -> FloatArray:
     """Return d2 ln gamma / dT2 at constant composition, (t, m, C), 1/K^2."""
     Z = groups.surface
-    D, dD, ddD = x @ B, x @ dB, x @ ddB
-    N_D, dD_D, ddD_D = (x @ Z) / D, dD / D, ddD / D
+    D, dD, ddD = _product(x, B), _product(x, dB), _product(x, ddB)
+    N_D, dD_D, ddD_D = _product(x, Z) / D, dD / D, ddD / D
     # (B/D)'' = B''/D - 2 B' D'/D^2 + B (2 D'^2/D - D'')/D^2
-    curvature: FloatArray = -(N_D @ ddB.swapaxes(1, 2))
-    curvature += (2.0 * N_D * dD_D) @ dB.swapaxes(1, 2)
-    curvature -= (N_D * (2.0 * dD_D**2 - ddD_D)) @ B.swapaxes(1, 2)
-    curvature -= (ddD_D - dD_D**2) @ Z.T
+    curvature = _product(2.0 * N_D * dD_D, dB.swapaxes(1, 2))
+    curvature -= _product(N_D, ddB.swapaxes(1, 2))
+    curvature -= _product(N_D * (2.0 * dD_D**2 - ddD_D), B.swapaxes(1, 2))
+    curvature -= _product(ddD_D - dD_D**2, Z.T)
     curvature += np.einsum("im,tim->ti", Z, ddB / B - (dB / B) ** 2)[:, None, :]
     return curvature
 

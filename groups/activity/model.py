@@ -124,7 +124,7 @@ class GroupContributionModel:
         """
         T, x = checked_points(temperature_K, mole_fractions, self.n_components)
         answer = self._evaluate(self._residual, T, x)
-        answer += kernel.combinatorial(self.groups, x)
+        answer += self._combinatorial(x)
         return answer
 
     def ln_gamma_parts(
@@ -133,7 +133,7 @@ class GroupContributionModel:
         """Return the combinatorial and the residual part of ln gamma; arguments as `ln_gamma`."""
         T, x = checked_points(temperature_K, mole_fractions, self.n_components)
         residual = self._evaluate(self._residual, T, x)
-        combinatorial = np.broadcast_to(kernel.combinatorial(self.groups, x), residual.shape)
+        combinatorial = np.broadcast_to(self._combinatorial(x), residual.shape)
         return combinatorial.copy(), residual
 
     def ln_gamma_slope(self, temperature_K: ArrayLike, mole_fractions: ArrayLike) -> FloatArray:
@@ -159,13 +159,20 @@ class GroupContributionModel:
         """
         T, x = checked_points(temperature_K, mole_fractions, self.n_components)
         n, n_main = self.groups.surface.shape
-        answer = evaluate(self._mole_derivatives, T, x, (n, n), n * n_main)
+        answer = evaluate(self._mole_derivatives, T, x, (n, n), (n_main**2, n * n_main))
         answer += kernel.combinatorial_mole_derivatives(self.groups, x)
         return answer
 
     def _evaluate(self, run: Kernel, T: FloatArray, x: FloatArray) -> FloatArray:
         n, n_main = self.groups.surface.shape
-        return evaluate(run, T, x, (n,), n_main)
+        return evaluate(run, T, x, (n,), (n_main**2, n_main))
+
+    def _combinatorial(self, x: FloatArray) -> FloatArray:
+        n = self.n_components
+        any_T = np.ones(())
+        return evaluate(
+            lambda _, block: kernel.combinatorial(self.groups, block), any_T, x, (n,), (1, n)
+        )
 
     def _residual(self, T: FloatArray, x: FloatArray) -> FloatArray:
         return kernel.residual(self.groups, x, *kernel.group_fields(self.groups, T))
