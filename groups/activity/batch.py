@@ -235,10 +235,7 @@ def _residual(
 ) -> FloatArray:
     """The residual equation of the kernel with x = (0, 1): N = Z_2, D = B_2, s = q_2."""
     square = present[:, :, None], present[:, None, :]
-    a, b, c = (
-        np.where(square[0] == square[1], 0.0, values[square])
-        for values in (parameters.a, parameters.b, parameters.c)
-    )
+    a, b, c = parameters.a[square], parameters.b[square], parameters.c[square]
     psi = np.exp(kernel.ln_psi(a, b, c, parameters.psi, T[:, None, None]))
     Z1, Z2 = (np.take_along_axis(one.surface, present, axis=1) for one in (solute, solvent))
     B1, B2 = (np.einsum("nk,nkm->nm", Z, psi) for Z in (Z1, Z2))

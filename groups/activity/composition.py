@@ -105,9 +105,6 @@ def check_components(volume: FloatArray, area: FloatArray) -> None:
 def missing_parameters(parameters: MethodTable) -> BoolArray:
     """Return (n_main, n_main), True where a pair lacks a parameter in either direction."""
     absent = np.isnan(parameters.a)
-    if parameters.psi != "constant":
-        absent |= np.isnan(parameters.b) | np.isnan(parameters.c)
-    np.fill_diagonal(absent, False)
     missing: BoolArray = absent | absent.T
     return missing
 
@@ -152,21 +149,14 @@ def mixture_groups(
         volume=volume,
         area=area,
         surface=np.ascontiguousarray(surface[:, present]),
-        a=_with_zero_diagonal(parameters.a[square]),
-        b=_with_zero_diagonal(parameters.b[square]),
-        c=_with_zero_diagonal(parameters.c[square]),
+        a=parameters.a[square],
+        b=parameters.b[square],
+        c=parameters.c[square],
         psi=parameters.psi,
         exponent=parameters.combinatorial_exponent,
         staverman_guggenheim=parameters.staverman_guggenheim,
     )
     return groups, tuple(int(number) for number in parameters.main_numbers[present])
-
-
-def _with_zero_diagonal(values: FloatArray) -> FloatArray:
-    """A main group does not interact with itself, whatever the table leaves blank there."""
-    own = values.copy()
-    np.fill_diagonal(own, np.nan_to_num(np.diagonal(values)))
-    return own
 
 
 def _check_parameters(parameters: MethodTable, present: IntArray) -> None:
