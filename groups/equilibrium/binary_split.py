@@ -114,6 +114,15 @@ def logit_grid(liquid: LiquidModel, temperature_K: FloatArray) -> FloatArray:
     return np.concatenate([below, core, above])
 
 
+def may_split(liquid: LiquidModel, temperature_K: FloatArray) -> bool:
+    """False where dh/ds stays well above zero at all these temperatures: one quick look at many."""
+    s = logit_grid(liquid, temperature_K)
+    x = fractions(s)
+    ln_gamma = liquid.ln_gamma(temperature_K[:, None], x)
+    h = s + ln_gamma[..., 0] - ln_gamma[..., 1]
+    return bool((np.diff(h, axis=1) < SUSPICIOUS_SLOPE * np.diff(s)).any())
+
+
 @dataclass(frozen=True, slots=True)
 class _Curve:
     """s, h(s), ln a1 and ln a2 along a grid at one temperature."""
@@ -172,6 +181,14 @@ def ln_activity(liquid: LiquidModel, T: float, s: FloatArray) -> FloatArray:
     return np.asarray(ln_x + liquid.ln_gamma(np.full(len(s), T), fractions(s)))
 
 
+def activity_difference_slope(liquid: LiquidModel, T: float, s: FloatArray) -> FloatArray:
+    """dh/ds of shape (len(s),): negative where the liquid is intrinsically unstable."""
+    x = fractions(s)
+    d = liquid.ln_gamma_mole_derivatives(np.full(len(s), T), x)
+    twisted = d[:, 0, 0] - d[:, 0, 1] - d[:, 1, 0] + d[:, 1, 1]
+    return np.asarray(1.0 + x[:, 0] * x[:, 1] * twisted)
+
+
 def _common_tangent(
     liquid: LiquidModel, T: float, curve: _Curve, top: int, bottom: int
 ) -> tuple[float, float] | None:
@@ -213,13 +230,12 @@ def polish_tangent(
 ) -> tuple[float, float] | None:
     """Newton on equal activities of both components; None where it does not arrive."""
     s = np.array([s_left, s_right])
-    step = 1e-5
     for _ in range(NEWTON_STEPS):
-        ln_a = ln_activity(liquid, T, np.concatenate([s - step, s, s + step])).reshape(3, 2, 2)
-        gap = ln_a[1, 1] - ln_a[1, 0]  # right less left: (ln a1, ln a2)
+        ln_a = ln_activity(liquid, T, s)
+        gap = ln_a[1] - ln_a[0]  # right less left: (ln a1, ln a2)
         if np.abs(gap).max() <= TOLERANCE * 0.01:
             break
-        slope = (ln_a[2, :, 0] - ln_a[0, :, 0] - ln_a[2, :, 1] + ln_a[0, :, 1]) / (2 * step)
+        slope = activity_difference_slope(liquid, T, s)
         change = _tangent_step(gap, slope, fractions(s))
         size = float(np.abs(change).max())
         if not np.isfinite(size):

@@ -14,6 +14,8 @@ from groups.equilibrium.tangent_plane import stationary_points, trial_starts
 #: A tangent-plane distance above minus this counts as zero: the trial found the liquid itself,
 #: whose distance is zero to the rounding of ln gamma.
 ZERO_DISTANCE = 1e-10
+#: A scaled curvature above minus this counts as zero (its scale is 1, for an ideal mixture).
+FLAT = 1e-9
 
 
 @dataclass(frozen=True, slots=True)
@@ -78,7 +80,16 @@ def stability(
     rows = np.arange(m)
     distance = height[best, rows]
     trial = points.liquid.reshape(s, m, n)[best, rows]
-    return Stability(distance >= -ZERO_DISTANCE, distance, trial)
+    stable = (distance >= -ZERO_DISTANCE) & (_lowest_curvature(liquid, T, x) >= -FLAT)
+    return Stability(stable, distance, trial)
+
+
+def _lowest_curvature(liquid: LiquidModel, T: FloatArray, x: FloatArray) -> FloatArray:
+    """Lowest eigenvalue of the scaled second derivative of the Gibbs energy of mixing."""
+    root = np.sqrt(x)
+    slope = liquid.ln_gamma_mole_derivatives(T, x)
+    matrix = root[:, :, None] * root[:, None, :] * slope + np.eye(x.shape[1])
+    return np.asarray(np.linalg.eigvalsh(matrix)[:, 0])
 
 
 def _beside(x: FloatArray, factor: float) -> FloatArray:

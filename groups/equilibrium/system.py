@@ -33,6 +33,11 @@ class LiquidModel(Protocol):
     ) -> FloatArray:
         """d ln gamma / dT at constant composition, in 1/K, of shape (..., n_components)."""
 
+    def ln_gamma_mole_derivatives(
+        self, temperature_K: npt.ArrayLike, mole_fractions: npt.ArrayLike
+    ) -> FloatArray:
+        """n d ln gamma_i / dn_j of shape (..., n_components i, n_components j); symmetric."""
+
 
 class SaturationLine(Protocol):
     """Vapour pressure of one pure component, continued beyond its range."""

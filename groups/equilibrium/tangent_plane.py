@@ -16,7 +16,6 @@ from dataclasses import dataclass
 import numpy as np
 
 from groups.arrays import BoolArray, FloatArray, IntArray
-from groups.equilibrium.composition_slope import composition_slope
 from groups.equilibrium.system import LiquidModel
 
 #: Largest |ln w_i + ln gamma_i - d_i - k|; k itself is then right to the square of this.
@@ -74,7 +73,6 @@ class _Search:
         self.best_u, self.best_w = self.u.copy(), _softmax(self.u)
         self.best_height = np.full(len(T), np.inf)
         self.best_mismatch = np.zeros_like(d)  # of the best point: ln w + ln gamma - d - k
-        self.best_ln_gamma = np.zeros_like(d)
         self.step = np.zeros_like(d)
         self.retreat = np.zeros(len(T), dtype=bool)
         self.found = np.zeros(len(T), dtype=bool)
@@ -93,7 +91,7 @@ class _Search:
         better = rows[kept]
         self.best_u[better] = np.where(present, ln_w, -np.inf)[kept]
         self.best_w[better], self.best_height[better] = w[kept], height[kept]
-        self.best_mismatch[better], self.best_ln_gamma[better] = mismatch[kept], ln_gamma[kept]
+        self.best_mismatch[better] = mismatch[kept]
         weight = (w > 1e-290) & present
         done = kept & (np.abs(np.where(weight, mismatch, 0.0)).max(axis=1) <= TOLERANCE)
         self.found[rows[done]] = True
@@ -117,17 +115,9 @@ class _Search:
     def _newton(self, rows: IntArray) -> FloatArray:
         """Newton step in ln w, on the scaled Hessian with its curvature kept positive."""
         w, mismatch = self.best_w[rows], self.best_mismatch[rows]
-        slope = composition_slope(self.liquid, self.T[rows], w, self.best_ln_gamma[rows])
+        slope = self.liquid.ln_gamma_mole_derivatives(self.T[rows], w)
         root = np.sqrt(w)
-        ratio = root[:, :, None] / np.maximum(root[:, None, :], 1e-150)
-        # sqrt(w_i/w_j) d ln gamma_i/d ln w_j is symmetric: take the side that does not amplify.
-        one_side = np.where(ratio <= 1.0, slope * ratio, 0.0)
-        other = np.swapaxes(one_side, 1, 2)
-        matrix = np.where(
-            ratio < 1.0,
-            one_side,
-            np.where(ratio > 1.0, other, (slope + np.swapaxes(slope, 1, 2)) / 2),
-        )
+        matrix = root[:, :, None] * root[:, None, :] * slope
         major = w > TRACE
         pair = major[:, :, None] & major[:, None, :]
         matrix = np.where(pair, matrix, 0.0) + np.eye(w.shape[1])

@@ -54,6 +54,15 @@ class Regular:
         T = np.asarray(temperature_K, dtype=float)[..., None]
         return self.ln_gamma(temperature_K, mole_fractions) * (-self.power / T)
 
+    def ln_gamma_mole_derivatives(
+        self, temperature_K: npt.ArrayLike, mole_fractions: npt.ArrayLike
+    ) -> FloatArray:
+        x = np.asarray(mole_fractions, dtype=float)
+        Ax = x @ self.A
+        total = (x * Ax).sum(axis=-1)[..., None, None]
+        plain = self.A - Ax[..., :, None] - Ax[..., None, :] + total
+        return plain * self._scale(temperature_K)[..., None, None]
+
 
 @dataclass(frozen=True)
 class Margules:
@@ -75,6 +84,18 @@ class Margules:
         self, temperature_K: npt.ArrayLike, mole_fractions: npt.ArrayLike
     ) -> FloatArray:
         return np.zeros_like(self.ln_gamma(temperature_K, mole_fractions))
+
+    def ln_gamma_mole_derivatives(
+        self, temperature_K: npt.ArrayLike, mole_fractions: npt.ArrayLike
+    ) -> FloatArray:
+        x = np.asarray(mole_fractions, dtype=float)
+        x1, x2 = x[..., 0], x[..., 1]
+        D = self.A21 - self.A12
+        # d2(gE/RT)/dx1^2; then n d ln gamma_i/dn_j is that times (x2, -x1) on both sides.
+        second = -2.0 * (self.A12 + 2.0 * D * x1) + 2.0 * D * x2
+        ends = np.stack([x2, -x1], axis=-1)
+        plain = second[..., None, None] * ends[..., :, None] * ends[..., None, :]
+        return plain + 0.0 * np.asarray(temperature_K, dtype=float)[..., None, None]
 
 
 # Antoine constants, Smith, Van Ness & Abbott (2005), appendix B.2 (log10-free form, P in kPa,
