@@ -15,6 +15,7 @@ from rdkit import Chem
 _GASES = {
     "[O][O]": "O=O",
     "[C]=O": "[C-]#[O+]",
+    "[HH]": "[H][H]",
     "N#[N+][O-]": "[N-]=[N+]=O",
     "O=[N+][O-]": "[O]N=O",
 }
@@ -82,9 +83,7 @@ def without_annotations(mol: Chem.Mol) -> Chem.Mol:
         return mol
     parameters = Chem.RemoveHsParameters()  # its stubs type the flags as the class itself
     # [H]/N=C/C: no group knows on which side that hydrogen stands.
-    parameters.removeDefiningBondStereo = (
-        True  # [H]/N=C/C: group contribution sees no such hydrogen
-    )
+    parameters.removeDefiningBondStereo = True  # type: ignore[assignment]
     parameters.removeMapped = True  # type: ignore[assignment]
     parameters.showWarnings = False  # type: ignore[assignment]
     return Chem.RemoveHs(mol, parameters)

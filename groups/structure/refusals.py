@@ -144,7 +144,7 @@ def _refuse_wildcards(mol: Chem.Mol, text: str) -> None:
     wild = [atom for atom in mol.GetAtoms() if atom.GetAtomicNum() == 0]
     if wild:
         raise PolymerError(
-            f"The SMILES has an open attachment point, {_places(wild, text)}: "
+            f"The structure has an open attachment point, {_places(wild, text)}: "
             "a repeat unit or a substituent, not a whole molecule.",
             smiles=text,
             atoms=_indices(wild),
@@ -156,7 +156,7 @@ def _refuse_isotopes(mol: Chem.Mol, text: str) -> None:
     marked = [atom for atom in mol.GetAtoms() if atom.GetIsotope()]
     if marked:
         raise IsotopeError(
-            f"The SMILES states an isotope: {_places(marked, text, isotopes=True)}. "
+            f"The structure states an isotope: {_places(marked, text, isotopes=True)}. "
             "Group parameters are those of natural elements.",
             smiles=text,
             atoms=_indices(marked),
@@ -167,7 +167,7 @@ def _refuse_isotopes(mol: Chem.Mol, text: str) -> None:
 def _refuse_hydrogen_alone(mol: Chem.Mol, text: str) -> None:
     if mol.GetNumHeavyAtoms() == 0:
         raise EmptyMoleculeError(
-            "The SMILES is hydrogen alone, an atom or an ion, not a molecule.",
+            "The structure is hydrogen alone, an atom or an ion, not a molecule.",
             smiles=text,
             atoms=range(mol.GetNumAtoms()),
             cure="Molecular hydrogen is [H][H]; give a molecule.",
@@ -183,7 +183,7 @@ def _refuse_parts(mol: Chem.Mol, text: str) -> None:
     charged = [atom for atom in charged if atom.GetFormalCharge()]
     if min(charges) < 0 < max(charges):
         raise SaltError(
-            f"The SMILES is a salt: parts with charges {_signed(charges)}.",
+            f"The structure is a salt: parts with charges {_signed(charges)}.",
             smiles=text,
             atoms=_indices(charged),
             cure="Electrolytes are outside group contribution; give the neutral acid or base.",
@@ -196,7 +196,7 @@ def _refuse_parts(mol: Chem.Mol, text: str) -> None:
             cure="Give one neutral molecule.",
         )
     raise SeveralMoleculesError(
-        f"The SMILES holds {len(parts)} molecules, parted by '.'.",
+        f"The structure holds {len(parts)} molecules, parted by '.'.",
         smiles=text,
         cure="Give each molecule as a component of its own; a hydrate without its water.",
     )
