@@ -19,7 +19,7 @@ _GREASY_PER_POLAR_GROUP = 6
 class FunctionalGroup:
     """One occurrence of a functional group; `atoms` index the heavy atoms of the molecule.
 
-    It is a hydrogen-bond donor where one of its nitrogen, oxygen or fluorine atoms carries hydrogen.
+    It is a hydrogen-bond donor where nitrogen, oxygen or fluorine in it carries hydrogen.
     """
 
     name: str
@@ -96,12 +96,9 @@ def described(mol: Chem.Mol, group: FunctionalGroup) -> str:
         for neighbour in atom.GetNeighbors()
         if neighbour.GetIdx() not in group.atoms
     ]
-    if "ring" in group.name or any(atom.GetIsAromatic() for atom in own):
+    if group.name in _names_that_tell_the_place():
         return group.name
-    if (
-        any(neighbour.GetIsAromatic() for neighbour in outside)
-        and "ar" not in group.name.split()[0]
-    ):
+    if any(neighbour.GetIsAromatic() for neighbour in outside):
         return f"{group.name} attached to an aromatic ring"
     if any(atom.IsInRing() for atom in own):
         return f"{group.name} in a ring"
