@@ -1,88 +1,70 @@
-"""Published coefficients: which sources hold a compound, and which of them to take.
-
-The coefficients themselves stay in the open `chemicals` package and are read from it at run time.
-"""
+"""Which of the published curves of a compound is taken, and how far it is to be believed."""
 
 import csv
-from collections.abc import Callable, Mapping
+from collections.abc import Mapping
 from dataclasses import dataclass
 from functools import lru_cache
 from importlib.resources import files
-from types import ModuleType
 
 import numpy as np
 
-from groups.arrays import FloatArray
-from groups.pure.equations import (
-    LN_10,
-    LN_PA_PER_KPA,
-    Antoine,
-    Dippr101,
-    ExtendedAntoine,
-    SaturationEquation,
-    Wagner,
-)
+from groups.pure.coefficients import Candidate, candidates
 from groups.pure.saturation import VapourPressure
 
-WATER = "7732-18-5"
 USUAL_RANGE_K = (250.0, 450.0)
 """The span judged when the caller names none: ordinary distillation; common practice, no source."""
 
 _ENOUGH = 0.95
 """A source spans a range when it covers this share of the best coverage on offer."""
 
-Record = Mapping[str, float]
+_SQRT_2 = float(np.sqrt(2.0))
+_HIGHEST_LN_KPA = float(np.log(1000.0))
+_SHARED_K = 5.0
+"""Two curves that share less than this are not compared."""
 
 
 @dataclass(frozen=True, slots=True)
-class SourceRecord:
-    """One published collection: its form, its citation and its usual scatter in ln P."""
+class Slip:
+    """One published curve that others contradict.
 
-    key: str
-    equation: str
-    citation: str
-    uncertainty_ln: float
+    Parameters
+    ----------
+    source : str
+        Key of the collection.
+    rejected : bool
+        True where it is outvoted and never used; False where it is only disputed.
+    disagreement_ln : float
+        Largest root mean square difference of ln P from a witness.
+    reason : str
+        In words.
+    """
+
+    source: str
+    rejected: bool
+    disagreement_ln: float
+    reason: str
 
 
-@dataclass(frozen=True, slots=True)
-class Candidate:
-    """One collection's curve for one compound."""
-
-    record: SourceRecord
-    curve: SaturationEquation
-    coefficients: tuple[tuple[str, float], ...]
-    range_K: tuple[float, float]
-    critical_temperature_K: float | None = None
-    critical_pressure_kPa: float | None = None
-
-    def covered_K(self, span_K: tuple[float, float]) -> float:
-        """Length of the part of `span_K` that lies within the range, K."""
-        low, high = max(self.range_K[0], span_K[0]), min(self.range_K[1], span_K[1])
-        return max(high - low, 0.0)
+_SOUND = Slip("", False, 0.0, "")
 
 
 @lru_cache(maxsize=1)
-def source_records() -> tuple[SourceRecord, ...]:
-    """The published collections in order of precedence.
-
-    Returns
-    -------
-    tuple of SourceRecord
-
-    Source
-    ------
-    groups/pure/tables/published_sources.csv
-    """
-    text = (files("groups.pure") / "tables" / "published_sources.csv").read_text("utf-8")
-    return tuple(
-        SourceRecord(row["key"], row["equation"], row["citation"], float(row["uncertainty_ln"]))
-        for row in csv.DictReader(text.splitlines())
-    )
+def _all_slips() -> Mapping[str, Mapping[str, Slip]]:
+    text = (files("groups.pure") / "tables" / "published_slips.csv").read_text("utf-8")
+    found: dict[str, dict[str, Slip]] = {}
+    for row in csv.DictReader(text.splitlines()):
+        slip = Slip(
+            row["source"],
+            row["verdict"] == "rejected",
+            float(row["disagreement_ln"]),
+            row["reason"],
+        )
+        found.setdefault(row["cas"], {})[slip.source] = slip
+    return found
 
 
-@lru_cache(maxsize=4096)
-def candidates(cas: str) -> tuple[Candidate, ...]:
-    """Every published curve of a compound, in order of precedence.
+def slips_of(cas: str) -> Mapping[str, Slip]:
+    """What the audit holds against the published curves of a compound.
 
     Parameters
     ----------
@@ -91,18 +73,13 @@ def candidates(cas: str) -> tuple[Candidate, ...]:
 
     Returns
     -------
-    tuple of Candidate
-        Empty where no collection holds the compound.
+    mapping of collection key to Slip
+
+    Source
+    ------
+    groups/pure/tables/published_slips.csv, written by `python -m groups.pure.audit --write`.
     """
-    found = []
-    for record in source_records():
-        built = _BUILDERS[record.key](cas)
-        if built is None:
-            continue
-        range_K = _rising_part(built[0], built[2])
-        if range_K is not None:
-            found.append(Candidate(record, built[0], built[1], range_K, *built[3:]))
-    return tuple(found)
+    return _all_slips().get(cas, {})
 
 
 def published_vapour_pressure(
@@ -122,7 +99,8 @@ def published_vapour_pressure(
     VapourPressure or None
         None where no collection holds the compound.
     """
-    offered = candidates(cas)
+    slips = slips_of(cas)
+    offered = tuple(c for c in candidates(cas) if not slips.get(c.record.key, _SOUND).rejected)
     if not offered:
         return None
     chosen = _widest(offered, temperature_K or USUAL_RANGE_K)
@@ -133,10 +111,42 @@ def published_vapour_pressure(
         coefficients=chosen.coefficients,
         range_K=chosen.range_K,
         curve=chosen.curve,
-        uncertainty_ln=chosen.record.uncertainty_ln,
+        uncertainty_ln=_uncertainty(chosen, offered, slips.get(chosen.record.key, _SOUND)),
         critical_temperature_K=chosen.critical_temperature_K,
         critical_pressure_kPa=chosen.critical_pressure_kPa,
+        notes=tuple(
+            s.reason for s in slips.values() if s.rejected or s.source == chosen.record.key
+        ),
     )
+
+
+def _uncertainty(chosen: Candidate, offered: tuple[Candidate, ...], doubt: Slip) -> float:
+    """The collection's usual scatter, or this compound's disagreement where that is larger."""
+    apart = [distance_ln(chosen, other) for other in offered if other is not chosen]
+    known = [d / _SQRT_2 for d in apart if d is not None]  # the difference of two has both errors
+    return max(chosen.record.uncertainty_ln, doubt.disagreement_ln, *known)
+
+
+def distance_ln(one: Candidate, other: Candidate) -> float | None:
+    """Root mean square difference of ln P over the common range, from 1 to 1000 kPa.
+
+    Parameters
+    ----------
+    one, other : Candidate
+
+    Returns
+    -------
+    float or None
+        None where they share less than 5 K.
+    """
+    low = max(one.range_K[0], other.range_K[0])
+    high = min(one.range_K[1], other.range_K[1])
+    if high - low < _SHARED_K:
+        return None
+    grid = np.linspace(low, high, 31)
+    a, b = one.curve.ln_kPa(grid), other.curve.ln_kPa(grid)
+    counted = (np.maximum(a, b) > 0.0) & (np.minimum(a, b) < _HIGHEST_LN_KPA)
+    return float(np.sqrt(np.mean((a - b)[counted] ** 2))) if counted.sum() >= 3 else None
 
 
 def _widest(offered: tuple[Candidate, ...], span_K: tuple[float, float]) -> Candidate:
@@ -149,126 +159,3 @@ def _widest(offered: tuple[Candidate, ...], span_K: tuple[float, float]) -> Cand
     if best == 0.0:  # none reaches: take the nearest
         return min(offered, key=lambda c: max(c.range_K[0] - high, low - c.range_K[1]))
     return next(c for c, k in zip(offered, covered, strict=True) if k >= _ENOUGH * best)
-
-
-def _rising_part(
-    curve: SaturationEquation, range_K: tuple[float, float]
-) -> tuple[float, float] | None:
-    """The part of the stated range, around its middle, in which pressure rises with temperature."""
-    low, high = range_K
-    if not (0.0 < low < high):
-        return None
-    grid = np.linspace(low, high, 101)
-    with np.errstate(all="ignore"):
-        sound = (curve.slope(grid) > 0.0) & np.isfinite(curve.ln_kPa(grid))
-    if not sound[50]:
-        return None
-    falls = np.flatnonzero(~sound)
-    first = int(falls[falls < 50].max(initial=-1)) + 1
-    last = int(falls[falls > 50].min(initial=101)) - 1
-    return (float(grid[first]), float(grid[last])) if last > first else None
-
-
-# --- one builder per collection ---------------------------------------------------------------
-
-Built = tuple[
-    SaturationEquation,
-    tuple[tuple[str, float], ...],
-    tuple[float, float],
-    float | None,
-    float | None,
-]
-
-
-def _collections() -> ModuleType:
-    """The `chemicals` module, imported on first use because it pulls pandas in."""
-    import chemicals.vapor_pressure as collections
-
-    return collections
-
-
-@lru_cache(maxsize=16)
-def _rows(name: str) -> tuple[dict[str, int], tuple[str, ...], FloatArray]:
-    """Index by CAS, numeric column names and values of one collection."""
-    frame = getattr(_collections(), name)
-    numeric = frame.select_dtypes("number")
-    index = {str(cas): place for place, cas in enumerate(frame.index)}
-    return index, tuple(map(str, numeric.columns)), numeric.to_numpy(dtype=np.float64)
-
-
-def _record(name: str, cas: str) -> dict[str, float] | None:
-    index, columns, values = _rows(name)
-    place = index.get(cas)
-    return None if place is None else dict(zip(columns, values[place].tolist(), strict=True))
-
-
-def _letters(row: Record, names: str) -> tuple[tuple[str, float], ...]:
-    return tuple((n, row[n]) for n in names.split())
-
-
-def _wagner(name: str, exponents: tuple[float, ...], lowest: str) -> Callable[[str], Built | None]:
-    def build(cas: str) -> Built | None:
-        row = _record(name, cas)
-        if row is None:
-            return None
-        Tc, Pc = row["Tc"], row["Pc"] / 1000.0
-        letters = _letters(row, "A B C D")
-        curve = Wagner(tuple(v for _, v in letters), exponents, Tc, Pc)
-        return curve, letters, (max(row[lowest], 0.4 * Tc), Tc), Tc, Pc
-
-    return build
-
-
-def _water(cas: str) -> Built | None:
-    if cas != WATER:
-        return None
-    text = (files("groups.pure") / "tables" / "water_iapws.csv").read_text("utf-8")
-    rows = list(csv.DictReader(text.splitlines()))
-    terms = tuple(float(r["coefficient"]) for r in rows)
-    exponents = tuple(float(r["exponent"]) for r in rows)
-    curve = Wagner(terms, exponents, 647.096, 22064.0)
-    letters = tuple((f"a{k + 1}", a) for k, a in enumerate(terms))
-    return curve, letters, (273.16, 647.096), 647.096, 22064.0
-
-
-def _dippr101(cas: str) -> Built | None:
-    row = _record("Psat_data_Perrys2_8", cas)
-    if row is None:
-        return None
-    letters = _letters(row, "C1 C2 C3 C4 C5")
-    curve = Dippr101(row["C1"] - LN_PA_PER_KPA, *(v for _, v in letters[1:]))
-    return curve, letters, (row["Tmin"], row["Tmax"]), None, None
-
-
-def _antoine(name: str, ln_base: float) -> Callable[[str], Built | None]:
-    def build(cas: str) -> Built | None:
-        row = _record(name, cas)
-        if row is None:
-            return None
-        curve = Antoine(row["A"] * ln_base - LN_PA_PER_KPA, row["B"] * ln_base, row["C"])
-        return curve, _letters(row, "A B C"), (row["Tmin"], row["Tmax"]), None, None
-
-    return build
-
-
-def _extended(cas: str) -> Built | None:
-    row = _record("Psat_data_AntoineExtended", cas)
-    if row is None:
-        return None
-    letters = _letters(row, "A B C n E F to Tc")
-    start = row["to"] + 273.15  # the collection gives it in degrees Celsius
-    A, B, C, n, E, F = (row[k] for k in ("A", "B", "C", "n", "E", "F"))
-    curve = ExtendedAntoine(A, B, C, n, E, F, start, row["Tc"])
-    return curve, letters, (row["Tmin"], row["Tmax"]), row["Tc"], None
-
-
-_BUILDERS: Mapping[str, Callable[[str], Built | None]] = {
-    "iapws": _water,
-    "wagner-mcgarry": _wagner("Psat_data_WagnerMcGarry", (1.0, 1.5, 3.0, 6.0), "Tmin"),
-    "wagner-poling": _wagner("Psat_data_WagnerPoling", (1.0, 1.5, 2.5, 5.0), "Tmin"),
-    "vdi-ppds": _wagner("Psat_data_VDI_PPDS_3", (1.0, 1.5, 2.5, 5.0), "Tm"),
-    "perry-dippr101": _dippr101,
-    "antoine-extended": _extended,
-    "antoine-poling": _antoine("Psat_data_AntoinePoling", LN_10),
-    "landolt-antoine": _antoine("Psat_data_Landolt_Antoine", 1.0),
-}

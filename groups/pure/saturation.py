@@ -240,7 +240,8 @@ class VapourPressure:
         """One standard deviation of ln P, growing outside the range.
 
         Within the range it is `uncertainty_ln`. Outside, the error of the continued slope is
-        added: sigma^2 = uncertainty_ln^2 + (CONTINUATION_ERROR * ln(P / P_edge))^2.
+        added: sigma^2 = uncertainty_ln^2 + (k ln(P / P_edge))^2, where k joins
+        CONTINUATION_ERROR and what a narrow range leaves open, 2 uncertainty_ln / ln(P_hi / P_lo).
 
         Parameters
         ----------
@@ -253,4 +254,7 @@ class VapourPressure:
         """
         T = np.asarray(temperature_K, dtype=np.float64)
         distance = self.ln_kPa(T) - self.ln_kPa(np.clip(T, *self.range_K))
-        return np.hypot(self.uncertainty_ln, CONTINUATION_ERROR * distance)
+        low, high = self.ln_kPa(self.range_K)
+        k = np.hypot(CONTINUATION_ERROR, 2.0 * self.uncertainty_ln / (high - low))
+        sigma: FloatArray = np.hypot(self.uncertainty_ln, k * distance)
+        return sigma
