@@ -22,13 +22,17 @@ NODES = 6
 
 @dataclass(frozen=True, slots=True)
 class ThreePhase:
-    """Two binary liquids and their vapour in equilibrium; compositions are (x1, x2)."""
+    """Two binary liquids and their vapour in equilibrium; compositions are (x1, x2).
+
+    `activity` holds a1 and a2, the same in both liquids.
+    """
 
     temperature_K: float
     pressure_kPa: float
     first: FloatArray
     second: FloatArray
     vapour: FloatArray
+    activity: FloatArray
 
     @property
     def azeotropic(self) -> bool:
@@ -169,7 +173,7 @@ def _root(
     if gap >= len(states) or abs(np.log(states[gap].pressure_kPa / pressure_kPa)) > 1e-9:
         return None
     state = states[gap]
-    return ThreePhase(T, pressure_kPa, state.first, state.second, state.vapour)
+    return ThreePhase(T, pressure_kPa, state.first, state.second, state.vapour, state.activity)
 
 
 def _immiscible_boiling(system: System, pressure_kPa: float) -> float:
@@ -201,7 +205,12 @@ def _under_vapour(system: System, split: BinarySplit) -> ThreePhase:
         if change <= VAPOUR_TOLERANCE:
             break
     return ThreePhase(
-        split.temperature_K, float(np.exp(total[0])), split.first, split.second, vapour[0]
+        split.temperature_K,
+        float(np.exp(total[0])),
+        split.first,
+        split.second,
+        vapour[0],
+        np.exp(terms[0] - system.ln_saturation(T)[0]),
     )
 
 

@@ -1,0 +1,84 @@
+"""Do the azeotropes found make a possible map of residue curves?
+
+Each pure component and each azeotrope is a fixed point of dx/dt = x - y. Reflected through the
+faces of the simplex the flow covers a sphere, so the signs of its fixed points add up to the Euler
+characteristic: sum over k of 2^k (sum of signs of the fixed points with k components) is 2 for an
+odd number of components and 0 for an even one. For three components this is the rule of Zharov and
+Serafimov. A missing azeotrope shows as an imbalance.
+"""
+
+import numpy as np
+
+from groups.arrays import FloatArray
+from groups.equilibrium.azeotrope import Azeotrope, steps_basis
+from groups.equilibrium.boiling_curve import Condition
+from groups.equilibrium.heterogeneous import TwoLiquidAzeotrope, convex_derivatives
+from groups.equilibrium.subset import subset
+from groups.equilibrium.system import System
+
+
+def balanced(system: System, condition: Condition, azeotropes: list[Azeotrope]) -> bool:
+    """True where the azeotropes of a mixture and of all its subsets satisfy the index rule.
+
+    Parameters
+    ----------
+    system : System
+        n components, n at least 2.
+    condition : Condition
+    azeotropes : list of Azeotrope
+        All that are known, at this condition.
+
+    Returns
+    -------
+    bool
+
+    Source
+    ------
+    Zharov & Serafimov, Physicochemical Foundations of Distillation (1975); Doherty & Perkins,
+    Chem. Eng. Sci. 34 (1979) 1401-1414. In the form given here: the Poincare-Hopf theorem.
+    """
+    n = system.n_components
+    pure = condition.boil(system, np.eye(n))
+    total = 0
+    for i in range(n):
+        ratios = _escape(
+            system, np.eye(n)[i], float(pure.temperature_K[i]), float(pure.pressure_kPa[i])
+        )
+        total += 2 * int(np.prod(np.sign(-ratios[np.arange(n) != i])))
+    for azeotrope in azeotropes:
+        total += 2 ** len(azeotrope.components) * _sign(system, azeotrope)
+    return total == (2 if n % 2 else 0)
+
+
+def _sign(system: System, azeotrope: Azeotrope) -> int:
+    """Sign of the determinant of the flow at an azeotrope."""
+    present = azeotrope.mole_fractions > 0.0
+    inner = _derivatives(system, azeotrope)
+    basis = steps_basis(int(present.sum()))
+    values = np.linalg.eigvalsh(basis @ inner @ basis.T)
+    liquid = azeotrope.liquids[0]
+    outward = _escape(system, liquid, azeotrope.temperature_K, azeotrope.pressure_kPa)[~present]
+    return int(np.prod(np.sign(-values)) * np.prod(np.sign(-outward)))
+
+
+def _derivatives(system: System, azeotrope: Azeotrope) -> FloatArray:
+    part = subset(system, azeotrope.components)
+    kept = list(azeotrope.components)
+    z = azeotrope.mole_fractions[kept]
+    if azeotrope.stable_liquid:
+        T = np.array([azeotrope.temperature_K])
+        return np.asarray(part.activity.ln_gamma_mole_derivatives(T, z[None])[0])
+    first, second = (liquid[kept] for liquid in azeotrope.liquids)
+    widest = int(np.argmax(np.abs(first - second)))
+    share = (z[widest] - second[widest]) / (first[widest] - second[widest])
+    amounts = np.stack([share * first, (1.0 - share) * second])
+    two = TwoLiquidAzeotrope(amounts, azeotrope.temperature_K, azeotrope.pressure_kPa)
+    return convex_derivatives(part, two)
+
+
+def _escape(system: System, x: FloatArray, T: float, P: float) -> FloatArray:
+    """ln K of every component over a boiling liquid: positive where a trace of it leaves."""
+    temperature, pressure = np.array([T]), np.array([P])
+    ln_k = system.ln_volatility(temperature, x[None])[0] - np.log(P)
+    vapour = x[None] / x.sum()
+    return np.asarray(ln_k - system.vapour.ln_correction(temperature, pressure, vapour)[0])
