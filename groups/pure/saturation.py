@@ -18,7 +18,7 @@ NEAR_CRITICAL = 0.90
 Common practice, no source.
 """
 
-CONTINUATION_ERROR = 0.05
+CONTINUATION_ERROR = 0.025
 """Relative error of the slope d ln P / d(1/T) with which a curve is continued beyond its range.
 
 Measured by `tests/bench/measure_vapour_pressure_estimate.py`.
