@@ -103,13 +103,14 @@ def _parser_parameters(*, sanitize: bool) -> Chem.SmilesParserParams:
 
 def _described(mol: Chem.Mol) -> Molecule:
     canonical = Chem.MolToSmiles(mol)
+    ordered = Chem.MolFromSmiles(canonical)  # also fixes the order in which masses are summed
     return Molecule(
         canonical_smiles=canonical,
-        formula=rdMolDescriptors.CalcMolFormula(mol, separateIsotopes=True),
-        molar_mass_g_mol=rdMolDescriptors._CalcMolWt(mol),
+        formula=rdMolDescriptors.CalcMolFormula(ordered, separateIsotopes=True),
+        molar_mass_g_mol=rdMolDescriptors._CalcMolWt(ordered),
         name=None,
         cas=None,
-        mol=Chem.MolFromSmiles(canonical),
+        mol=ordered,
     )
 
 
@@ -149,7 +150,8 @@ def _atom_problem(mol: Chem.Mol, index: int, kind: str, positions: tuple[int, ..
     bonds = sum(round(bond.GetBondTypeAsDouble()) for bond in atom.GetBonds())
     bonds += atom.GetNumExplicitHs()
     cure = "; with four bonds it is written [N+]" if (atom.GetSymbol(), bonds) == ("N", 4) else ""
-    return f"{place} has {bonds} bonds, more than {atom.GetSymbol()} can form{cure}"
+    count = "1 bond" if bonds == 1 else f"{bonds} bonds"
+    return f"{place} has {count}, more than {atom.GetSymbol()} can form{cure}"
 
 
 def _ring_problem(mol: Chem.Mol, atoms: list[int]) -> str:
