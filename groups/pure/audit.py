@@ -10,6 +10,8 @@ much. One curve copied from another counts once.
 """
 
 import csv
+import hashlib
+import re
 import sys
 from collections.abc import Iterable
 from dataclasses import dataclass
@@ -198,7 +200,17 @@ def main(arguments: list[str]) -> None:
     text = as_csv(audit())
     if "--write" in arguments:
         TABLE.write_text(text, encoding="utf-8")
+        _renew_record(text)
     sys.stdout.write(text)
+
+
+def _renew_record(text: str) -> None:
+    """Bring rows and checksum of the record beside the table up to date."""
+    path = TABLE.with_suffix(".toml")
+    record = path.read_text(encoding="utf-8")
+    checksum = hashlib.sha256(text.encode()).hexdigest()
+    record = re.sub(r"(?m)^rows = .*$", f"rows = {len(text.splitlines()) - 1}", record)
+    path.write_text(re.sub(r"(?m)^sha256 = .*$", f'sha256 = "{checksum}"', record), "utf-8")
 
 
 if __name__ == "__main__":

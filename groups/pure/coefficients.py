@@ -4,6 +4,7 @@ The coefficients themselves stay in the open `chemicals` package and are read fr
 """
 
 import csv
+import tomllib
 from collections.abc import Callable, Mapping
 from dataclasses import dataclass
 from functools import lru_cache
@@ -173,13 +174,16 @@ def _wagner(
 def _water(cas: str) -> Built | None:
     if cas != WATER:
         return None
-    text = (files("groups.pure") / "tables" / "water_iapws.csv").read_text("utf-8")
+    tables = files("groups.pure") / "tables"
+    text = (tables / "water_iapws.csv").read_text("utf-8")
+    record = tomllib.loads((tables / "water_iapws.toml").read_text("utf-8"))
     rows = list(csv.DictReader(text.splitlines()))
     terms = tuple(float(r["coefficient"]) for r in rows)
     exponents = tuple(float(r["exponent"]) for r in rows)
-    curve = Wagner(terms, exponents, 647.096, 22064.0)
+    Tc, Pc = record["critical_temperature_K"], record["critical_pressure_kPa"]
+    curve = Wagner(terms, exponents, Tc, Pc)
     letters = tuple((f"a{k + 1}", a) for k, a in enumerate(terms))
-    return curve, letters, (273.16, 647.096), 647.096, 22064.0
+    return curve, letters, (record["lowest_temperature_K"], Tc), Tc, Pc
 
 
 def _dippr101(cas: str) -> Built | None:
