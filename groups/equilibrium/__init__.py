@@ -6,6 +6,7 @@ from groups.equilibrium.binary_split import BinarySplit, binary_split, binary_sp
 from groups.equilibrium.bubble import bubble_pressure, bubble_temperature
 from groups.equilibrium.dew import dew_pressure, dew_temperature
 from groups.equilibrium.diagram import Diagram, SplitRange, diagram
+from groups.equilibrium.flash import Flash, flash
 from groups.equilibrium.stability import Stability, stability
 from groups.equilibrium.states import States
 from groups.equilibrium.system import (
@@ -26,6 +27,7 @@ __all__ = [
     "Azeotrope",
     "BinarySplit",
     "Diagram",
+    "Flash",
     "IdealVapour",
     "LiquidModel",
     "SaturationLine",
@@ -43,6 +45,7 @@ __all__ = [
     "dew_pressure",
     "dew_temperature",
     "diagram",
+    "flash",
     "relative_volatility",
     "stability",
     "three_phase_at_pressure",

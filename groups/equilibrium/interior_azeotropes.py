@@ -15,17 +15,20 @@ from groups.equilibrium.heterogeneous import (
     heterogeneous_azeotrope,
 )
 from groups.equilibrium.stability import stability
+from groups.equilibrium.states import States
 from groups.equilibrium.system import System
 
 #: Parts of the lattice of starts along an edge of the simplex.
 LATTICE = {3: 8, 4: 7}
 RANDOM_STARTS = 24
 #: Starts of each further round, while the topological index does not balance.
-MORE_STARTS = (100, 400)
+MORE_STARTS = (100,)
 #: Two azeotropes whose compositions differ by less are one.
 SAME = 1e-6
 #: A mole fraction below this belongs to the edge.
 INSIDE = 1e-9
+#: Splitting liquids of a further round from which a heterogeneous azeotrope is sought.
+MOST_SPLITTING = 8
 STEPS_INWARD = (0.01, 0.1, 0.3)
 
 
@@ -53,7 +56,9 @@ def interior_azeotropes(
     for more in MORE_STARTS:
         if balanced(system, condition, known + found):
             break
-        again = _search(system, condition, random.dirichlet(np.full(n, 0.5), more), [])
+        again = _search(
+            system, condition, random.dirichlet(np.full(n, 0.5), more), [], thorough=True
+        )
         found.extend(a for a in again if not _listed(a.mole_fractions, found))
     return sorted(found, key=lambda a: float(a.mole_fractions[0]))
 
@@ -77,7 +82,12 @@ def _inward(n: int, known: list[Azeotrope]) -> FloatArray:
 
 
 def _search(
-    system: System, condition: Condition, starts: FloatArray, known: list[Azeotrope]
+    system: System,
+    condition: Condition,
+    starts: FloatArray,
+    known: list[Azeotrope],
+    *,
+    thorough: bool = False,
 ) -> list[Azeotrope]:
     boiling = condition.boil(
         system, np.maximum(starts, 1e-8) / np.maximum(starts, 1e-8).sum(axis=1, keepdims=True)
@@ -107,6 +117,8 @@ def _search(
             found.append(Azeotrope(everything, x, T, P, kind, True, (x,)))
         else:
             splitting.append((x, T, P))
+    if thorough:
+        splitting.extend(_splitting_starts(system, boiling))
     for x, T, P in splitting:
         two = heterogeneous_azeotrope(system, condition, x, T, P)
         if two is not None and not _listed(two.amounts.sum(axis=0), found):
@@ -122,6 +134,14 @@ def _hetero_starts(system: System, known: list[Azeotrope]) -> list[tuple[FloatAr
         for x in _inward(system.n_components, [azeotrope]):
             starts.append((x, azeotrope.temperature_K, azeotrope.pressure_kPa))
     return starts
+
+
+def _splitting_starts(system: System, boiling: States) -> list[tuple[FloatArray, float, float]]:
+    """Some boiling points whose liquid would split."""
+    good = np.flatnonzero(boiling.converged)
+    T, P, x = boiling.temperature_K[good], boiling.pressure_kPa[good], boiling.liquid[good]
+    unstable = np.flatnonzero(~stability(system.activity, T, x).stable)[:MOST_SPLITTING]
+    return [(x[k], float(T[k]), float(P[k])) for k in unstable]
 
 
 def _listed(x: FloatArray, found: list[Azeotrope]) -> bool:
