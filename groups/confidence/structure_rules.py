@@ -8,6 +8,7 @@ from groups.confidence.vapour_rules import label
 from groups.structure.assignment import Assignment
 from groups.structure.functional import (
     is_hydrophobe,
+    is_polyol,
     longest_chain,
     neighbouring_polar_groups,
     polar_groups,
@@ -60,7 +61,7 @@ def polyol_reasons(molecules: Sequence[Molecule]) -> list[Reason]:
             "low",
         )
         for molecule in molecules
-        if sum(group.name in HYDROXYL_NAMES for group in polar_groups(molecule.mol)) > 1
+        if is_polyol(molecule.mol)
     ]
 
 
@@ -69,7 +70,7 @@ def size_reasons(molecules: Sequence[Molecule]) -> list[Reason]:
     reasons = [
         Reason(
             "long_chain",
-            f"{label(molecule)} has a chain of {longest_chain(molecule.mol)} atoms; the "
+            f"{label(molecule)} has a chain of {longest_chain(molecule.mol)} carbon atoms; the "
             "combinatorial part is uncertain there and the original form overstates "
             "the negative deviation.",
             label(molecule),

@@ -4,7 +4,7 @@ from collections.abc import Sequence
 
 from groups.confidence.confidence import Reason
 from groups.pure import VapourPressure
-from groups.structure.functional import is_carboxylic_acid
+from groups.structure.functional import associates_in_vapour
 from groups.structure.molecule import Molecule
 
 # Common practice, no source: an ideal vapour errs by about 1 to 3 % at 300 kPa and by 5 to 15 %
@@ -73,7 +73,7 @@ def association_reasons(molecules: Sequence[Molecule]) -> list[Reason]:
             "low",
         )
         for molecule in molecules
-        if is_carboxylic_acid(molecule.mol)
+        if associates_in_vapour(molecule.mol)
     ]
 
 
@@ -87,11 +87,14 @@ def saturation_reasons(
     reasons = []
     for molecule, line in zip(molecules, lines, strict=True):
         name, error = label(molecule), 100.0 * line.uncertainty_ln
-        if line.source.startswith("estimated"):
+        if line.source in ("estimated", "published boiling point"):
+            basis = (
+                "from structure alone" if line.source == "estimated" else "from its boiling point"
+            )
             reasons.append(
                 Reason(
                     "vapour_pressure_estimated",
-                    f"The vapour pressure of {name} is estimated ({line.equation}), about "
+                    f"The vapour pressure of {name} is estimated {basis} ({line.equation}), about "
                     f"{error:.0f} % uncertain; every K-value of it carries that error.",
                     name,
                     "low" if error > 15.0 else "moderate",

@@ -6,9 +6,11 @@ matching `failure` (or the reasons of `confidence`) says why.
 
 from dataclasses import dataclass
 
-from groups.arrays import BoolArray, FloatArray
+import numpy as np
+
+from groups.arrays import FloatArray
 from groups.confidence import Confidence
-from groups.equilibrium import Azeotrope
+from groups.equilibrium import Azeotrope, Diagram
 from groups.pure import VapourPressure
 from groups.structure.molecule import Molecule
 
@@ -41,9 +43,8 @@ class ActivityAnswer:
     @property
     def gamma(self) -> FloatArray:
         """Activity coefficients, symmetric convention, shape (n_points, n_components)."""
-        import numpy as np
-
-        return np.exp(self.ln_gamma)
+        gamma: FloatArray = np.exp(self.ln_gamma)
+        return gamma
 
 
 @dataclass(frozen=True, slots=True)
@@ -112,19 +113,9 @@ class AzeotropeAnswer:
 class DiagramAnswer:
     """A Txy or Pxy diagram of a binary."""
 
-    kind: str
     components: tuple[Molecule, ...]
     method: str
     methods_used: tuple[MethodUse, ...]
-    x1: FloatArray  # (n_points,)
-    y1: FloatArray
-    temperature_K: FloatArray
-    pressure_kPa: FloatArray
-    gamma: FloatArray  # (n_points, 2)
-    relative_volatility: FloatArray  # (n_points,), of component 1 over 2
-    stable: BoolArray  # (n_points,) False inside a liquid-liquid gap
-    failure: tuple[str | None, ...]
-    azeotropes: tuple[Azeotrope, ...]
-    liquid_split: tuple[float, float] | None  # x1 of the two liquids at the boiling conditions
+    diagram: Diagram
     vapour_pressures: tuple[VapourPressure, ...]
     confidence: Confidence

@@ -111,7 +111,7 @@ def _automatic(
     candidates: Mapping[str, Candidate],
 ) -> tuple[Candidate, str]:
     if not candidates:
-        raise _incomplete(molecules, covers["unifac-dortmund"], "unifac-dortmund or any other table")
+        raise _incomplete(molecules, covers["unifac-dortmund"], "unifac-dortmund or another table")
     order = preference(list(candidates.values()), on_missing)
     if not order:
         raise _missing(next(iter(candidates.values())))

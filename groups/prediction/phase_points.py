@@ -197,7 +197,7 @@ def phase_point_answer(
 
 
 def _stable(mixture: BoilingMixture, temperature_K: FloatArray, x: FloatArray) -> bool:
-    return bool(stability(mixture.system.activity, float(temperature_K[0]), x[0]).stable)
+    return bool(stability(mixture.system.activity, temperature_K, x).stable[0])
 
 
 def _state_reasons(failure: str | None, stable: bool | None) -> list[Reason]:
@@ -213,7 +213,7 @@ def liquid_split_reason() -> Reason:
     return Reason(
         "possible_liquid_split",
         "By this method the liquid is not stable and splits in two; the state given is that of "
-        "the liquid kept in one phase, which a still does not show. See POST /v1/liquid-splits.",
+        "the liquid kept in one phase, which a still does not show.",
         "liquid",
         "low",
     )

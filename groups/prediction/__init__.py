@@ -1,0 +1,39 @@
+"""The doors: one function for each question, used alike by service, command line and client."""
+
+from groups.prediction.activity_coefficients import activity_coefficients
+from groups.prediction.answers import (
+    ActivityAnswer,
+    AzeotropeAnswer,
+    DiagramAnswer,
+    InfiniteDilutionAnswer,
+    LiquidSplitAnswer,
+    MethodUse,
+    PhasePointAnswer,
+)
+from groups.prediction.cautions import CAUTIONS
+from groups.prediction.choosing import ALL_METHODS
+from groups.prediction.component import Component
+from groups.prediction.diagrams import diagram
+from groups.prediction.infinite_dilution import infinite_dilution
+from groups.prediction.phase_points import bubble_point, dew_point
+from groups.prediction.special_points import azeotropes, liquid_splits
+
+__all__ = [
+    "ALL_METHODS",
+    "CAUTIONS",
+    "ActivityAnswer",
+    "AzeotropeAnswer",
+    "Component",
+    "DiagramAnswer",
+    "InfiniteDilutionAnswer",
+    "LiquidSplitAnswer",
+    "MethodUse",
+    "PhasePointAnswer",
+    "activity_coefficients",
+    "azeotropes",
+    "bubble_point",
+    "dew_point",
+    "diagram",
+    "infinite_dilution",
+    "liquid_splits",
+]

@@ -1,0 +1,130 @@
+"""Txy and Pxy diagrams of binaries."""
+
+from collections.abc import Sequence
+from typing import Literal
+
+import numpy as np
+
+from groups.activity.choice import OnMissing
+from groups.confidence import Reason, graded
+from groups.equilibrium import Diagram
+from groups.equilibrium import diagram as solve_diagram
+from groups.errors import InvalidInputError, OutOfRangeError
+from groups.prediction.answers import DiagramAnswer
+from groups.prediction.boiling_mixture import boiling_mixture
+from groups.prediction.checks import check_components, check_pressures, check_temperatures
+from groups.prediction.component import Component
+
+DiagramKind = Literal["Txy", "Pxy"]
+POINTS_RANGE = (2, 2001)
+
+
+def diagram(
+    kind: DiagramKind,
+    components: Sequence[Component],
+    *,
+    pressure_kPa: float | None = None,
+    temperature_K: float | None = None,
+    points: int = 101,
+    method: str = "auto",
+    on_missing: OnMissing = "estimate",
+) -> DiagramAnswer:
+    """Boiling and dew curve of a binary at one pressure ("Txy") or temperature ("Pxy").
+
+    Parameters
+    ----------
+    kind : {"Txy", "Pxy"}
+    components : sequence of two Component
+    pressure_kPa : float
+        For "Txy".
+    temperature_K : float
+        For "Pxy".
+    points : int
+        Equal steps in x1, both pure ends included, 2 to 2001.
+    method : str
+        An identifier of `ALL_METHODS`.
+    on_missing : {"refuse", "estimate"}
+
+    Returns
+    -------
+    DiagramAnswer
+
+    Raises
+    ------
+    InvalidInputError
+        If the condition does not fit the kind, or a number lies outside its range.
+    PredictionError
+        If no table, or no vapour pressure, gives the numbers.
+
+    Source
+    ------
+    Modified Raoult's law; see `groups.equilibrium.diagram`.
+    """
+    check_components([component.molecule for component in components], least=2, most=2)
+    _check_condition(kind, pressure_kPa, temperature_K)
+    if not POINTS_RANGE[0] <= points <= POINTS_RANGE[1]:
+        raise OutOfRangeError("points", points, *POINTS_RANGE)
+    mixture = boiling_mixture(
+        components, method, on_missing, temperature_K=temperature_K, pressure_kPa=pressure_kPa
+    )
+    drawn = solve_diagram(
+        mixture.system, kind, pressure_kPa=pressure_kPa, temperature_K=temperature_K, points=points
+    )
+    fractions = np.column_stack([drawn.x1, 1.0 - drawn.x1])
+    reasons = mixture.reasons(drawn.temperature_K, drawn.pressure_kPa, fractions)
+    return DiagramAnswer(
+        mixture.liquid.molecules,
+        mixture.liquid.method,
+        mixture.liquid.methods_used,
+        drawn,
+        mixture.lines,
+        graded([*reasons, *_diagram_reasons(drawn)]),
+    )
+
+
+def _check_condition(
+    kind: DiagramKind, pressure_kPa: float | None, temperature_K: float | None
+) -> None:
+    """A Txy diagram takes a pressure, a Pxy diagram a temperature, and not the other."""
+    given, other = (
+        (("pressure_kPa", pressure_kPa), ("temperature_K", temperature_K))
+        if kind == "Txy"
+        else (("temperature_K", temperature_K), ("pressure_kPa", pressure_kPa))
+    )
+    if given[1] is None or other[1] is not None:
+        raise InvalidInputError(
+            f"A {kind} diagram needs '{given[0]}' and no '{other[0]}'.",
+            cure=f"Give '{given[0]}' alone, or ask for the other kind of diagram.",
+            field=given[0],
+        )
+    if kind == "Txy":
+        check_pressures(given[1])
+    else:
+        check_temperatures(given[1])
+
+
+def _diagram_reasons(drawn: Diagram) -> list[Reason]:
+    reasons = []
+    if not drawn.stable.all():
+        split = drawn.liquid_split
+        where = "" if split is None else f" (x1 from {split.x1_lower:.4f} to {split.x1_upper:.4f})"
+        reasons.append(
+            Reason(
+                "possible_liquid_split",
+                f"By this method the boiling liquid splits in two{where}; inside the gap the "
+                "three-phase line is given, and its place is more uncertain than the rest.",
+                "liquid",
+                "low",
+            )
+        )
+    failed = sum(text is not None for text in drawn.failure)
+    if failed:
+        reasons.append(
+            Reason(
+                "not_converged",
+                f"{failed} of {len(drawn.failure)} points have no verified state and are blank.",
+                "diagram",
+                "low",
+            )
+        )
+    return reasons
