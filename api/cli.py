@@ -1,0 +1,146 @@
+"""The command line: `mixwright serve`, `predict`, `groups`, `methods`, `demo`.
+
+Exit status: 0 done; 2 the input is at fault; 3 no method gives the number; 1 anything else.
+"""
+
+import argparse
+import sys
+from collections.abc import Sequence
+
+from api.problem_types import problem_type_of
+from groups.errors import MixwrightError, PredictionError
+
+
+def main(arguments: Sequence[str] | None = None) -> int:
+    """Run one command and return the exit status."""
+    given = parser().parse_args(arguments)
+    try:
+        text = given.run(given)
+    except MixwrightError as error:
+        kind = problem_type_of(error)
+        print(f"{kind.title}.\n  {error}\n  {error.cure or kind.cure}", file=sys.stderr)
+        return 3 if isinstance(error, PredictionError) else 2
+    except OSError as error:
+        print(f"A file cannot be written or a port opened.\n  {error}", file=sys.stderr)
+        return 1
+    if text:
+        try:
+            print(text, flush=True)
+        except BrokenPipeError:  # the reader, such as `head`, has seen enough
+            sys.stderr.close()
+    return 0
+
+
+def parser() -> argparse.ArgumentParser:
+    """The commands and their options."""
+    top = argparse.ArgumentParser(
+        prog="mixwright",
+        description="Behaviour of liquid mixtures that nobody has measured, from the molecules, "
+        "with the reasons to doubt each number.",
+    )
+    commands = top.add_subparsers(required=True, metavar="COMMAND")
+    _add_serve(commands.add_parser("serve", help="start the HTTP service"))
+    _add_predict(commands.add_parser("predict", help="predict one mixture"))
+    _add_groups(commands.add_parser("groups", help="split a molecule into groups"))
+    _add_methods(commands.add_parser("methods", help="list the methods, or show one"))
+    _add_demo(commands.add_parser("demo", help="a worked example, with diagrams as files"))
+    return top
+
+
+def _add_serve(command: argparse.ArgumentParser) -> None:
+    command.add_argument("--host", help="address to listen on (default 127.0.0.1)")
+    command.add_argument("--port", type=int, help="port to listen on (default 8000)")
+    command.add_argument("--workers", type=int, help="processes (default 1)")
+    command.set_defaults(run=_serve)
+
+
+def _add_predict(command: argparse.ArgumentParser) -> None:
+    from api.commands.predict import WHAT
+    from api.commands.quantities import pressure_kPa, temperature_K
+
+    command.description = (
+        "With -x: a bubble point (or --what dew), or a flash if both -T and -P are given. "
+        "Without: the diagram of two components, the azeotropes of more."
+    )
+    command.add_argument(
+        "components",
+        nargs="+",
+        metavar="MOLECULE",
+        help="SMILES, a name or a CAS number; smiles:, name: or cas: in front say which",
+    )
+    command.add_argument("-T", "--temperature", type=temperature_K, help="351.4K, 78C or 172F")
+    command.add_argument("-P", "--pressure", type=pressure_kPa, help="101.325kPa, 1atm or 1.013bar")
+    command.add_argument(
+        "-x", "--fractions", type=float, nargs="+", help="mole fractions, in the order given"
+    )
+    command.add_argument("--what", choices=WHAT, help="what to predict")
+    command.add_argument("--method", default="auto", help="see `mixwright methods`")
+    command.add_argument(
+        "--on-missing",
+        choices=("estimate", "refuse"),
+        default="estimate",
+        help="what to do where no parameter is published",
+    )
+    command.add_argument("--points", type=int, default=101, help="points of a diagram")
+    command.add_argument("--picture", help="write the diagram to this .svg or .png file")
+    shape = command.add_mutually_exclusive_group()
+    shape.add_argument("--json", action="store_true", help="print the whole answer as JSON")
+    shape.add_argument("--csv", action="store_true", help="print the table as CSV")
+    command.set_defaults(run=_predict)
+
+
+def _add_groups(command: argparse.ArgumentParser) -> None:
+    command.add_argument("molecule", metavar="MOLECULE", help="SMILES, a name or a CAS number")
+    command.add_argument("--method", action="append", help="a method; may be repeated")
+    command.add_argument("--picture", help="write a drawing to this .svg file")
+    command.add_argument("--json", action="store_true")
+    command.set_defaults(run=_groups)
+
+
+def _add_methods(command: argparse.ArgumentParser) -> None:
+    command.add_argument("method", nargs="?", help="show this one in full")
+    command.add_argument("--json", action="store_true")
+    command.set_defaults(run=_methods)
+
+
+def _add_demo(command: argparse.ArgumentParser) -> None:
+    command.add_argument("--out", default="mixwright-demo", help="folder for the diagrams")
+    command.set_defaults(run=_demo)
+
+
+# Each command imports what it needs when it runs: `mixwright --help` should not load chemistry.
+def _serve(given: argparse.Namespace) -> str:
+    from api.serve import serve
+
+    serve(given.host, given.port, given.workers)
+    return ""
+
+
+def _predict(given: argparse.Namespace) -> str:
+    from api.commands.predict import predict
+
+    return predict(given)
+
+
+def _groups(given: argparse.Namespace) -> str:
+    from api.commands.structure import groups_of
+
+    return groups_of(given)
+
+
+def _methods(given: argparse.Namespace) -> str:
+    from api.commands.structure import methods_of
+
+    return methods_of(given)
+
+
+def _demo(given: argparse.Namespace) -> str:
+    from pathlib import Path
+
+    from api.demo import run
+
+    return run(Path(given.out))
+
+
+if __name__ == "__main__":
+    sys.exit(main())

@@ -1,0 +1,298 @@
+"""A typed Python client for the service.
+
+from api.client import MixwrightClient
+
+with MixwrightClient("http://127.0.0.1:8000") as mixwright:
+    point = mixwright.bubble_point(["CCO", "O"], [0.3, 0.7], pressure_kPa=101.325)
+    print(point.temperature_K, point.y, point.confidence.grade)
+"""
+
+from collections.abc import Mapping, Sequence
+from types import TracebackType
+from typing import Literal, Self, TypeVar
+
+import httpx
+from pydantic import BaseModel, ValidationError
+
+from api.schemas.activity import (
+    ActivityRequest,
+    ActivityResponse,
+    InfiniteDilutionRequest,
+    InfiniteDilutionResponse,
+    Pair,
+)
+from api.schemas.equilibrium import (
+    AzeotropesRequest,
+    AzeotropesResponse,
+    DiagramRequest,
+    DiagramResponse,
+    FlashRequest,
+    LiquidSplitRequest,
+    LiquidSplitResponse,
+    PhasePointResponse,
+    PointRequest,
+)
+from api.schemas.molecule import (
+    DepictionRequest,
+    MoleculeInput,
+    MoleculesRequest,
+    MoleculesResponse,
+    molecule_input,
+)
+from api.schemas.prediction import OnMissing
+from api.schemas.problem import Problem
+from api.schemas.service import Health, MethodDetail, MethodsResponse, Readiness
+
+Answer = TypeVar("Answer", bound=BaseModel)
+MoleculeLike = str | Mapping[str, object] | MoleculeInput
+"""SMILES as text, a mapping as in the HTTP contract, or the model itself."""
+
+
+class ServiceProblemError(Exception):
+    """The service refused; `problem` says why, which field is to blame, and the cure."""
+
+    def __init__(self, problem: Problem) -> None:
+        where = f" [{problem.field}]" if problem.field else ""
+        super().__init__(f"{problem.title}{where}: {problem.detail} {problem.cure}")
+        self.problem = problem
+
+
+class MixwrightClient:
+    """Calls a running service. Requests are checked before they are sent."""
+
+    def __init__(self, base_url: str, *, timeout_s: float = 120.0) -> None:
+        self._http = httpx.Client(base_url=base_url, timeout=timeout_s)
+
+    def __enter__(self) -> Self:
+        return self
+
+    def __exit__(
+        self,
+        _kind: type[BaseException] | None,
+        _error: BaseException | None,
+        _traceback: TracebackType | None,
+    ) -> None:
+        self.close()
+
+    def close(self) -> None:
+        """Close the connections."""
+        self._http.close()
+
+    def health(self) -> Health:
+        """Whether the process is alive."""
+        return self._get("/v1/health", Health)
+
+    def ready(self) -> Readiness:
+        """Whether it can compute."""
+        return self._get("/v1/ready", Readiness)
+
+    def methods(self) -> MethodsResponse:
+        """All methods."""
+        return self._get("/v1/methods", MethodsResponse)
+
+    def method(self, identifier: str) -> MethodDetail:
+        """One method in full."""
+        return self._get(f"/v1/methods/{identifier}", MethodDetail)
+
+    def molecules(
+        self, molecules: Sequence[MoleculeLike], *, methods: Sequence[str] | None = None
+    ) -> MoleculesResponse:
+        """Identities and groups."""
+        given = _molecules(molecules)
+        request = (
+            MoleculesRequest(molecules=given)
+            if methods is None
+            else MoleculesRequest(molecules=given, methods=list(methods))
+        )
+        return self._post("/v1/molecules", request, MoleculesResponse)
+
+    def depiction(self, molecule: MoleculeLike, *, method: str = "unifac-dortmund") -> str:
+        """SVG of a molecule with its groups."""
+        request = DepictionRequest(molecule=molecule_input(molecule), method=method)
+        return self._send("/v1/molecules/depictions", request, "image/svg+xml").text
+
+    def activity_coefficients(
+        self,
+        components: Sequence[MoleculeLike],
+        temperature_K: float | Sequence[float],
+        mole_fractions: Sequence[Sequence[float]],
+        *,
+        method: str = "auto",
+        on_missing: OnMissing = "estimate",
+    ) -> ActivityResponse:
+        """Activity coefficients, gE and hE at given points."""
+        single = isinstance(temperature_K, (int, float))
+        request = ActivityRequest(
+            components=_molecules(components),
+            temperature_K=[temperature_K] if single else list(temperature_K),  # type: ignore[list-item, arg-type]
+            mole_fractions=[list(point) for point in mole_fractions],
+            method=method,
+            on_missing=on_missing,
+        )
+        return self._post("/v1/activity-coefficients", request, ActivityResponse)
+
+    def infinite_dilution(
+        self,
+        pairs: Sequence[tuple[MoleculeLike, MoleculeLike, float]],
+        *,
+        method: str = "auto",
+        on_missing: OnMissing = "estimate",
+    ) -> InfiniteDilutionResponse:
+        """Limits of (solute, solvent, temperature_K) triples."""
+        asked = [
+            Pair(solute=molecule_input(u), solvent=molecule_input(v), temperature_K=T)
+            for u, v, T in pairs
+        ]
+        request = InfiniteDilutionRequest(pairs=asked, method=method, on_missing=on_missing)
+        return self._post("/v1/infinite-dilution", request, InfiniteDilutionResponse)
+
+    def bubble_point(
+        self,
+        components: Sequence[MoleculeLike],
+        mole_fractions: Sequence[float],
+        *,
+        temperature_K: float | None = None,
+        pressure_kPa: float | None = None,
+        method: str = "auto",
+        on_missing: OnMissing = "estimate",
+    ) -> PhasePointResponse:
+        """Where a liquid begins to boil."""
+        request = PointRequest(
+            components=_molecules(components),
+            mole_fractions=list(mole_fractions),
+            temperature_K=temperature_K,
+            pressure_kPa=pressure_kPa,
+            method=method,
+            on_missing=on_missing,
+        )
+        return self._post("/v1/bubble-point", request, PhasePointResponse)
+
+    def dew_point(
+        self,
+        components: Sequence[MoleculeLike],
+        mole_fractions: Sequence[float],
+        *,
+        temperature_K: float | None = None,
+        pressure_kPa: float | None = None,
+        method: str = "auto",
+        on_missing: OnMissing = "estimate",
+    ) -> PhasePointResponse:
+        """Where a vapour begins to condense."""
+        request = PointRequest(
+            components=_molecules(components),
+            mole_fractions=list(mole_fractions),
+            temperature_K=temperature_K,
+            pressure_kPa=pressure_kPa,
+            method=method,
+            on_missing=on_missing,
+        )
+        return self._post("/v1/dew-point", request, PhasePointResponse)
+
+    def flash(
+        self,
+        components: Sequence[MoleculeLike],
+        mole_fractions: Sequence[float],
+        *,
+        temperature_K: float,
+        pressure_kPa: float,
+        method: str = "auto",
+        on_missing: OnMissing = "estimate",
+    ) -> PhasePointResponse:
+        """Liquid and vapour of a feed."""
+        request = FlashRequest(
+            components=_molecules(components),
+            mole_fractions=list(mole_fractions),
+            temperature_K=temperature_K,
+            pressure_kPa=pressure_kPa,
+            method=method,
+            on_missing=on_missing,
+        )
+        return self._post("/v1/flash", request, PhasePointResponse)
+
+    def diagram(
+        self,
+        kind: Literal["Txy", "Pxy"],
+        components: Sequence[MoleculeLike],
+        *,
+        pressure_kPa: float | None = None,
+        temperature_K: float | None = None,
+        points: int = 101,
+        method: str = "auto",
+        on_missing: OnMissing = "estimate",
+    ) -> DiagramResponse:
+        """A binary diagram."""
+        request = DiagramRequest(
+            kind=kind,
+            components=_molecules(components),
+            pressure_kPa=pressure_kPa,
+            temperature_K=temperature_K,
+            points=points,
+            method=method,
+            on_missing=on_missing,
+        )
+        return self._post("/v1/diagrams", request, DiagramResponse)
+
+    def azeotropes(
+        self,
+        components: Sequence[MoleculeLike],
+        *,
+        pressure_kPa: float | None = None,
+        temperature_K: float | None = None,
+        method: str = "auto",
+        on_missing: OnMissing = "estimate",
+    ) -> AzeotropesResponse:
+        """All azeotropes of a mixture."""
+        request = AzeotropesRequest(
+            components=_molecules(components),
+            pressure_kPa=pressure_kPa,
+            temperature_K=temperature_K,
+            method=method,
+            on_missing=on_missing,
+        )
+        return self._post("/v1/azeotropes", request, AzeotropesResponse)
+
+    def liquid_split(
+        self,
+        components: Sequence[MoleculeLike],
+        *,
+        temperature_K: float,
+        mole_fractions: Sequence[float] | None = None,
+        method: str = "auto",
+        on_missing: OnMissing = "estimate",
+    ) -> LiquidSplitResponse:
+        """The coexisting liquids."""
+        request = LiquidSplitRequest(
+            components=_molecules(components),
+            temperature_K=temperature_K,
+            mole_fractions=None if mole_fractions is None else list(mole_fractions),
+            method=method,
+            on_missing=on_missing,
+        )
+        return self._post("/v1/liquid-splits", request, LiquidSplitResponse)
+
+    def _get(self, path: str, kind: type[Answer]) -> Answer:
+        return kind.model_validate_json(_checked(self._http.get(path)).content)
+
+    def _post(self, path: str, request: BaseModel, kind: type[Answer]) -> Answer:
+        return kind.model_validate_json(self._send(path, request, "application/json").content)
+
+    def _send(self, path: str, request: BaseModel, accept: str) -> httpx.Response:
+        body = request.model_dump_json(exclude_none=True)
+        headers = {"Content-Type": "application/json", "Accept": accept}
+        return _checked(self._http.post(path, content=body, headers=headers))
+
+
+def _molecules(given: Sequence[MoleculeLike]) -> list[MoleculeInput]:
+    return [molecule_input(value) for value in given]
+
+
+def _checked(response: httpx.Response) -> httpx.Response:
+    """The response, or its problem as an exception."""
+    if response.is_success:
+        return response
+    try:
+        problem = Problem.model_validate_json(response.content)
+    except ValidationError:
+        response.raise_for_status()
+        raise
+    raise ServiceProblemError(problem)

@@ -1,0 +1,66 @@
+"""From the molecules of a request to the components of `groups`, naming the field of each fault."""
+
+from collections.abc import Sequence
+
+from api.schemas.molecule import MoleculeInput
+from api.user_vapour_pressure import own_vapour_pressure
+from groups.errors import MixwrightError
+from groups.prediction import Component
+from groups.structure.identify import identified, molecule_from_cas, molecule_from_name
+from groups.structure.molecule import Molecule, molecule_from_smiles
+
+
+class MoleculesRefusedError(Exception):
+    """One or more molecules of a request cannot be taken; `faults` pairs field and error."""
+
+    def __init__(self, faults: Sequence[tuple[str, MixwrightError]]) -> None:
+        super().__init__(str(faults[0][1]))
+        self.faults = tuple(faults)
+
+
+def molecules_of(fields: Sequence[tuple[str, MoleculeInput]]) -> list[Molecule]:
+    """The molecules of a request, each text read once; every fault is reported together.
+
+    `fields` pairs the JSON pointer of each molecule with what was given there.
+    """
+    read: dict[tuple[str, str], Molecule | MixwrightError] = {}
+    faults: list[tuple[str, MixwrightError]] = []
+    found: list[Molecule] = []
+    for field, given in fields:
+        key = (given.identifier, str(getattr(given, given.identifier)))
+        if key not in read:
+            read[key] = _read(*key)
+        outcome = read[key]
+        if isinstance(outcome, MixwrightError):
+            faults.append((field if given.was_text else f"{field}/{given.identifier}", outcome))
+        else:
+            found.append(outcome)
+    if faults:
+        raise MoleculesRefusedError(faults)
+    return found
+
+
+def components_of(given: Sequence[MoleculeInput]) -> list[Component]:
+    """The components of a mixture, with the user's vapour pressures."""
+    molecules = molecules_of([(f"/components/{k}", value) for k, value in enumerate(given)])
+    return [
+        Component(
+            molecule,
+            None
+            if value.vapour_pressure is None
+            else own_vapour_pressure(value.vapour_pressure, f"/components/{k}/vapour_pressure"),
+        )
+        for k, (molecule, value) in enumerate(zip(molecules, given, strict=True))
+    ]
+
+
+def _read(identifier: str, text: str) -> Molecule | MixwrightError:
+    readers = {
+        "smiles": molecule_from_smiles,
+        "name": molecule_from_name,
+        "cas": molecule_from_cas,
+    }
+    try:
+        return identified(readers[identifier](text))
+    except MixwrightError as error:
+        return error

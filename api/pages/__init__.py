@@ -1,0 +1,1 @@
+"""Plain HTML pages; nothing in them comes from another host."""

@@ -1,0 +1,137 @@
+"""Bubble points, dew points, flashes, diagrams, azeotropes and liquid splits."""
+
+from typing import Literal
+
+from pydantic import Field
+
+from api.schemas.base import Number, StrictModel, WholeNumber
+from api.schemas.confidence import Confidence
+from api.schemas.prediction import MixtureRequest, PredictionResponse, VapourPredictionResponse
+
+
+class PointRequest(MixtureRequest):
+    """A mixture of stated composition at a temperature or a pressure."""
+
+    mole_fractions: list[Number] = Field(min_length=1)
+    temperature_K: Number | None = None
+    pressure_kPa: Number | None = None
+
+
+class FlashRequest(MixtureRequest):
+    """A feed of stated composition at a temperature and a pressure."""
+
+    mole_fractions: list[Number] = Field(min_length=1)
+    temperature_K: Number
+    pressure_kPa: Number
+
+
+class PhasePointResponse(VapourPredictionResponse):
+    """One state; numbers are null where it did not converge, and `failure` says why."""
+
+    temperature_K: float | None
+    pressure_kPa: float | None
+    vapour_fraction: float | None = Field(description="0 at a bubble point, 1 at a dew point")
+    x: list[float | None] = Field(description="Mole fractions of the liquid")
+    y: list[float | None] = Field(description="Mole fractions of the vapour")
+    gamma: list[float | None]
+    saturation_kPa: list[float | None] = Field(
+        description="Vapour pressures of the pure components"
+    )
+    relative_volatility: list[float | None] = Field(
+        description="K of each component over the K of the last one"
+    )
+    liquid_stable: bool | None = Field(description="False where the liquid would split in two")
+    failure: str | None
+    confidence: Confidence
+
+
+class DiagramRequest(MixtureRequest):
+    """A binary diagram at one pressure (Txy) or one temperature (Pxy)."""
+
+    kind: Literal["Txy", "Pxy"]
+    pressure_kPa: Number | None = None
+    temperature_K: Number | None = None
+    points: WholeNumber = Field(default=101, ge=2)
+
+
+class AzeotropeResult(StrictModel):
+    """One azeotrope."""
+
+    components: list[int] = Field(description="Indices into `components` of those present")
+    mole_fractions: list[float] = Field(description="Of all components, in their order")
+    x1: float = Field(description="Mole fraction of the first component")
+    temperature_K: float
+    pressure_kPa: float
+    kind: str
+    stable_liquid: bool = Field(description="False: the liquid splits, a heterogeneous azeotrope")
+
+
+class LiquidSplitRange(StrictModel):
+    """The two liquids in equilibrium with the vapour, by their x1."""
+
+    x1_lower: float
+    x1_upper: float
+
+
+class PointFailure(StrictModel):
+    """A point of a diagram that could not be had."""
+
+    index: int
+    reason: str
+
+
+class DiagramResponse(VapourPredictionResponse):
+    """Arrays over the points of a diagram."""
+
+    kind: Literal["Txy", "Pxy"]
+    x1: list[float | None]
+    y1: list[float | None]
+    temperature_K: list[float | None]
+    pressure_kPa: list[float | None]
+    gamma1: list[float | None]
+    gamma2: list[float | None]
+    relative_volatility: list[float | None] = Field(description="Of component 1 over component 2")
+    stable: list[bool] = Field(description="False where the liquid drawn would split in two")
+    failures: list[PointFailure]
+    azeotropes: list[AzeotropeResult]
+    liquid_split: LiquidSplitRange | None
+    confidence: Confidence
+
+
+class AzeotropesRequest(MixtureRequest):
+    """A mixture at one pressure or one temperature."""
+
+    pressure_kPa: Number | None = None
+    temperature_K: Number | None = None
+
+
+class AzeotropesResponse(VapourPredictionResponse):
+    """Every azeotrope found; an empty list means that there is none."""
+
+    pressure_kPa: float | None
+    temperature_K: float | None
+    azeotropes: list[AzeotropeResult]
+    confidence: Confidence
+
+
+class LiquidSplitRequest(MixtureRequest):
+    """A mixture at one temperature, with an overall composition where it has three or more."""
+
+    temperature_K: Number
+    mole_fractions: list[Number] | None = None
+
+
+class LiquidPhase(StrictModel):
+    """One of the coexisting liquids."""
+
+    mole_fractions: list[float]
+    ln_gamma: list[float]
+
+
+class LiquidSplitResponse(PredictionResponse):
+    """The coexisting liquids; none where the liquid is homogeneous."""
+
+    temperature_K: float
+    splits: bool
+    phases: list[LiquidPhase]
+    confidence: Confidence

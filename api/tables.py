@@ -1,0 +1,196 @@
+"""Answers as CSV: one header row, one row an item, an empty cell for what is missing."""
+
+import csv
+import io
+from collections.abc import Iterable, Sequence
+
+from api.schemas.activity import ActivityResponse, InfiniteDilutionResponse
+from api.schemas.confidence import Confidence
+from api.schemas.equilibrium import (
+    AzeotropesResponse,
+    DiagramResponse,
+    LiquidSplitResponse,
+    PhasePointResponse,
+)
+from api.schemas.molecule import MoleculesResponse
+
+Cell = str | float | int | bool | None
+_FORMULA_STARTS = ("=", "+", "-", "@", "\t", "\r")
+
+
+def csv_text(header: Sequence[str], rows: Iterable[Sequence[Cell]]) -> str:
+    """CSV as RFC 4180 has it."""
+    target = io.StringIO()
+    writer = csv.writer(target, lineterminator="\r\n")
+    writer.writerow(header)
+    writer.writerows([_cell(value) for value in row] for row in rows)
+    return target.getvalue()
+
+
+def _cell(value: Cell) -> Cell:
+    if isinstance(value, bool):
+        return "true" if value else "false"
+    if isinstance(value, str) and value.startswith(_FORMULA_STARTS):
+        return "'" + value  # or a spreadsheet would run it as a formula
+    return value
+
+
+def _trust(confidence: Confidence) -> list[Cell]:
+    return [confidence.grade, " ".join(reason.code for reason in confidence.reasons)]
+
+
+_TRUST = ["grade", "reasons"]
+
+
+def _numbered(name: str, count: int) -> list[str]:
+    return [f"{name}_{k}" for k in range(1, count + 1)]
+
+
+def molecules_csv(answer: MoleculesResponse) -> str:
+    """One row a molecule, method and group; one without groups keeps a row."""
+    rows: list[list[Cell]] = []
+    for index, result in enumerate(answer.results):
+        for method, assignment in result.assignments.items():
+            start: list[Cell] = [
+                index,
+                result.canonical_smiles,
+                result.name,
+                method,
+                assignment.complete,
+            ]
+            rows += [
+                [*start, group.number, group.subgroup, group.main_group, group.count]
+                for group in assignment.groups
+            ] or [[*start, None, None, None, None]]
+    header = "molecule,canonical_smiles,name,method,complete,number,subgroup,main_group,count"
+    return csv_text(header.split(","), rows)
+
+
+def activity_csv(answer: ActivityResponse) -> str:
+    """One row a point."""
+    n = len(answer.components)
+    header = [
+        "temperature_K",
+        *_numbered("x", n),
+        *_numbered("gamma", n),
+        *_numbered("ln_gamma", n),
+        "excess_gibbs_RT",
+        "excess_enthalpy_J_mol",
+        *_TRUST,
+    ]
+    rows = (
+        [
+            point.temperature_K,
+            *point.mole_fractions,
+            *point.gamma,
+            *point.ln_gamma,
+            point.excess_gibbs_RT,
+            point.excess_enthalpy_J_mol,
+            *_trust(point.confidence),
+        ]
+        for point in answer.points
+    )
+    return csv_text(header, rows)
+
+
+def infinite_dilution_csv(answer: InfiniteDilutionResponse) -> str:
+    """One row a pair."""
+    header = ["solute_smiles", "solvent_smiles", "temperature_K", "ln_gamma_inf", "gamma_inf"]
+    rows = (
+        [
+            result.solute.canonical_smiles,
+            result.solvent.canonical_smiles,
+            result.temperature_K,
+            result.ln_gamma_inf,
+            result.gamma_inf,
+            result.method,
+            *_trust(result.confidence),
+        ]
+        for result in answer.results
+    )
+    return csv_text([*header, "method", *_TRUST], rows)
+
+
+def phase_point_csv(answer: PhasePointResponse) -> str:
+    """One row a component."""
+    header = (
+        "component,canonical_smiles,x,y,gamma,saturation_kPa,relative_volatility,"
+        "temperature_K,pressure_kPa,vapour_fraction,method"
+    )
+    columns = zip(
+        answer.components,
+        answer.x,
+        answer.y,
+        answer.gamma,
+        answer.saturation_kPa,
+        answer.relative_volatility,
+        strict=True,
+    )
+    rows = (
+        [
+            component.name,
+            component.canonical_smiles,
+            *values,
+            answer.temperature_K,
+            answer.pressure_kPa,
+            answer.vapour_fraction,
+            answer.method,
+            *_trust(answer.confidence),
+        ]
+        for component, *values in columns
+    )
+    return csv_text([*header.split(","), *_TRUST], rows)
+
+
+def diagram_csv(answer: DiagramResponse) -> str:
+    """One row a point."""
+    header = "x1,y1,temperature_K,pressure_kPa,gamma1,gamma2,relative_volatility,stable"
+    rows = zip(
+        answer.x1,
+        answer.y1,
+        answer.temperature_K,
+        answer.pressure_kPa,
+        answer.gamma1,
+        answer.gamma2,
+        answer.relative_volatility,
+        answer.stable,
+        strict=True,
+    )
+    trust = _trust(answer.confidence)
+    return csv_text(
+        [*header.split(","), "method", *_TRUST], ([*row, answer.method, *trust] for row in rows)
+    )
+
+
+def azeotropes_csv(answer: AzeotropesResponse) -> str:
+    """One row an azeotrope."""
+    header = ["kind", "stable_liquid", "temperature_K", "pressure_kPa"]
+    rows = (
+        [
+            found.kind,
+            found.stable_liquid,
+            found.temperature_K,
+            found.pressure_kPa,
+            *found.mole_fractions,
+            answer.method,
+            *_trust(answer.confidence),
+        ]
+        for found in answer.azeotropes
+    )
+    return csv_text([*header, *_numbered("x", len(answer.components)), "method", *_TRUST], rows)
+
+
+def liquid_split_csv(answer: LiquidSplitResponse) -> str:
+    """One row a liquid; none where the liquid does not split."""
+    rows = (
+        [
+            index,
+            answer.temperature_K,
+            *phase.mole_fractions,
+            answer.method,
+            *_trust(answer.confidence),
+        ]
+        for index, phase in enumerate(answer.phases, start=1)
+    )
+    header = ["liquid", "temperature_K", *_numbered("x", len(answer.components))]
+    return csv_text([*header, "method", *_TRUST], rows)
