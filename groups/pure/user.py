@@ -7,6 +7,7 @@ import numpy as np
 
 from groups.arrays import FloatArray
 from groups.errors import InvalidInputError
+from groups.pure.corresponding_states import ATMOSPHERE_KPA
 from groups.pure.equations import LN_10, Antoine, Dippr101, SaturationEquation
 from groups.pure.saturation import VapourPressure
 
@@ -19,8 +20,12 @@ _USUAL_KPA = (1.0, 500.0)
 """Pressures over which coefficients without a range are taken; common practice, no source."""
 
 _SENSIBLE_K = (50.0, 1500.0)
-_STEEPNESS_K = (100.0, 40_000.0)
-"""-d ln P / d(1/T) of any liquid, K: from liquid hydrogen to involatile oils."""
+_TROUTON = (4.0, 40.0)
+"""-d ln P/d(1/T) over the boiling temperature: entropy of vaporisation over R.
+
+Trouton's rule puts it near 10.5; hydrogen has 5.3, glycols 15. The bounds only part liquids from
+wrong units and bases; common practice, no source.
+"""
 
 _FIVE_POINTS = 5
 _LARGEST_MISS_LN = 0.35
@@ -113,10 +118,8 @@ def user_vapour_pressure(given: UserVapourPressure) -> VapourPressure:
         numbers that no liquid has (mostly a wrong unit or base of the logarithm).
     """
     if isinstance(given, PointsInput):
-        return _fitted(given)
-    if isinstance(given, AntoineInput):
-        return _antoine(given)
-    return _dippr101(given)
+        return _sensible(_fitted(given))
+    return _sensible(_antoine(given) if isinstance(given, AntoineInput) else _dippr101(given))
 
 
 def _antoine(given: AntoineInput) -> VapourPressure:
@@ -173,12 +176,11 @@ def _checked_range(
         raise _refused(f"The range must be two rising temperatures in K. Got {low:g} to {high:g}.")
     grid = np.linspace(low, high, 201)
     with np.errstate(all="ignore"):
-        ln_P, steep = curve.ln_kPa(grid), curve.slope(grid) * grid**2
+        ln_P, slope = curve.ln_kPa(grid), curve.slope(grid)
     if not np.all(np.isfinite(ln_P)):
         raise _refused("The coefficients give no finite pressure everywhere in the range.")
-    if not np.all(steep > 0.0):
+    if not np.all(slope > 0.0):
         raise _refused("The coefficients give a pressure that falls as the temperature rises.")
-    _require_sensible(float(np.median(steep)))
     if np.max(ln_P) > np.log(1e5) or np.max(ln_P) < np.log(1e-6):
         raise _refused("The coefficients give pressures that no liquid has in the range.")
     return low, high
@@ -204,7 +206,6 @@ def _fitted(given: PointsInput) -> VapourPressure:
     T, P = _checked_points(given)
     ln_P = np.log(P)
     curve = _least_squares(T, ln_P)
-    _require_sensible(float(np.median(curve.slope(T) * T**2)))
     miss = ln_P - curve.ln_kPa(T)
     worst = int(np.argmax(np.abs(miss)))
     if abs(miss[worst]) > _LARGEST_MISS_LN:
@@ -277,12 +278,17 @@ def _require_finite(*values: float) -> None:
         raise _refused("Every number must be finite.")
 
 
-def _require_sensible(steepness_K: float) -> None:
-    low, high = _STEEPNESS_K
-    if not low < steepness_K < high:
+def _sensible(curve: VapourPressure) -> VapourPressure:
+    """Refuse an entropy of vaporisation that no liquid has."""
+    Tb = curve.inverse(ATMOSPHERE_KPA)
+    trouton = float(curve.slope(Tb) * Tb)
+    low, high = _TROUTON
+    if not low < trouton < high:
         raise _refused(
-            f"The slope -d ln P/d(1/T) is {steepness_K:.4g} K; a liquid has {low:g} to {high:g} K."
+            f"The slope -d ln P/d(1/T) at one atmosphere is {trouton:.3g} times the boiling "
+            f"temperature; a liquid has {low:g} to {high:g} times (Trouton's rule: 10.5)."
         )
+    return curve
 
 
 def _refused(message: str) -> InvalidInputError:
