@@ -39,7 +39,7 @@ _SHORTEST_LABELLED_BOND = 26.0  # pixels; below it the labels run into each othe
 _MARGIN = 20.0
 _ROW = 26.0
 _TEXT_SIZE = 15
-_CHARACTER = 8.2  # mean width of a character at that size in common sans-serif fonts
+_CHARACTER = 8.9  # mean width of a character at that size in common sans-serif fonts
 _OPTIONS: dict[str, bool | int | float] = {
     "clearBackground": False,
     "scalingFactor": _PIXELS_PER_UNIT,
