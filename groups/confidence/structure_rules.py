@@ -4,7 +4,7 @@ from collections.abc import Mapping, Sequence
 from itertools import combinations
 
 from groups.confidence.confidence import Reason
-from groups.confidence.vapour_rules import label
+from groups.confidence.labels import label
 from groups.structure.assignment import Assignment
 from groups.structure.functional import (
     is_hydrophobe,

@@ -3,6 +3,7 @@
 from collections.abc import Sequence
 
 from groups.confidence.confidence import Reason
+from groups.confidence.labels import label
 from groups.pure import VapourPressure
 from groups.structure.functional import associates_in_vapour
 from groups.structure.molecule import Molecule
@@ -12,11 +13,6 @@ from groups.structure.molecule import Molecule
 MODERATE_PRESSURE_KPA = 300.0
 HIGH_PRESSURE_KPA = 1000.0
 NEAR_CRITICAL_REDUCED_TEMPERATURE = 0.9
-
-
-def label(molecule: Molecule) -> str:
-    """What to call a molecule in a message: its name, else its SMILES."""
-    return molecule.name or molecule.canonical_smiles
 
 
 def pressure_reasons(highest_kPa: float) -> list[Reason]:

@@ -10,10 +10,12 @@ from groups.prediction.answers import (
     MethodUse,
     PhasePointAnswer,
 )
+from groups.prediction.assignments import assign_groups
 from groups.prediction.cautions import CAUTIONS
 from groups.prediction.choosing import ALL_METHODS
 from groups.prediction.component import Component
 from groups.prediction.diagrams import diagram
+from groups.prediction.flashes import flash
 from groups.prediction.infinite_dilution import infinite_dilution
 from groups.prediction.phase_points import bubble_point, dew_point
 from groups.prediction.special_points import azeotropes, liquid_splits
@@ -30,10 +32,12 @@ __all__ = [
     "MethodUse",
     "PhasePointAnswer",
     "activity_coefficients",
+    "assign_groups",
     "azeotropes",
     "bubble_point",
     "dew_point",
     "diagram",
+    "flash",
     "infinite_dilution",
     "liquid_splits",
 ]
