@@ -25,7 +25,7 @@ from api.schemas.vapour_pressure import VapourPressureUsed
 from groups import prediction
 from groups.arrays import FloatArray
 from groups.confidence import Confidence as GroupsConfidence
-from groups.equilibrium import Azeotrope
+from groups.equilibrium import Azeotrope, SplitRange
 from groups.prediction import answers
 from groups.pure import VapourPressure
 from groups.structure.molecule import Molecule
@@ -200,6 +200,7 @@ def azeotrope(found: Azeotrope) -> AzeotropeResult:
         pressure_kPa=found.pressure_kPa,
         kind=found.kind,
         stable_liquid=found.stable_liquid,
+        liquids=[liquid.tolist() for liquid in found.liquids],
     )
 
 
@@ -238,30 +239,39 @@ def liquid_split(answer: answers.LiquidSplitAnswer) -> LiquidSplitResponse:
 
 def diagram(answer: answers.DiagramAnswer) -> DiagramResponse:
     """A Txy or Pxy diagram."""
-    split = answer.liquid_split
+    drawn = answer.diagram
     return DiagramResponse(
-        kind="Txy" if answer.kind == "Txy" else "Pxy",
+        kind=drawn.kind,
         components=identities(answer.components),
         method=answer.method,
         methods_used=methods_used(answer.methods_used),
-        x1=numbers(answer.x1),
-        y1=numbers(answer.y1),
-        temperature_K=numbers(answer.temperature_K),
-        pressure_kPa=numbers(answer.pressure_kPa),
-        gamma1=numbers(answer.gamma[:, 0]),
-        gamma2=numbers(answer.gamma[:, 1]),
-        relative_volatility=numbers(answer.relative_volatility),
-        stable=answer.stable.tolist(),
+        x1=numbers(drawn.x1),
+        y1=numbers(drawn.y1),
+        temperature_K=numbers(drawn.temperature_K),
+        pressure_kPa=numbers(drawn.pressure_kPa),
+        gamma1=numbers(drawn.gamma[:, 0]),
+        gamma2=numbers(drawn.gamma[:, 1]),
+        relative_volatility=numbers(drawn.relative_volatility),
+        stable=drawn.stable.tolist(),
         failures=[
             PointFailure(index=k, reason=reason)
-            for k, reason in enumerate(answer.failure)
+            for k, reason in enumerate(drawn.failure)
             if reason is not None
         ],
-        azeotropes=[azeotrope(found) for found in answer.azeotropes],
-        liquid_split=None
-        if split is None
-        else LiquidSplitRange(x1_lower=min(split), x1_upper=max(split)),
+        azeotropes=[azeotrope(found) for found in drawn.azeotropes],
+        liquid_split=None if drawn.liquid_split is None else split_range(drawn.liquid_split),
         vapour_pressures=vapour_pressures(answer.vapour_pressures),
         confidence=confidence(answer.confidence),
         cautions=cautions(),
+    )
+
+
+def split_range(found: SplitRange) -> LiquidSplitRange:
+    """Two liquids that boil together."""
+    return LiquidSplitRange(
+        x1_lower=found.x1_lower,
+        x1_upper=found.x1_upper,
+        y1=found.y1,
+        temperature_K=found.temperature_K,
+        pressure_kPa=found.pressure_kPa,
     )

@@ -9,12 +9,10 @@ from typing import Literal
 import matplotlib
 import numpy as np
 from matplotlib.axes import Axes
-from matplotlib.backends.backend_agg import FigureCanvasAgg
-from matplotlib.backends.backend_svg import FigureCanvasSVG
 from matplotlib.figure import Figure
 
 from groups.arrays import BoolArray, FloatArray
-from groups.equilibrium import Azeotrope
+from groups.equilibrium import Azeotrope, Diagram, SplitRange
 from groups.prediction.answers import DiagramAnswer
 from groups.structure.molecule import Molecule
 
@@ -52,35 +50,38 @@ def diagram_picture(answer: DiagramAnswer, file_format: Literal["svg", "png"]) -
     with _drawing:
         figure = Figure(figsize=(7.2, 6.0), layout="constrained")
         axes = figure.add_subplot()
-        _draw_curves(axes, answer)
-        _draw_azeotropes(axes, answer)
+        _draw_curves(axes, answer.diagram)
+        _draw_azeotropes(axes, answer.diagram)
         _label(figure, axes, answer)
         return _file(figure, file_format)
 
 
 def _file(figure: Figure, file_format: Literal["svg", "png"]) -> bytes:
     target = io.BytesIO()
-    if file_format == "svg":
-        FigureCanvasSVG(figure).print_svg(target, metadata={"Date": None, "Creator": "Mixwright"})
-    else:
-        FigureCanvasAgg(figure)
-        figure.savefig(target, format="png", dpi=150, metadata={"Software": "Mixwright"})
+    metadata = {"Date": None, "Creator": "Mixwright"} if file_format == "svg" else {}
+    figure.savefig(target, format=file_format, dpi=150, metadata=metadata)
     return target.getvalue()
 
 
-def _level(answer: DiagramAnswer) -> FloatArray:
-    return answer.temperature_K if answer.kind == "Txy" else answer.pressure_kPa
+def _level(drawn: Diagram) -> FloatArray:
+    return drawn.temperature_K if drawn.kind == "Txy" else drawn.pressure_kPa
 
 
-def _draw_curves(axes: Axes, answer: DiagramAnswer) -> None:
-    branches = stable_branches(answer.x1, answer.y1, _level(answer), answer.stable)
-    for k, branch in enumerate(branches):
-        first = k == 0
-        liquid, vapour = ("Liquid (bubble curve)", "Vapour (dew curve)") if first else ("", "")
-        axes.plot(branch.x1, branch.level, "-", color=_LIQUID, lw=1.8, label=liquid or None)
-        axes.plot(branch.y1, branch.level, "--", color=_VAPOUR, lw=1.8, label=vapour or None)
-    if answer.liquid_split is not None:
-        _draw_split(axes, answer, branches)
+def _level_of(kind: str, found: Azeotrope | SplitRange) -> float:
+    return found.temperature_K if kind == "Txy" else found.pressure_kPa
+
+
+def _draw_curves(axes: Axes, drawn: Diagram) -> None:
+    branches = stable_branches(drawn.x1, drawn.y1, _level(drawn), drawn.stable)
+    for branch in branches:
+        axes.plot(branch.x1, branch.level, "-", color=_LIQUID, lw=1.8)
+        axes.plot(branch.y1, branch.level, "--", color=_VAPOUR, lw=1.8)
+    axes.plot([], [], "-", color=_LIQUID, lw=1.8, label="Liquid (bubble curve)")
+    axes.plot([], [], "--", color=_VAPOUR, lw=1.8, label="Vapour (dew curve)")
+    for split in drawn.liquid_splits:
+        _close_curves(axes, branches, split, _level_of(drawn.kind, split))
+    if drawn.liquid_splits:
+        _mark_splits(axes, drawn)
     axes.set_xlim(0.0, 1.0)
 
 
@@ -96,69 +97,55 @@ def stable_branches(
     ]
 
 
-def _draw_split(axes: Axes, answer: DiagramAnswer, branches: list[_Branch]) -> None:
-    """The two liquids in equilibrium with one vapour: a level line, and the gap hatched."""
-    assert answer.liquid_split is not None
-    lower, upper = sorted(answer.liquid_split)
-    meeting = _three_phase(answer)
-    if meeting is None:
-        return
-    y_meeting, level = meeting
-    _close_curves(axes, branches, (lower, upper), y_meeting, level)
-    ends = [min(lower, y_meeting), max(upper, y_meeting)]
-    axes.plot(ends, [level, level], "-.", color=_SPLIT, lw=1.4, label="Two liquids and vapour")
+def _close_curves(axes: Axes, branches: list[_Branch], split: SplitRange, level: float) -> None:
+    """Lead the branches beside a gap from their last grid point to the three-phase line."""
+    left = [branch for branch in branches if branch.x1[-1] <= split.x1_lower + 1e-9]
+    right = [branch for branch in branches if branch.x1[0] >= split.x1_upper - 1e-9]
+    ends = [(left[-1], -1, split.x1_lower)] if left else []
+    ends += [(right[0], 0, split.x1_upper)] if right else []
+    for branch, k, x_end in ends:
+        axes.plot([branch.x1[k], x_end], [branch.level[k], level], "-", color=_LIQUID, lw=1.8)
+        axes.plot([branch.y1[k], split.y1], [branch.level[k], level], "--", color=_VAPOUR, lw=1.8)
+
+
+def _mark_splits(axes: Axes, drawn: Diagram) -> None:
+    """A level line where two liquids boil together, and hatching where they stand without vapour.
+
+    Below the boiling line of a Txy diagram, above that of a Pxy diagram, there is liquid only.
+    """
     bottom, top = axes.get_ylim()
-    # Below the boiling line in Txy, above it in Pxy, there is liquid only.
-    edge = bottom if answer.kind == "Txy" else top
-    axes.fill_between(
-        [lower, upper],
-        level,
-        edge,
-        facecolor="none",
-        edgecolor=_SPLIT,
-        hatch="////",
-        linewidth=0.0,
-        alpha=0.55,
-        label="Two liquids: no single liquid exists here",
-    )
+    room = 0.06 * (top - bottom)
+    bottom, top = (bottom - room, top) if drawn.kind == "Txy" else (bottom, top + room)
+    edge = bottom if drawn.kind == "Txy" else top
+    for k, split in enumerate(drawn.liquid_splits):
+        level = _level_of(drawn.kind, split)
+        ends = [min(split.x1_lower, split.y1), max(split.x1_upper, split.y1)]
+        axes.plot(
+            ends,
+            [level, level],
+            "-.",
+            color=_SPLIT,
+            lw=1.4,
+            label=None if k else "Two liquids boil together",
+        )
+        axes.fill_between(
+            [split.x1_lower, split.x1_upper],
+            level,
+            edge,
+            facecolor="none",
+            edgecolor=_SPLIT,
+            hatch="///",
+            linewidth=0.0,
+            alpha=0.5,
+            label=None if k else "Two liquids, no single one",
+        )
     axes.set_ylim(bottom, top)
 
 
-def _three_phase(answer: DiagramAnswer) -> tuple[float, float] | None:
-    """Vapour and level where two liquids boil: constant across the gap."""
-    level = _level(answer)
-    inside = np.flatnonzero(~answer.stable & np.isfinite(level) & np.isfinite(answer.y1))
-    if inside.size:
-        return float(answer.y1[inside[0]]), float(level[inside[0]])
-    for found in answer.azeotropes:  # a gap narrower than the grid
-        if not found.stable_liquid:
-            return float(found.mole_fractions[0]), _azeotrope_level(answer, found)
-    return None
-
-
-def _close_curves(
-    axes: Axes,
-    branches: list[_Branch],
-    split: tuple[float, float],
-    y_meeting: float,
-    level: float,
-) -> None:
-    """Lead each branch from its last stable point to the end of the gap."""
-    for branch in branches:
-        at_left = branch.x1[-1] <= split[0] + 1e-9
-        k, x_end = (-1, split[0]) if at_left else (0, split[1])
-        axes.plot([branch.x1[k], x_end], [branch.level[k], level], "-", color=_LIQUID, lw=1.8)
-        axes.plot([branch.y1[k], y_meeting], [branch.level[k], level], "--", color=_VAPOUR, lw=1.8)
-
-
-def _azeotrope_level(answer: DiagramAnswer, found: Azeotrope) -> float:
-    return found.temperature_K if answer.kind == "Txy" else found.pressure_kPa
-
-
-def _draw_azeotropes(axes: Axes, answer: DiagramAnswer) -> None:
-    unit = "K" if answer.kind == "Txy" else "kPa"
-    for found in answer.azeotropes:
-        x1, level = float(found.mole_fractions[0]), _azeotrope_level(answer, found)
+def _draw_azeotropes(axes: Axes, drawn: Diagram) -> None:
+    unit = "K" if drawn.kind == "Txy" else "kPa"
+    for found in drawn.azeotropes:
+        x1, level = float(found.mole_fractions[0]), _level_of(drawn.kind, found)
         mark = "D" if found.stable_liquid else "s"
         name = "Azeotrope" if found.stable_liquid else "Heterogeneous azeotrope"
         axes.plot(
@@ -186,7 +173,7 @@ def _label(figure: Figure, axes: Axes, answer: DiagramAnswer) -> None:
         parse_math=False,
     )
     axes.set_xlabel(f"Mole fraction of {first}, liquid or vapour", parse_math=False)
-    axes.set_ylabel("Temperature / K" if answer.kind == "Txy" else "Pressure / kPa")
+    axes.set_ylabel("Temperature / K" if answer.diagram.kind == "Txy" else "Pressure / kPa")
     axes.grid(color="#d8d8d8", lw=0.6)
     axes.set_axisbelow(True)
     axes.legend(fontsize=8.5, frameon=True, framealpha=0.92)
@@ -203,15 +190,16 @@ def _methods(answer: DiagramAnswer) -> str:
 
 
 def _fixed(answer: DiagramAnswer) -> str:
-    if answer.kind == "Txy":
-        return f"at {float(answer.pressure_kPa[0]):g} kPa"
-    return f"at {float(answer.temperature_K[0]):g} K"
+    drawn = answer.diagram
+    if drawn.kind == "Txy":
+        return f"at {np.nanmax(drawn.pressure_kPa):g} kPa"
+    return f"at {np.nanmax(drawn.temperature_K):g} K"
 
 
 def _footnote(answer: DiagramAnswer) -> str:
-    doubts = [reason.message for reason in answer.confidence.reasons if reason.cap != "high"]
+    doubts = [reason for reason in answer.confidence.reasons if reason.cap != "high"]
     lines = ["A prediction, not data; not for relief sizing, safety-critical or final design."]
-    lines += [f"Doubt: {message}" for message in doubts[:2]]
+    lines += [f"At most {reason.cap}: {reason.message}" for reason in doubts[:2]]
     if len(doubts) > 2:
         lines.append(f"{len(doubts) - 2} more reasons stand in the answer as JSON.")
     return "\n".join(

@@ -3,7 +3,7 @@
 import argparse
 from collections.abc import Callable
 from pathlib import Path
-from typing import Any
+from typing import Any, Literal
 
 from pydantic import BaseModel
 
@@ -96,7 +96,7 @@ def _flash(given: argparse.Namespace, components: list[Component]) -> _Outcome:
 
 
 def _diagram(given: argparse.Namespace, components: list[Component]) -> _Outcome:
-    kind = "Txy" if given.pressure is not None else "Pxy"
+    kind: Literal["Txy", "Pxy"] = "Txy" if given.pressure is not None else "Pxy"
     found = prediction.diagram(kind, components, points=given.points, **_conditions(given))
     if given.picture is not None:
         from api.pictures import diagram_picture  # matplotlib is slow to import

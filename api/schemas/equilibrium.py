@@ -64,13 +64,17 @@ class AzeotropeResult(StrictModel):
     pressure_kPa: float
     kind: str
     stable_liquid: bool = Field(description="False: the liquid splits, a heterogeneous azeotrope")
+    liquids: list[list[float]] = Field(description="Mole fractions of the liquid or liquids")
 
 
 class LiquidSplitRange(StrictModel):
-    """The two liquids in equilibrium with the vapour, by their x1."""
+    """Two liquids that boil together."""
 
     x1_lower: float
     x1_upper: float
+    y1: float = Field(description="Of their vapour")
+    temperature_K: float
+    pressure_kPa: float
 
 
 class PointFailure(StrictModel):
@@ -94,7 +98,9 @@ class DiagramResponse(VapourPredictionResponse):
     stable: list[bool] = Field(description="False where the liquid drawn would split in two")
     failures: list[PointFailure]
     azeotropes: list[AzeotropeResult]
-    liquid_split: LiquidSplitRange | None
+    liquid_split: LiquidSplitRange | None = Field(
+        description="The widest gap of the boiling liquid; null where it does not split"
+    )
     confidence: Confidence
 
 

@@ -1,5 +1,6 @@
 """A service in this process, called through its ASGI interface."""
 
+import json
 from typing import Any
 
 import anyio
@@ -25,7 +26,8 @@ class Service:
         return self.call("GET", path, **rest)
 
     def post(self, path: str, body: object, accept: str = "application/json") -> httpx.Response:
-        return self.call("POST", path, json=body, headers={"Accept": accept})
+        headers = {"Accept": accept, "Content-Type": "application/json"}
+        return self.call("POST", path, content=json.dumps(body), headers=headers)
 
     def post_text(self, path: str, text: str | bytes) -> httpx.Response:
         return self.call("POST", path, content=text, headers={"Content-Type": "application/json"})
