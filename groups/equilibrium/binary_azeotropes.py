@@ -6,14 +6,17 @@ liquid that would split is none; where two liquids boil together to a vapour bet
 the heterogeneous azeotrope.
 """
 
+from dataclasses import dataclass
+
 import numpy as np
 from scipy.optimize import brentq
 
 from groups.arrays import FloatArray, IntArray
 from groups.equilibrium.azeotrope import Azeotrope, homogeneous_kind
 from groups.equilibrium.azeotrope_newton import AzeotropeRoots, azeotrope_roots
-from groups.equilibrium.binary_split import fractions
+from groups.equilibrium.binary_split import fractions, may_split
 from groups.equilibrium.boiling_curve import BoilingCurve, Condition
+from groups.equilibrium.saturation import rough_boiling_temperatures
 from groups.equilibrium.stability import stability
 from groups.equilibrium.states import safe_log
 from groups.equilibrium.system import System
@@ -23,6 +26,8 @@ from groups.equilibrium.three_phase import (
     three_phase_at_temperature,
 )
 
+#: Temperatures of the quick look for a liquid split.
+QUICK_NODES = 5
 #: |ln alpha| at a local extremum below which two azeotropes may hide between grid points.
 NEAR_MISS = 0.05
 #: |ln alpha| along a whole curve below which the two components cannot be told apart.
@@ -31,24 +36,52 @@ IDENTICAL = 1e-10
 SAME = 1e-5
 
 
-def three_phase_states(
-    system: System, condition: Condition, curve: BoilingCurve
-) -> tuple[ThreePhase, ...]:
-    """The three-phase lines at the condition of a diagram."""
-    if condition.temperature_K is not None:
-        return three_phase_at_temperature(system, condition.temperature_K)
-    assert condition.pressure_kPa is not None
+@dataclass(frozen=True, slots=True)
+class Splitting:
+    """Whether a boiling liquid can split at all, and the three-phase lines if it does."""
+
+    conceivable: bool
+    lines: tuple[ThreePhase, ...]
+
+
+def splitting(system: System, condition: Condition, curve: BoilingCurve) -> Splitting:
+    """Liquid splits along a boiling curve, after one quick look that most mixtures pass.
+
+    Parameters
+    ----------
+    system : System
+        Of two components.
+    condition : Condition
+    curve : BoilingCurve
+        At that condition.
+
+    Returns
+    -------
+    Splitting
+    """
     temperatures = curve.states.temperature_K[curve.states.converged]
     if not len(temperatures):
-        return ()
-    return three_phase_at_pressure(system, condition.pressure_kPa, float(temperatures.max()) + 0.1)
+        return Splitting(True, ())
+    low, high = float(temperatures.min()), float(temperatures.max())
+    if condition.temperature_K is None:
+        assert condition.pressure_kPa is not None
+        _, immiscible = rough_boiling_temperatures(system, np.array([condition.pressure_kPa]))
+        nodes = np.linspace(min(low, float(immiscible[0]) - 2.0), high, QUICK_NODES)
+    else:
+        nodes = np.array([low])
+    if not may_split(system.activity, nodes):
+        return Splitting(False, ())
+    if condition.temperature_K is not None:
+        return Splitting(True, three_phase_at_temperature(system, condition.temperature_K))
+    assert condition.pressure_kPa is not None
+    return Splitting(True, three_phase_at_pressure(system, condition.pressure_kPa, high + 0.1))
 
 
 def binary_azeotropes(
     system: System,
     condition: Condition,
     curve: BoilingCurve,
-    three_phase: tuple[ThreePhase, ...],
+    liquids: Splitting,
 ) -> tuple[Azeotrope, ...]:
     """All azeotropes of a binary at the condition of its boiling curve, in the order of x1.
 
@@ -58,19 +91,21 @@ def binary_azeotropes(
         Of two components.
     condition : Condition
     curve : BoilingCurve
-    three_phase : tuple of ThreePhase
+    liquids : Splitting
         At the same condition.
 
     Returns
     -------
     tuple of Azeotrope
     """
-    found = [_heterogeneous(state) for state in three_phase if state.azeotropic]
+    found = [_heterogeneous(state) for state in liquids.lines if state.azeotropic]
     roots = _roots(system, condition, curve)
     x = roots.mole_fractions[roots.found]
     if len(x):
         T, P = roots.temperature_K[roots.found], roots.pressure_kPa[roots.found]
-        stable = stability(system.activity, T, x).stable
+        stable = np.ones(len(x), dtype=bool)
+        if liquids.conceivable:
+            stable = stability(system.activity, T, x).stable
         for k in np.flatnonzero(stable):
             kind = homogeneous_kind(system, float(T[k]), x[k])
             found.append(Azeotrope((0, 1), x[k], float(T[k]), float(P[k]), kind, True, (x[k],)))
@@ -100,25 +135,49 @@ def _roots(system: System, condition: Condition, curve: BoilingCurve) -> Azeotro
     crossings: IntArray = np.flatnonzero(
         np.sign(ln_alpha[:-1]) * np.sign(ln_alpha[1:]) <= 0.0
     ).astype(np.int64)
-    change = ln_alpha[crossings + 1] - ln_alpha[crossings]
-    share = -ln_alpha[crossings] / np.where(change == 0.0, 1.0, change)
-    at = s[crossings] + share * (s[crossings + 1] - s[crossings])
+    at, at_T = _interpolated(s, T, ln_alpha, crossings)
     size = np.abs(ln_alpha)
     misses = 1 + np.flatnonzero(
         (size[1:-1] <= size[:-2]) & (size[1:-1] <= size[2:]) & (size[1:-1] < NEAR_MISS)
     )
     aside = [0.5 * (s[misses] + s[misses + k]) for k in (-1, 1)]
-    places = np.concatenate([crossings, misses, misses])
-    if not len(places):
+    if not len(crossings) + len(misses):
         return _none()
+    start_P = P[np.concatenate([crossings, misses, misses])]
     roots = azeotrope_roots(
         system,
         fractions(np.concatenate([at, *aside])),
-        T[places],
-        P[places],
+        np.concatenate([at_T, T[misses], T[misses]]),
+        start_P,
         fixed_pressure=condition.pressure_kPa is not None,
     )
     return _distinct(_enclosed(system, condition, roots, s, crossings))
+
+
+def _interpolated(
+    s: FloatArray, T: FloatArray, ln_alpha: FloatArray, crossings: IntArray
+) -> tuple[FloatArray, FloatArray]:
+    """s and T where ln alpha is zero: inverse interpolation through four points, else two."""
+    at, at_T = np.empty(len(crossings)), np.empty(len(crossings))
+    for k, left in enumerate(crossings.tolist()):
+        near = slice(max(left - 1, 0), left + 3)
+        steps = np.diff(ln_alpha[near])
+        if not ((steps > 0.0).all() or (steps < 0.0).all()):
+            near = slice(left, left + 2)
+        weights = _zero_weights(ln_alpha[near])
+        at[k] = np.clip(weights @ s[near], s[left], s[left + 1])
+        at_T[k] = weights @ T[near]
+    return at, at_T
+
+
+def _zero_weights(values: FloatArray) -> FloatArray:
+    """Lagrange weights of interpolation to where the values are zero; equal ones if they repeat."""
+    gaps = values[:, None] - values[None, :]
+    own = np.eye(len(values), dtype=bool)
+    if (gaps == 0.0)[~own].any():
+        return np.full(len(values), 1.0 / len(values))
+    ratio = -values[None, :] / np.where(own, 1.0, gaps)
+    return np.asarray(np.where(own, 1.0, ratio).prod(axis=1))
 
 
 def _enclosed(

@@ -15,7 +15,7 @@ from groups.equilibrium.conditions import (
     checked_temperature,
     paired,
 )
-from groups.equilibrium.saturation import boiling_temperatures
+from groups.equilibrium.saturation import rough_boiling_temperatures
 from groups.equilibrium.states import States, log_sum_exp, safe_log, verified_states
 from groups.equilibrium.system import System
 from groups.equilibrium.temperature_root import rising_root
@@ -23,6 +23,12 @@ from groups.equilibrium.temperature_root import rising_root
 #: Passes over the correction of a real vapour; it is a weak function of the composition.
 MAX_VAPOUR_PASSES = 60
 VAPOUR_TOLERANCE = 1e-12
+#: Temperatures of the table that a start is interpolated from: Chebyshev places between the bounds.
+TABLE_PLACES = 0.5 - 0.5 * np.cos(np.pi * (np.arange(4) + 0.5) / 4.0)
+#: Over a wider range of boiling temperatures the table would be too coarse to help.
+WIDEST_TABLE_K = 150.0
+#: |ln P error| below which Newton's method keeps its slope.
+CHORD = 3e-3
 NO_BUBBLE_TEMPERATURE = "no temperature was found at which this liquid boils at this pressure"
 ABSURD_PRESSURE = "the bubble pressure is beyond what can be represented"
 
@@ -100,7 +106,7 @@ def bubble_temperature(
     P, x = paired(checked_pressure(pressure_kPa), x)
     if not len(P):
         return verified_states(system, P, P, x, x, ())
-    T = start_temperature(system, P, x)
+    T = _start(system, P, x)
     correction = np.zeros_like(x)
     for _ in range(MAX_VAPOUR_PASSES):
         search = _BubbleSearch(system, np.log(P), x, correction)
@@ -109,18 +115,41 @@ def bubble_temperature(
         change = new_correction(system, T, P, y, correction)
         if change <= VAPOUR_TOLERANCE:
             break
-    failure = tuple(None if ok else NO_BUBBLE_TEMPERATURE for ok in found)
-    return verified_states(system, T, P, x, y, failure)
+    failure = tuple([None if ok else NO_BUBBLE_TEMPERATURE for ok in found.tolist()])
+    return verified_states(system, T, P, x, y, failure, search.ln_gamma, search.ln_saturation)
 
 
 def start_temperature(system: System, pressure_kPa: FloatArray, x: FloatArray) -> FloatArray:
-    """Mole-fraction average of the pure boiling temperatures, in K, of shape (n,)."""
-    boiling = boiling_temperatures(system, pressure_kPa)
-    usable = np.isfinite(boiling)
-    weight = np.where(usable, x, 0.0)
-    total = weight.sum(axis=1)
-    mean = (weight * np.where(usable, boiling, 0.0)).sum(axis=1) / np.where(total > 0, total, 1.0)
-    return np.where(total > 0.0, mean, 350.0)
+    """Mole-fraction average of rough pure boiling temperatures, in K, of shape (n,)."""
+    pure, _ = rough_boiling_temperatures(system, pressure_kPa)
+    return np.asarray((x * pure).sum(axis=1))
+
+
+def _start(system: System, pressure_kPa: FloatArray, x: FloatArray) -> FloatArray:
+    """A better start: ln P of every liquid at a few temperatures, interpolated back to 1/T.
+
+    The interaction terms of a few temperatures serve all liquids, so this costs less than the one
+    evaluation at as many temperatures as points that it saves.
+    """
+    pure, immiscible = rough_boiling_temperatures(system, pressure_kPa)
+    average = np.asarray((x * pure).sum(axis=1))
+    low, high = float(immiscible.min()) - 2.0, float(pure.max()) + 5.0
+    if high - low > WIDEST_TABLE_K or len(x) < len(TABLE_PLACES):
+        return average
+    nodes = 1.0 / (1.0 / low + TABLE_PLACES * (1.0 / high - 1.0 / low))
+    terms = safe_log(x) + system.activity.ln_gamma(nodes[:, None], x[None])
+    ln_pressure = log_sum_exp(terms + system.ln_saturation(nodes)[:, None, :])
+    inverse = np.zeros(len(x))
+    wanted = np.log(pressure_kPa)
+    for k, node in enumerate(nodes):
+        weight = np.full(len(x), 1.0 / node)
+        for other in range(len(nodes)):
+            if other != k:
+                gap = ln_pressure[k] - ln_pressure[other]
+                weight *= (wanted - ln_pressure[other]) / np.where(gap == 0.0, np.inf, gap)
+        inverse += weight
+    inside = (inverse > 0.8 / high) & (inverse < 1.2 / low)
+    return np.where(inside, 1.0 / np.where(inside, inverse, 1.0), average)
 
 
 class _BubbleSearch:
@@ -132,22 +161,29 @@ class _BubbleSearch:
         self.system, self.ln_pressure, self.x, self.correction = system, ln_pressure, x, correction
         self.ln_x = safe_log(x)
         self.vapour = np.zeros_like(x)
-        self.gamma_slope = np.zeros_like(x)
-        self.calls = 0
+        self.ln_gamma, self.ln_saturation = np.zeros_like(x), np.zeros_like(x)
+        self.slope = np.zeros(len(x))
+        self.far = True
 
     def __call__(self, T: FloatArray, index: IntArray) -> tuple[FloatArray, FloatArray]:
-        x = self.x[index]
-        terms = self.ln_x[index] + self.system.ln_volatility(T, x) - self.correction[index]
+        everything = len(index) == len(self.x)
+        x = self.x if everything else self.x[index]
+        ln_gamma, ln_saturation = self.system.activity.ln_gamma(T, x), self.system.ln_saturation(T)
+        terms = self.ln_x[index] + ln_gamma + ln_saturation - self.correction[index]
         total = log_sum_exp(terms)
         y = np.exp(terms - total[:, None])
-        self.vapour[index] = y
-        # d ln gamma/dT is small beside d ln Psat/dT and changes little: it is taken once at the
-        # start, and again only for the points that are slow.
-        if self.calls == 0 or self.calls > 4:
-            self.gamma_slope[index] = self.system.activity.ln_gamma_slope(T, x)
-        self.calls += 1
-        slopes = self.gamma_slope[index] + self.system.ln_saturation_slope(T)
-        return total - self.ln_pressure[index], (y * slopes).sum(axis=1)
+        value = total - self.ln_pressure[index]
+        self.vapour[index], self.ln_gamma[index], self.ln_saturation[index] = (
+            y,
+            ln_gamma,
+            ln_saturation,
+        )
+        # Close to the root the slope no longer changes enough to be worth its evaluation.
+        if self.far:
+            slopes = self.system.ln_volatility_slope(T, x)
+            self.slope[index] = (y * slopes).sum(axis=1)
+        self.far = bool(np.abs(value).max() > CHORD)
+        return value, self.slope[index]
 
 
 def new_correction(

@@ -7,8 +7,7 @@ import numpy as np
 
 from groups.arrays import BoolArray, FloatArray, IntArray
 from groups.equilibrium.azeotrope import Azeotrope
-from groups.equilibrium.binary_azeotropes import binary_azeotropes, three_phase_states
-from groups.equilibrium.binary_split import may_split
+from groups.equilibrium.binary_azeotropes import Splitting, binary_azeotropes, splitting
 from groups.equilibrium.boiling_curve import Condition, boiling_curve
 from groups.equilibrium.conditions import checked_pressure, checked_temperature
 from groups.equilibrium.stability import stability
@@ -130,14 +129,14 @@ def diagram(
     condition = _condition(system, kind, pressure_kPa, temperature_K, points)
     x1 = np.linspace(0.0, 1.0, points)
     curve = boiling_curve(system, condition, x1)
-    lines = three_phase_states(system, condition, curve)
-    azeotropes = binary_azeotropes(system, condition, curve, lines)
+    liquids = splitting(system, condition, curve)
+    azeotropes = binary_azeotropes(system, condition, curve, liquids)
     place = np.searchsorted(curve.x[:, 0], x1).astype(np.int64)
     place[-1] = len(curve.x) - 1  # points crowd at x1 = 1; the pure end is the last
     states, alpha = _at(curve.states, place), np.exp(curve.ln_alpha[place])
     x = np.stack([x1, 1.0 - x1], axis=-1)
-    stable = _stable(system, states, x, lines)
-    return _assembled(kind, x, states, alpha, stable, lines, azeotropes)
+    stable = _stable(system, states, x, liquids)
+    return _assembled(kind, x, states, alpha, stable, liquids.lines, azeotropes)
 
 
 def _condition(
@@ -179,17 +178,17 @@ def _at(states: States, place: IntArray) -> States:
     )
 
 
-def _stable(
-    system: System, states: States, x: FloatArray, lines: tuple[ThreePhase, ...]
-) -> BoolArray:
+def _stable(system: System, states: States, x: FloatArray, liquids: Splitting) -> BoolArray:
     """Stability of every point, by the tangent plane where any split is conceivable."""
     stable = np.ones(len(x), dtype=bool)
-    good = states.converged
-    T = states.temperature_K[good]
-    if len(T) and may_split(system.activity, np.linspace(T.min(), T.max(), 5)):
-        stable[good] = stability(system.activity, T, x[good]).stable
-    for line in lines:
+    if not liquids.conceivable:
+        return stable
+    for line in liquids.lines:
         stable &= ~_inside(line, x)
+    unknown = np.flatnonzero(stable & states.converged & (x > 0.0).all(axis=1))
+    if len(unknown):
+        test = stability(system.activity, states.temperature_K[unknown], x[unknown])
+        stable[unknown] = test.stable
     return stable
 
 

@@ -1,14 +1,22 @@
-"""Boiling temperatures of the pure components of a system."""
+"""First guesses of boiling temperatures, from a short table of the saturation lines.
+
+Only starts: the searches that use them end on their own equations.
+"""
 
 import numpy as np
 
 from groups.arrays import FloatArray
-from groups.equilibrium.system import SaturationLine, System
-from groups.equilibrium.temperature_root import rising_root
+from groups.equilibrium.states import log_sum_exp
+from groups.equilibrium.system import System
+
+#: Between these nodes ln P is taken straight in 1/T, which costs about a kelvin.
+NODES_K = np.geomspace(60.0, 1500.0, 40)
 
 
-def boiling_temperatures(system: System, pressure_kPa: FloatArray) -> FloatArray:
-    """Temperatures at which the pure components boil.
+def rough_boiling_temperatures(
+    system: System, pressure_kPa: FloatArray
+) -> tuple[FloatArray, FloatArray]:
+    """Where the pure components boil, and where they would boil together if none dissolved another.
 
     Parameters
     ----------
@@ -17,18 +25,18 @@ def boiling_temperatures(system: System, pressure_kPa: FloatArray) -> FloatArray
 
     Returns
     -------
-    array of shape (n, n_components)
-        In K; NaN where the saturation line does not reach the pressure within the bounds of a
-        temperature search.
+    pure : array of shape (n, n_components)
+        In K, within about a kelvin; the nearest node where the line does not reach the pressure.
+    immiscible : array of shape (n,)
+        In K: where the sum of the pure vapour pressures is the pressure. No liquid mixture of
+        activities below one boils lower.
     """
-    distinct, back = np.unique(pressure_kPa, return_inverse=True)
-    columns = [_boiling(line, np.log(distinct)) for line in system.vapour_pressures]
-    return np.asarray(np.stack(columns, axis=-1)[back])
-
-
-def _boiling(line: SaturationLine, ln_pressure: FloatArray) -> FloatArray:
-    def evaluate(T: FloatArray, index: np.ndarray) -> tuple[FloatArray, FloatArray]:
-        return line.ln_kPa(T) - ln_pressure[index], line.slope(T)
-
-    temperature, found = rising_root(evaluate, np.full_like(ln_pressure, 350.0))
-    return np.where(found, temperature, np.nan)
+    table = system.ln_saturation(NODES_K)
+    columns = [*table.T, log_sum_exp(table)]
+    ln_pressure = np.log(pressure_kPa)
+    # A saturation line rises everywhere; the running maximum guards a user's line that does not.
+    inverse = [
+        np.interp(ln_pressure, np.maximum.accumulate(column), 1.0 / NODES_K) for column in columns
+    ]
+    found = 1.0 / np.stack(inverse, axis=-1)
+    return found[:, :-1], found[:, -1]

@@ -78,28 +78,31 @@ def verified_states(
     liquid: FloatArray,
     vapour: FloatArray,
     failure: tuple[str | None, ...],
+    ln_gamma: FloatArray | None = None,
+    ln_saturation: FloatArray | None = None,
 ) -> States:
     """The states that satisfy their equations; the others blanked, with the reason.
 
     `failure` holds what the solver already knows; where it is None, a residual above the
-    tolerance becomes the failure.
+    tolerance becomes the failure. ln gamma and ln Psat at these very states may be handed over;
+    otherwise they are evaluated.
     """
     known = np.array([text is None for text in failure], dtype=bool)
     known &= np.isfinite(temperature_K) & np.isfinite(pressure_kPa) & (pressure_kPa > 0.0)
     known &= np.isfinite(liquid).all(axis=1) & np.isfinite(vapour).all(axis=1)
-    residual = np.full(len(temperature_K), np.inf)
-    ln_gamma = np.full_like(liquid, np.nan)
-    if known.any():
-        T, x = temperature_K[known], liquid[known]
-        ln_gamma[known] = system.activity.ln_gamma(T, x)
-        ln_volatility = ln_gamma[known] + system.ln_saturation(T)
-        residual[known] = equilibrium_residual(
-            system, T, pressure_kPa[known], x, vapour[known], ln_volatility
-        )
+    T = np.where(known, temperature_K, 300.0)
+    x, y = (np.where(known[:, None], part, 1.0 / part.shape[1]) for part in (liquid, vapour))
+    if ln_gamma is None:
+        ln_gamma = system.activity.ln_gamma(T, x)
+    if ln_saturation is None:
+        ln_saturation = system.ln_saturation(T)
+    P = np.where(known, pressure_kPa, 1.0)
+    residual = equilibrium_residual(system, T, P, x, y, ln_gamma + ln_saturation)
+    residual = np.where(known & np.isfinite(residual), residual, np.inf)
     good = residual <= RESIDUAL_TOLERANCE
     texts = tuple(
         None if ok else (text or f"the iteration left a residual of {value:.1e} in ln fugacity")
-        for ok, text, value in zip(good, failure, residual, strict=True)
+        for ok, text, value in zip(good.tolist(), failure, residual.tolist(), strict=True)
     )
     blank = ~good
     columns = (temperature_K, pressure_kPa, liquid, vapour, np.exp(np.minimum(ln_gamma, 700.0)))

@@ -4,20 +4,29 @@ Both liquids have the same activities, so p3(T) = a1 Psat1 + a2 Psat2 with the a
 common tangent. At a given pressure one temperature is sought for each miscibility gap.
 """
 
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 
 import numpy as np
 from scipy.optimize import brentq
 
 from groups.arrays import FloatArray
-from groups.equilibrium.binary_split import BinarySplit, binary_splits, may_split
+from groups.equilibrium.binary_split import (
+    BinarySplit,
+    binary_splits,
+    fractions,
+    may_split,
+    polish_tangent,
+)
 from groups.equilibrium.bubble import MAX_VAPOUR_PASSES, VAPOUR_TOLERANCE
+from groups.equilibrium.saturation import rough_boiling_temperatures
 from groups.equilibrium.states import RESIDUAL_TOLERANCE, log_sum_exp, safe_log
 from groups.equilibrium.system import System
-from groups.equilibrium.temperature_root import rising_root
 
 #: Temperatures at which a miscibility gap is looked for, between the bounds of the boiling range.
 NODES = 6
+FOLLOWING_STEPS = 12
+#: |ln p3 - ln P| at which the search for the temperature ends.
+FOLLOWED = 1e-11
 
 
 @dataclass(frozen=True, slots=True)
@@ -96,16 +105,57 @@ def three_phase_at_pressure(
     ------
     As `three_phase_at_temperature`.
     """
-    nodes = np.linspace(_immiscible_boiling(system, pressure_kPa), highest_K, NODES)
+    _, immiscible = rough_boiling_temperatures(system, np.array([pressure_kPa]))
+    nodes = np.linspace(float(immiscible[0]) - 2.0, highest_K, NODES)
     if not may_split(system.activity, nodes):
         return ()
-    traces = [three_phase_at_temperature(system, float(T)) for T in nodes]
+    lowest = three_phase_at_temperature(system, float(nodes[0]))
+    if len(lowest) == 1 and lowest[0].pressure_kPa < pressure_kPa:
+        followed = _followed(system, pressure_kPa, lowest[0])
+        if followed is not None:
+            return (followed,)
+    traces = [lowest, *(three_phase_at_temperature(system, float(T)) for T in nodes[1:])]
     states: list[ThreePhase] = []
     for k in range(NODES - 1):
         for state in _between(system, pressure_kPa, (nodes[k], nodes[k + 1]), traces[k : k + 2]):
             if not any(abs(state.temperature_K - old.temperature_K) < 1e-6 for old in states):
                 states.append(state)
     return tuple(states)
+
+
+def _followed(system: System, pressure_kPa: float, state: ThreePhase) -> ThreePhase | None:
+    """The common case: one gap, followed from below to the pressure by Newton and secant steps."""
+    ln_pressure, slope = np.log(pressure_kPa), 0.0
+    previous: ThreePhase | None = None
+    for _ in range(FOLLOWING_STEPS):
+        value = float(np.log(state.pressure_kPa) - ln_pressure)
+        T = state.temperature_K
+        if abs(value) <= FOLLOWED:
+            return _final(system, pressure_kPa, T)
+        if previous is None:
+            lines = system.ln_saturation_slope(np.array([T]))[0]
+            slope = float(state.vapour @ lines)
+        else:
+            rise = float(np.log(state.pressure_kPa / previous.pressure_kPa))
+            slope = rise / (T - previous.temperature_K)
+        if not slope > 0.0:
+            return None
+        next_T = T / max(1.0 + value / (T * slope), 0.5)
+        s = [float(np.log(x[0] / x[1])) for x in (state.first, state.second)]
+        pair = polish_tangent(system.activity, next_T, s[0], s[1])
+        if pair is None or next_T == T:
+            return None
+        split = BinarySplit(next_T, fractions(pair[0]), fractions(pair[1]))
+        previous, state = state, _under_vapour(system, split)
+    return None
+
+
+def _final(system: System, pressure_kPa: float, T: float) -> ThreePhase | None:
+    """The only three-phase state at this temperature, found again from nothing, at the pressure."""
+    states = three_phase_at_temperature(system, T)
+    if len(states) != 1 or abs(np.log(states[0].pressure_kPa / pressure_kPa)) > RESIDUAL_TOLERANCE:
+        return None
+    return replace(states[0], pressure_kPa=pressure_kPa)
 
 
 def _between(
@@ -172,21 +222,7 @@ def _root(
     states = three_phase_at_temperature(system, T)
     if gap >= len(states) or abs(np.log(states[gap].pressure_kPa / pressure_kPa)) > 1e-9:
         return None
-    state = states[gap]
-    return ThreePhase(T, pressure_kPa, state.first, state.second, state.vapour, state.activity)
-
-
-def _immiscible_boiling(system: System, pressure_kPa: float) -> float:
-    """Temperature at which the sum of the pure vapour pressures reaches the pressure."""
-    ln_pressure = np.log(pressure_kPa)
-
-    def evaluate(T: FloatArray, _: object) -> tuple[FloatArray, FloatArray]:
-        terms = system.ln_saturation(T)
-        total = log_sum_exp(terms)
-        share = np.exp(terms - total[:, None])
-        return total - ln_pressure, (share * system.ln_saturation_slope(T)).sum(axis=1)
-
-    return float(rising_root(evaluate, np.array([350.0]))[0][0])
+    return replace(states[gap], pressure_kPa=pressure_kPa)
 
 
 def _under_vapour(system: System, split: BinarySplit) -> ThreePhase:
