@@ -1,7 +1,7 @@
 """Splits a molecule into the groups of a method.
 
-An assignment is an exact cover: each heavy atom, with its hydrogens, is in exactly one group. Of all
-exact covers the one is taken that has
+An assignment is an exact cover: each heavy atom, with its hydrogens, is in exactly one group. Of
+all exact covers the one is taken that has
 
 1. the fewest groups, since the tables intend the larger, more specific group before its parts;
 2. among those, most often the group of the highest published precedence (column `precedence` of

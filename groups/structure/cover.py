@@ -124,7 +124,8 @@ def _search(
     if len(memo) > MOST_STATES:
         raise _TooManyStatesError
     low = left & -left
-    best, options = -1, {}
+    best = -1
+    options: _Options = {}
     steps = [
         (candidates[i].bits, candidates[i].cost, candidates[i].tally, i)
         for i in holding.get(low, ())

@@ -35,7 +35,7 @@ class Matcher:
         """
         kinds = kinds_of_atoms(mol)
         present = 0
-        found = []
+        found: list[Candidate] = []
         for kind, atoms in kinds.items():
             conditions, simple = self._met_by(kind)
             present |= conditions

@@ -29,7 +29,7 @@ ASSIGNED_METHODS = (
     *SAME_GROUPS,
 )
 _COUNT_BITS = 9  # a molecule has at most 200 heavy atoms, so no count reaches 2**9
-_ELEMENT = re.compile(r"[A-Z][a-z]?|[cnos]")
+_ELEMENT = re.compile(r"[A-Z][a-z]?|[cnos]|#1")
 
 
 @dataclass(frozen=True, slots=True)
@@ -230,14 +230,17 @@ def _condition(text: str, key: str) -> AtomCondition:
     if not _ELEMENT.fullmatch(element) or len(bonds) != 1 or len(hydrogens) != 1:
         raise DataError(f"Fragment '{key}': [{text}] must state element, bonds and hydrogens.")
     ring = {"R": True, "r5": True, "R0": False}
+    is_hydrogen = element == "#1"  # its hydrogen count is its neighbour, an atom of its own
     return AtomCondition(
-        atomic_number=Chem.GetPeriodicTable().GetAtomicNumber(element.capitalize()),
+        atomic_number=Chem.GetPeriodicTable().GetAtomicNumber(
+            "H" if is_hydrogen else element.capitalize()
+        ),
         aromatic=element.islower(),
         bonds=bonds[0],
-        hydrogens=hydrogens[0],
+        hydrogens=0 if is_hydrogen else hydrogens[0],
         in_ring=next((ring[p] for p in parts if p in ring), None),
         charge=parts.count("+") - parts.count("-"),
-        has_surroundings=any("$" in p or p == "r5" for p in parts),
+        has_surroundings=any("$" in p or p.strip("!").startswith("r") for p in parts),
     )
 
 
