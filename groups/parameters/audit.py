@@ -14,6 +14,7 @@ from collections.abc import Iterator, Sequence
 from importlib.resources import as_file
 
 from groups.parameters.audit_rules import (
+    absurd_mixture,
     editions_disagree,
     equation_of_state_disagrees,
     exactly_zero,
@@ -51,6 +52,7 @@ def find_suspects() -> tuple[Suspect, ...]:
         found += exactly_zero(method)
         found += unphysical_energy(method, evidence)
         found += open_data_blow_up(method, evidence)
+        found += absurd_mixture(method)
     return tuple(sorted(found, key=lambda s: (METHODS.index(s.method), s.i, s.j, s.rule)))
 
 

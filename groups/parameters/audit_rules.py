@@ -9,6 +9,7 @@ from rdkit import Chem
 from groups.arrays import FloatArray
 from groups.parameters.editions import METHOD as EDITED_METHOD
 from groups.parameters.editions import read_choices, read_edition
+from groups.parameters.example_mixtures import read_absurd_mixtures
 from groups.parameters.interaction_energy import (
     dilute_group_ln_gamma,
     interaction_energy_K,
@@ -191,6 +192,28 @@ def open_data_blow_up(method: str, evidence: Evidence) -> Iterator[Suspect]:
                 f"{row.others_error:.1f}"
             )
             yield Suspect(method, row.i, row.j, "open-data", text)
+
+
+def absurd_mixture(method: str) -> Iterator[Suspect]:
+    """Pairs with which the table alone puts a simple mixture beyond anything measured.
+
+    Parameters
+    ----------
+    method : str
+        The table.
+
+    Yields
+    ------
+    Suspect
+        One per pair.
+    """
+    for row in read_absurd_mixtures():
+        if row.method == method:
+            text = (
+                f"puts ln gamma at infinite dilution of {row.solute} in {row.solvent} at "
+                f"{row.ln_gamma_inf:.0f}, where the other tables have {row.others_ln_gamma_inf:.0f}"
+            )
+            yield Suspect(method, row.i, row.j, "absurd-mixture", text)
 
 
 def reachable_main_numbers(published: MethodTable) -> tuple[int, ...]:

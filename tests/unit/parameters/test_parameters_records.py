@@ -10,7 +10,7 @@ from groups.parameters import METHODS, read_record, table
 from groups.parameters.csv_file import read_rows
 
 TABLES = Path(str(files("groups.parameters") / "tables"))
-WRITTEN_BY_COMMANDS = {"suspects.csv", "open_data.csv"}
+WRITTEN_BY_COMMANDS = {"suspects.csv", "open_data.csv", "example_mixtures.csv"}
 
 
 def test_every_file_of_the_folder_belongs_to_a_record() -> None:
