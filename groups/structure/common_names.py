@@ -10,7 +10,9 @@ from groups.structure.molecule import molecule_from_smiles
 _NITROGEN_LOCANT = re.compile(
     r"^n-(?=methyl|ethyl|phenyl|vinyl|formyl|acetyl|cyclohexyl|isopropyl|tert)"
 )
-_STEREO_WORD = re.compile(r"^(?:cis|trans|e|z|r|s|\([^)]*\)|dl|d|l)-+|^\((?:[rsez\d,+/-]+)\)-?")
+_STEREO_WORD = re.compile(
+    r"^(?:(?:cis|trans|dl|d|l)-|\((?:\d*[rsez]|[+/\u00b1-]+)(?:,\d*[rsez])*\)-?)+"
+)
 _DASHES = dict.fromkeys(map(ord, "‐‑‒–—−"), "-")
 _GREEK = {
     ord("α"): "alpha",

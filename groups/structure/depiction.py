@@ -107,10 +107,8 @@ def depict(molecule: Molecule, assignment: Assignment) -> str:
     lines = _lines(assignment, drawing)
     widest = max(len(title), *(len(mark.text) + 5 for mark in marks), *map(len, lines), 0)
     width = max(drawing.width, widest * _CHARACTER) + 2 * _MARGIN
-    top = _MARGIN + _ROW
-    legend_top = top + drawing.height + _ROW
+    legend_top = _MARGIN + 2 * _ROW + drawing.height
     height = legend_top + _ROW * (len(marks) + len(lines)) + _MARGIN / 2
-    left = (width - drawing.width) / 2
     return "\n".join(
         (
             _opening(width, height),
@@ -119,14 +117,21 @@ def depict(molecule: Molecule, assignment: Assignment) -> str:
             f"<defs>{_HATCH}</defs>",
             f'<rect width="{width:.1f}" height="{height:.1f}" fill="#ffffff"/>',
             _text(_MARGIN, _MARGIN + 6, title, weight="bold"),
-            f'<g transform="translate({left:.1f},{top:.1f})">',
-            *_bands(molecule.mol, marks, drawing),
-            drawing.body,
-            "</g>",
+            *_picture(molecule.mol, marks, drawing, (width - drawing.width) / 2),
             *_legend(marks, lines, legend_top),
             "</svg>",
         )
     )
+
+
+def _picture(
+    mol: Chem.Mol, marks: tuple[_Mark, ...], drawing: _Drawing, left: float
+) -> Iterator[str]:
+    """The bands with the molecule upon them, below the title."""
+    yield f'<g transform="translate({left:.1f},{_MARGIN + _ROW:.1f})">'
+    yield from _bands(mol, marks, drawing)
+    yield drawing.body
+    yield "</g>"
 
 
 def _marks(assignment: Assignment) -> Iterator[_Mark]:
@@ -181,16 +186,21 @@ def _drawn(mol: Chem.Mol, labels: dict[int, str]) -> _Drawing:
     places = [drawer.GetDrawCoords(index) for index in range(flat.GetNumAtoms())]
     bond_length = _bond_length(flat, drawer)
     drawer.FinishDrawing()
-    found = _BODY.search(drawer.GetDrawingText())
-    body = "" if found is None else found["body"].strip()
     return _Drawing(
-        re.sub(r"<!--.*?-->\s*", "", body, flags=re.DOTALL),
+        _elements(drawer.GetDrawingText()),
         drawer.Width(),
         drawer.Height(),
         tuple((place.x, place.y) for place in places),
         bond_length,
         labelled,
     )
+
+
+def _elements(svg: str) -> str:
+    """What stands inside the SVG element, without RDKit's comments."""
+    found = _BODY.search(svg)
+    body = "" if found is None else found["body"].strip()
+    return re.sub(r"<!--.*?-->\s*", "", body, flags=re.DOTALL)
 
 
 def _bond_length(flat: Chem.Mol, drawer: rdMolDraw2D.MolDraw2DSVG) -> float:

@@ -179,8 +179,7 @@ def _refuse_parts(mol: Chem.Mol, text: str) -> None:
     if len(parts) == 1:
         return
     charges = [sum(mol.GetAtomWithIdx(index).GetFormalCharge() for index in part) for part in parts]
-    charged = [mol.GetAtomWithIdx(i) for i in range(mol.GetNumAtoms())]
-    charged = [atom for atom in charged if atom.GetFormalCharge()]
+    charged = [atom for atom in mol.GetAtoms() if atom.GetFormalCharge()]
     if min(charges) < 0 < max(charges):
         raise SaltError(
             f"The structure is a salt: parts with charges {_signed(charges)}.",

@@ -64,6 +64,9 @@ def test_functional_group_names_are_unique_and_patterns_valid() -> None:
         ("cis-2-pentene", "", False, "2-pentene"),
         ("cis-2-pentene", "", True, "cis-2-pentene"),
         ("(-)-menthol", "", False, "menthol"),
+        ("(2R,3S)-2,3-butanediol", "", False, "2,3-butanediol"),
+        ("(2-ethylhexyl) acetate", "", False, "(2-ethylhexyl) acetate"),
+        ("s-trioxane", "", False, "s-trioxane"),  # symmetrical, not sinister
         ("1h-indene, octahydro-", "Octahydroindene", False, "octahydroindene"),
         ("1,3,5-Trioxane", "", False, "1,3,5-trioxane"),
         ("decane", "", False, "decane"),
