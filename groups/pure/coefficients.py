@@ -93,16 +93,28 @@ def candidates(cas: str) -> tuple[Candidate, ...]:
         built = _BUILDERS[record.key](cas)
         if built is None:
             continue
-        range_K = _rising_part(built[0], built[2])
+        range_K = rising_part(built[0], built[2])
         if range_K is not None:
             found.append(Candidate(record, built[0], built[1], range_K, *built[3:]))
     return tuple(found)
 
 
-def _rising_part(
+def rising_part(
     curve: SaturationEquation, range_K: tuple[float, float]
 ) -> tuple[float, float] | None:
-    """The part of the stated range, around its middle, in which pressure rises with temperature."""
+    """The part of a stated range, around its middle, in which pressure rises with temperature.
+
+    Parameters
+    ----------
+    curve : SaturationEquation
+    range_K : tuple of float
+        As stated by the collection, K.
+
+    Returns
+    -------
+    tuple of float or None
+        K; None where the range is no range or the pressure falls in its middle.
+    """
     low, high = range_K
     if not (0.0 < low < high):
         return None

@@ -105,7 +105,7 @@ def riedel(anchor: Anchor, K: float = _RIEDEL_K) -> Dippr101:
     ----------
     anchor : Anchor
     K : float
-        Riedel's constant, 0.0838; Vetere's values for acids and alcohols replace it.
+        Riedel's constant, 0.0838; Vetere's value replaces it for alcohols.
 
     Returns
     -------
@@ -141,25 +141,6 @@ def vetere_alcohol_K(anchor: Anchor) -> float:
     and Liquids, 5th ed. (2001), table 7-5.
     """
     return 0.373 - 0.030 * _giacalone(anchor)
-
-
-def vetere_acid_K(anchor: Anchor) -> float:
-    """Vetere's constant of Riedel's equation for carboxylic acids.
-
-    Parameters
-    ----------
-    anchor : Anchor
-
-    Returns
-    -------
-    float
-
-    Source
-    ------
-    Vetere, Fluid Phase Equilib. 62 (1991) 1; Poling, Prausnitz, O'Connell, The Properties of Gases
-    and Liquids, 5th ed. (2001), table 7-5.
-    """
-    return -0.120 + 0.025 * _giacalone(anchor)
 
 
 def _giacalone(anchor: Anchor) -> float:

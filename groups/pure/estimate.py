@@ -10,7 +10,6 @@ from groups.pure.corresponding_states import (
     Anchor,
     ambrose_walton,
     riedel,
-    vetere_acid_K,
     vetere_alcohol_K,
 )
 from groups.pure.equations import SaturationEquation
@@ -43,8 +42,8 @@ class ShapedCurve:
 def corresponding_states_curve(mol: Chem.Mol, anchor: Anchor) -> ShapedCurve:
     """The equation that measurement favours for the kind of molecule.
 
-    Riedel's equation with Vetere's constant for molecules with one alcohol group or one carboxylic
-    acid group, the Ambrose-Walton equation for all others.
+    Riedel's equation with Vetere's constant for molecules with one alcohol group, the
+    Ambrose-Walton equation for all others.
 
     Parameters
     ----------
@@ -59,12 +58,11 @@ def corresponding_states_curve(mol: Chem.Mol, anchor: Anchor) -> ShapedCurve:
     ------
     See `corresponding_states`; the choice is by `tests/bench/measure_vapour_pressure_estimate.py`.
     """
-    alcohols = len(mol.GetSubstructMatches(_ALCOHOL))
-    acids = len(mol.GetSubstructMatches(_ACID))
-    if (alcohols, acids) in {(1, 0), (0, 1)}:
-        K = vetere_alcohol_K(anchor) if alcohols else vetere_acid_K(anchor)
+    if len(mol.GetSubstructMatches(_ALCOHOL)) == 1 and not mol.HasSubstructMatch(_ACID):
         citation = "Riedel, Chem. Ing. Tech. 26 (1954) 83; Vetere, Fluid Phase Equilib. 62 (1991) 1"
-        return ShapedCurve("Riedel with Vetere's constant", citation, riedel(anchor, K))
+        return ShapedCurve(
+            "Riedel with Vetere's constant", citation, riedel(anchor, vetere_alcohol_K(anchor))
+        )
     citation = "Ambrose & Walton, Pure Appl. Chem. 61 (1989) 1395"
     return ShapedCurve("Ambrose-Walton corresponding states", citation, ambrose_walton(anchor))
 

@@ -140,7 +140,7 @@ def shape_errors(known: Sequence[Known], *, published: bool) -> None:
             "Lee-Kesler": lee_kesler(anchor),
             "Riedel": riedel(anchor),
             "Ambrose-Walton": ambrose_walton(anchor),
-            "the choice (Vetere for alcohols, acids)": corresponding_states_curve(
+            "the choice (Vetere for alcohols)": corresponding_states_curve(
                 k.molecule.mol, anchor
             ).curve,
         }
