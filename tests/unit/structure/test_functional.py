@@ -3,7 +3,6 @@
 from collections import Counter
 
 import pytest
-from chemicals.identifiers import get_pubchem_db
 from rdkit import Chem
 
 from groups.errors import StructureError
@@ -99,11 +98,12 @@ def test_a_group_has_the_name_that_a_chemist_gives_it(smiles: str, names: list[s
     assert Counter(group.name for group in functional_groups(mol(smiles))) == Counter(names)
 
 
-def test_every_atom_but_carbon_and_the_noble_gases_has_exactly_one_name() -> None:
-    entries = sorted({entry.smiles for entry in get_pubchem_db().CAS_index.values()})[::5]
+def test_every_atom_but_carbon_and_the_noble_gases_has_exactly_one_name(
+    listed_smiles: list[str],
+) -> None:
     unnamed = {"C", "H", "He", "Ne", "Ar", "Kr", "Xe"}
     checked = 0
-    for smiles in entries:
+    for smiles in listed_smiles[::5]:
         try:
             structure = molecule_from_smiles(smiles).mol
         except StructureError:
