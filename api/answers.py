@@ -122,6 +122,8 @@ def activity(answer: answers.ActivityAnswer) -> ActivityResponse:
         answer.excess_enthalpy_J_mol,
         answer.confidence,
     )
+    # Most points share their reasons; each distinct set is converted once.
+    trust_of = {trust: confidence(trust) for trust in set(answer.confidence)}
     points = [
         ActivityPoint(
             temperature_K=T,
@@ -132,7 +134,7 @@ def activity(answer: answers.ActivityAnswer) -> ActivityResponse:
             ln_gamma_residual=numbers(residual),
             excess_gibbs_RT=number(gibbs),
             excess_enthalpy_J_mol=number(enthalpy),
-            confidence=confidence(trust),
+            confidence=trust_of[trust],
         )
         for T, x, gamma, ln_gamma, combinatorial, residual, gibbs, enthalpy, trust in zip(
             *columns, strict=True
