@@ -3,8 +3,9 @@
 from groups.pure.choice import vapour_pressure
 from groups.pure.constant import Constant
 from groups.pure.constants import PureConstants, constants
+from groups.pure.points import PointsInput
 from groups.pure.saturation import VapourPressure
-from groups.pure.user import AntoineInput, Dippr101Input, PointsInput, UserVapourPressure
+from groups.pure.user import AntoineInput, Dippr101Input, UserVapourPressure
 
 __all__ = [
     "AntoineInput",

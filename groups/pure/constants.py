@@ -12,7 +12,7 @@ from rdkit import Chem
 from groups.pure.boiling import estimated_boiling
 from groups.pure.constant import Constant
 from groups.pure.corresponding_states import Anchor, lee_kesler_acentric_factor
-from groups.pure.critical import joback_critical
+from groups.pure.critical import estimated_critical
 from groups.pure.published import published_vapour_pressure
 from groups.pure.registry import registry_number
 from groups.structure.molecule import Molecule
@@ -77,7 +77,7 @@ def constants(molecule: Molecule) -> PureConstants:
     ------
     Published values from the compilations named in each `source`, read through the open
     `chemicals` package; estimates by Stein & Brown (1994), Constantinou & Gani (1994), Joback &
-    Reid (1987), and the acentric factor by Lee & Kesler (1975).
+    Reid (1987), Wilson & Jasperson (1996), and the acentric factor by Lee & Kesler (1975).
     """
     cas = registry_number(molecule)
     boiling = _boiling(molecule.mol, cas)
@@ -86,7 +86,7 @@ def constants(molecule: Molecule) -> PureConstants:
     if Tc is not None and boiling is not None and Tc.value <= boiling.value:
         Tc, Pc = None, None  # a pair that contradicts itself is no anchor
     if boiling is not None and (Tc is None or Pc is None):
-        estimate = joback_critical(molecule.mol, boiling.value)
+        estimate = estimated_critical(molecule.mol, boiling.value)
         if estimate is not None:
             Tc, Pc = Tc or estimate.temperature_K, Pc or estimate.pressure_kPa
     return PureConstants(boiling, Tc, Pc, _acentric_factor(cas, boiling, Tc, Pc))

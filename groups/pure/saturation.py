@@ -171,9 +171,10 @@ class VapourPressure:
         share = (ln_edges[0] - target) / (ln_edges[0] - ln_edges[1])
         u = low + np.clip(share, 0.0, 1.0) * (high - low)
         for _ in range(_MAX_ITERATIONS):
-            miss = self.ln_kPa(1.0 / u) - target
+            T = np.clip(1.0 / u, *self.range_K)  # 1/(1/T) may round past the edge
+            miss = self.curve.ln_kPa(T) - target
             lower, upper = np.where(miss > 0.0, u, lower), np.where(miss > 0.0, upper, u)
-            step = u + miss / (self.slope(1.0 / u) / u**2)
+            step = u + miss / (self.curve.slope(T) * T**2)
             u = np.where((step >= lower) & (step <= upper), step, 0.5 * (lower + upper))
             if np.all((np.abs(miss) < _LN_P_TOLERANCE) | (upper - lower < 1e-15 * upper)):
                 break

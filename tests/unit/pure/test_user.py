@@ -4,10 +4,10 @@ import numpy as np
 import pytest
 
 from groups.errors import InvalidInputError
+from groups.pure.points import PointsInput
 from groups.pure.user import (
     AntoineInput,
     Dippr101Input,
-    PointsInput,
     UserVapourPressure,
     user_vapour_pressure,
 )
