@@ -186,9 +186,12 @@ def open_data_blow_up(method: str, evidence: Evidence) -> Iterator[Suspect]:
     """
     for row in evidence.values():
         if row.method == method and row.blow_up:
+            systems = (
+                "one measured system" if row.systems == 1 else f"{row.systems} measured systems"
+            )
             text = (
                 f"median error {row.system_error:.1f} in ln gamma at infinite dilution over "
-                f"{row.systems} measured systems, where the other tables have "
+                f"{systems}, where the other tables have "
                 f"{row.others_error:.1f}"
             )
             yield Suspect(method, row.i, row.j, "open-data", text)

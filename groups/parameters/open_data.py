@@ -33,9 +33,9 @@ COLUMNS = (
 # measurements (about 0.1), and at least twice the error of the other tables on the same points, so
 # that the cause is this table and not the mixture. Few points or one system could be wrong data, or
 # the work of another pair: hence the median over systems.
-BLOW_UP_ERROR = 1.0
 BLOW_UP_RATIO = 2.0
-FEWEST_POINTS, FEWEST_SYSTEMS = 8, 3
+# (least error, fewest points, fewest systems): the larger the error, the fewer witnesses it needs.
+BLOW_UPS = ((1.0, 8, 3), (2.0, 3, 2), (3.0, 3, 1))
 
 Pair = tuple[int, int]
 
@@ -138,12 +138,17 @@ def _blamed(
     """Rows of `holds` that blow up, the worst first, each judged without the ones before."""
     left = np.ones(len(error), dtype=np.bool_)
     while True:
-        worst, worst_error = -1, BLOW_UP_ERROR
+        worst, worst_error = -1, 0.0
         for row, mask in enumerate(holds & left):
-            if count[mask].sum() < FEWEST_POINTS or mask.sum() < FEWEST_SYSTEMS:
+            if not mask.any():
                 continue
-            size = float(np.median(error[mask]))
-            if size > worst_error and size > BLOW_UP_RATIO * float(np.median(others[mask])):
+            size, points, systems = float(np.median(error[mask])), count[mask].sum(), mask.sum()
+            refuted = any(
+                size > least and points >= fewest_points and systems >= fewest_systems
+                for least, fewest_points, fewest_systems in BLOW_UPS
+            )
+            singular = size > BLOW_UP_RATIO * float(np.median(others[mask]))
+            if refuted and singular and size > worst_error:
                 worst, worst_error = row, size
         if worst < 0:
             return

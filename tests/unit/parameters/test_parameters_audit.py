@@ -51,11 +51,11 @@ def test_suspects_are_rare(method: str) -> None:
     """A warning on more than a tenth of the published pairs would be read by nobody.
 
     The liquid-liquid table was fitted to compositions of liquids at 10 to 40 degrees Celsius alone;
-    away from them, where it is asked here, a fifth is allowed.
+    away from them, where it is asked here, a quarter is allowed.
     """
     published = table(method)
     pairs = np.count_nonzero(~np.isnan(published.a + published.a.T)) / 2
-    assert len(published.suspects) < (0.2 if method == "unifac-lle" else 0.1) * pairs
+    assert len(published.suspects) < (0.25 if method == "unifac-lle" else 0.1) * pairs
 
 
 def two_groups(a: float, b: float = 0.0, *, back: float = 10.0) -> object:
@@ -143,10 +143,14 @@ def test_blame_is_laid_on_the_pair_and_not_on_its_company() -> None:
 
 
 def test_blame_needs_systems_points_and_better_tables() -> None:
-    assert blamed(measured({(1, 2)}, 2.0, systems=3, each=3)) == [(1, 2)]
-    assert blamed(measured({(1, 2)}, 2.0, systems=2, each=9)) == []
-    assert blamed(measured({(1, 2)}, 2.0, systems=3, each=2)) == []
-    assert blamed(measured({(1, 2)}, 2.0, systems=3, each=3, others=1.5)) == []
+    assert blamed(measured({(1, 2)}, 1.5, systems=3, each=3)) == [(1, 2)]
+    assert blamed(measured({(1, 2)}, 1.5, systems=2, each=9)) == []
+    assert blamed(measured({(1, 2)}, 1.5, systems=3, each=2)) == []
+    assert blamed(measured({(1, 2)}, 1.5, systems=3, each=3, others=1.0)) == []
+    assert blamed(measured({(1, 2)}, 2.5, systems=2, each=2)) == [(1, 2)]
+    assert blamed(measured({(1, 2)}, 2.5, systems=1, each=9)) == []
+    assert blamed(measured({(1, 2)}, 3.5, systems=1, each=3)) == [(1, 2)]
+    assert blamed(measured({(1, 2)}, 3.5, systems=1, each=2)) == []
     assert blamed(measured({(1, 2)}, 0.9, systems=3, each=3)) == []
 
 
