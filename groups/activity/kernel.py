@@ -151,6 +151,14 @@ def _product(left: FloatArray, right: FloatArray) -> FloatArray:
     return left @ right
 
 
+def _with_pure(part: FloatArray, pure: FloatArray) -> FloatArray:
+    """Add what the pure components give, (t, C), to each composition's answer, (t, m, C)."""
+    # By component: numpy broadcasts over the long middle axis only if the short one is out.
+    for i in range(pure.shape[1]):
+        part[:, :, i] += pure[:, i, None]
+    return part
+
+
 def combinatorial(groups: MixtureGroups, x: FloatArray) -> FloatArray:
     """Return the combinatorial part of ln gamma, the shape of `x`.
 
@@ -181,8 +189,7 @@ def residual(groups: MixtureGroups, x: FloatArray, B: FloatArray) -> FloatArray:
     # ln s is the same for every group and sum_m Z_im = q_i, so it is added once a point.
     part -= _product(np.log(D, out=D), Z.T)
     part += q * np.log(x @ q)[..., None]
-    part += (q + np.einsum("im,tim->ti", Z, np.log(B / q[:, None])))[:, None, :]
-    return part
+    return _with_pure(part, q + np.einsum("im,tim->ti", Z, np.log(B / q[:, None])))
 
 
 def residual_slope(
@@ -199,8 +206,7 @@ def residual_slope(
     slope = _product(N_D * dD_D, B.swapaxes(1, 2))
     slope -= _product(N_D, dB.swapaxes(1, 2))
     slope -= _product(dD_D, Z.T)
-    slope += np.einsum("im,tim->ti", Z, dB / B)[:, None, :]
-    return slope
+    return _with_pure(slope, np.einsum("im,tim->ti", Z, dB / B))
 
 
 def residual_curvature(
@@ -215,8 +221,7 @@ def residual_curvature(
     curvature -= _product(N_D, ddB.swapaxes(1, 2))
     curvature -= _product(N_D * (2.0 * dD_D**2 - ddD_D), B.swapaxes(1, 2))
     curvature -= _product(ddD_D - dD_D**2, Z.T)
-    curvature += np.einsum("im,tim->ti", Z, ddB / B - (dB / B) ** 2)[:, None, :]
-    return curvature
+    return _with_pure(curvature, np.einsum("im,tim->ti", Z, ddB / B - (dB / B) ** 2))
 
 
 def combinatorial_mole_derivatives(groups: MixtureGroups, x: FloatArray) -> FloatArray:

@@ -20,14 +20,15 @@ ETHANOL, BUTANONE = {1: 1, 2: 1, 14: 1}, {1: 1, 2: 1, 18: 1}
 LIBRARY = {"unifac": (UFSG, UFIP, 0), "unifac-dortmund": (DOUFSG, DOUFIP2016, 1)}
 
 
-def best_seconds(run: Callable[[], object], repeats: int = 15) -> float:
-    """The shortest of several runs: the one least disturbed by the rest of the machine."""
-    times = []
+def best_seconds(*runs: Callable[[], object], repeats: int = 30) -> list[float]:
+    """The shortest of several runs of each, taken in turn so that a busy moment hits all alike."""
+    best = [float("inf")] * len(runs)
     for _ in range(repeats):
-        start = time.perf_counter()
-        run()
-        times.append(time.perf_counter() - start)
-    return min(times)
+        for k, run in enumerate(runs):
+            start = time.perf_counter()
+            run()
+            best[k] = min(best[k], time.perf_counter() - start)
+    return best
 
 
 def library_seconds_per_point(method: str, T: np.ndarray, x: np.ndarray) -> float:
@@ -43,9 +44,10 @@ def library_seconds_per_point(method: str, T: np.ndarray, x: np.ndarray) -> floa
     )
     inner = x[1:-1].tolist()  # the library cannot take x = 0
     states = [(float(t), row) for t in T[::100] for row in inner]
-    return best_seconds(lambda: [model.to_T_xs(t, row).gammas() for t, row in states], 3) / len(
-        states
+    (seconds,) = best_seconds(
+        lambda: [model.to_T_xs(t, row).gammas() for t, row in states], repeats=5
     )
+    return seconds / len(states)
 
 
 def grid(method: str) -> None:
@@ -53,9 +55,6 @@ def grid(method: str) -> None:
     x = np.column_stack([x1, 1.0 - x1])
     model = activity_model([ETHANOL, BUTANONE], method)
     points = T.size * x1.size
-    ours = best_seconds(lambda: model.ln_gamma(T[:, None], x))
-    slope = best_seconds(lambda: model.ln_gamma_slope(T[:, None], x))
-
     groups = model.groups
     (B,) = kernel.group_fields(groups, T)
     Z_T, B_T = groups.surface.T, B.swapaxes(1, 2)
@@ -68,7 +67,11 @@ def grid(method: str) -> None:
         D @ Z_T
         D @ B_T
 
-    bare = best_seconds(bare_products)
+    ours, slope, bare = best_seconds(
+        lambda: model.ln_gamma(T[:, None], x),
+        lambda: model.ln_gamma_slope(T[:, None], x),
+        bare_products,
+    )
     library = library_seconds_per_point(method, T, x)
     print(f"{method}, {T.size} x {x1.size} grid of a binary")
     print(f"  ln gamma                    {ours / points * 1e9:8.1f} ns a point")
@@ -88,13 +91,15 @@ def pairs(method: str) -> None:
     n = 20_000
     solutes, solvents = [molecule() for _ in range(n)], [molecule() for _ in range(n)]
     T = rng.uniform(280.0, 400.0, n)
-    batch = best_seconds(lambda: ln_gamma_infinite_pairs(method, solutes, solvents, T), 3)
 
     def one_by_one() -> None:
         for k in range(500):
             ln_gamma_infinite(activity_model([solutes[k], solvents[k]], method), T[k])
 
-    single = best_seconds(one_by_one, 3) / 500
+    batch, single = best_seconds(
+        lambda: ln_gamma_infinite_pairs(method, solutes, solvents, T), one_by_one, repeats=5
+    )
+    single /= 500
     print(f"{method}, {n} different binaries at infinite dilution")
     print(f"  pairs a second              {n / batch:8.0f}  (asked: at least 20000)")
     print(f"  rate over model by model    {single * n / batch:8.0f}")

@@ -46,6 +46,23 @@ def test_equal_temperatures_and_one_temperature_agree(model):
     )
 
 
+def test_equal_temperatures_still_make_a_grid_with_a_column_of_compositions(model):
+    grid = model.ln_gamma(np.full(5, 330.0), COMPOSITIONS[:, None])
+    assert grid.shape == (4, 5, 3)
+    expected = model.ln_gamma(330.0, COMPOSITIONS)[:, None]
+    np.testing.assert_allclose(grid, np.broadcast_to(expected, grid.shape), rtol=1e-12, atol=1e-12)
+
+
+def test_axes_that_interleave_are_broadcast(model):
+    T = TEMPERATURES[:3].reshape(3, 1, 1) + np.arange(2.0)
+    x = COMPOSITIONS.reshape(4, 1, 3)
+    answer = model.ln_gamma(T, x)
+    assert answer.shape == (3, 4, 2, 3)
+    np.testing.assert_allclose(
+        answer[2, 3, 1], model.ln_gamma(T[2, 0, 1], x[3, 0]), rtol=1e-12, atol=1e-12
+    )
+
+
 def test_no_points_give_no_answers(model):
     assert model.ln_gamma(300.0, np.empty((0, 3))).shape == (0, 3)
     assert model.ln_gamma(np.empty(0), np.empty((0, 3))).shape == (0, 3)
