@@ -84,22 +84,33 @@ def test_infinite_dilution_keeps_order_and_explains_what_is_missing(service):
         assert_trust(result["confidence"])
 
 
-def test_a_refused_parameter_gives_null_in_a_batch_and_a_problem_alone(service):
-    # Original UNIFAC publishes no parameter between furfural and acetonitrile's group CCN.
+# Hansen et al. 1991, table II, leaves the pair of main groups CCN and furfural blank.
+MISSING = {"method": "unifac", "on_missing": "refuse"}
+
+
+def test_a_refused_parameter_is_null_in_a_batch(service):
     pair = {"solute": "CC#N", "solvent": "O=Cc1ccco1", "temperature_K": 300.0}
-    body = {"pairs": [pair], "method": "unifac", "on_missing": "refuse"}
+    body = {"pairs": [pair], **MISSING}
     [result] = service.post("/v1/infinite-dilution", body).json()["results"]
-    table = service.get("/v1/methods/unifac").json()
-    assert table["pairs_without_parameters"] > 0
-    if result["ln_gamma_inf"] is None:
-        mixture = {
-            "components": ["CC#N", "O=Cc1ccco1"],
-            "temperature_K": 300.0,
-            "mole_fractions": [[0.5, 0.5]],
-            "method": "unifac",
-            "on_missing": "refuse",
-        }
-        assert_problem(service.post("/v1/activity-coefficients", mixture), "missing-parameter")
+    assert result["ln_gamma_inf"] is None
+    assert "missing_parameter" in {r["code"] for r in result["confidence"]["reasons"]}
+
+
+def test_a_refused_parameter_is_a_problem_for_one_mixture(service):
+    mixture = {"components": ["CC#N", "O=Cc1ccco1"], "temperature_K": 300.0, **MISSING}
+    body = mixture | {"mole_fractions": [[0.5, 0.5]]}
+    problem = assert_problem(service.post("/v1/activity-coefficients", body), "missing-parameter")
+    assert problem["method"] == "unifac"
+    assert len(problem["pairs"]) >= 1
+
+
+def test_an_estimated_parameter_is_never_trusted_much(service):
+    pair = {"solute": "CC#N", "solvent": "O=Cc1ccco1", "temperature_K": 300.0}
+    body = {"pairs": [pair], "method": "unifac", "on_missing": "estimate"}
+    [result] = service.post("/v1/infinite-dilution", body).json()["results"]
+    assert result["ln_gamma_inf"] is not None
+    assert result["method"] != "unifac"
+    assert result["confidence"]["grade"] in {"low", "none"}
 
 
 @pytest.mark.parametrize("given", [{"pressure_kPa": ATMOSPHERE}, {"temperature_K": 350.0}])

@@ -1,0 +1,90 @@
+"""The Python client against a real server on a real port."""
+
+import socket
+import threading
+import time
+from collections.abc import Iterator
+
+import pytest
+import uvicorn
+from pydantic import ValidationError
+
+from api.application import create_app
+from api.client import MixwrightClient, ServiceProblemError
+from api.schemas.molecule import MoleculeInput
+from api.settings import Settings
+
+
+@pytest.fixture(scope="module")
+def address() -> Iterator[str]:
+    listener = socket.socket()
+    listener.bind(("127.0.0.1", 0))
+    config = uvicorn.Config(create_app(Settings()), log_level="warning")
+    server = uvicorn.Server(config)
+    thread = threading.Thread(target=server.run, kwargs={"sockets": [listener]}, daemon=True)
+    thread.start()
+    for _ in range(200):
+        if server.started:
+            break
+        time.sleep(0.05)
+    assert server.started
+    yield f"http://127.0.0.1:{listener.getsockname()[1]}"
+    server.should_exit = True
+    thread.join(timeout=10.0)
+    listener.close()
+
+
+@pytest.fixture
+def client(address: str) -> Iterator[MixwrightClient]:
+    with MixwrightClient(address) as opened:
+        yield opened
+
+
+def test_service_questions(client):
+    assert client.health().status == "ok"
+    assert client.ready().status == "ready"
+    assert "unifac" in {entry.id for entry in client.methods().methods}
+    assert client.method("unifac").subgroup_count > 100
+
+
+def test_molecules(client):
+    answer = client.molecules(["CCO", {"name": "acetone"}, MoleculeInput(smiles="O")])
+    assert [result.formula for result in answer.results] == ["C2H6O", "C3H6O", "H2O"]
+    only = client.molecules(["CCO"], methods=["psrk"]).results[0]
+    assert set(only.assignments) == {"psrk"}
+    assert client.depiction("CCO").lstrip().startswith("<")
+
+
+def test_every_prediction_comes_back_typed(client):
+    pair = ["CCO", "O"]
+    point = client.bubble_point(pair, [0.3, 0.7], pressure_kPa=101.325)
+    assert point.temperature_K is not None
+    dew = client.dew_point(pair, [0.3, 0.7], temperature_K=350.0)
+    assert dew.pressure_kPa is not None
+    flash = client.flash(["CO", "O"], [0.4, 0.6], temperature_K=350.0, pressure_kPa=101.325)
+    assert flash.vapour_fraction is not None
+    assert len(client.diagram("Txy", pair, pressure_kPa=101.325, points=11).x1) == 11
+    assert len(client.azeotropes(pair, pressure_kPa=101.325).azeotropes) == 1
+    assert client.liquid_split(["CCCCO", "O"], temperature_K=298.15).splits
+    one = client.activity_coefficients(pair, 300.0, [[0.5, 0.5], [0.0, 1.0]])
+    assert [p.temperature_K for p in one.points] == [300.0, 300.0]
+    two = client.activity_coefficients(pair, [300.0, 310.0], [[0.5, 0.5], [0.5, 0.5]])
+    assert [p.temperature_K for p in two.points] == [300.0, 310.0]
+    limits = client.infinite_dilution([("CCO", "O", 300.0), ("O", "CCO", 300.0)])
+    assert all(result.ln_gamma_inf is not None for result in limits.results)
+
+
+def test_a_problem_is_an_exception_with_type_field_and_cure(client):
+    with pytest.raises(ServiceProblemError) as refused:
+        client.bubble_point(["CCO", "C(C"], [0.5, 0.5], pressure_kPa=101.325)
+    problem = refused.value.problem
+    assert problem.type == "/problems/unreadable-smiles"
+    assert problem.field == "/components/1/smiles"
+    assert problem.cure in str(refused.value)
+
+
+def test_a_request_that_cannot_be_right_is_not_sent(client):
+    with pytest.raises(ValidationError):
+        client.molecules([{"smiles": "CCO", "name": "ethanol"}])
+    with pytest.raises(ValidationError):
+        client.bubble_point(["CCO"], [float("nan")], pressure_kPa=101.325)
