@@ -41,9 +41,8 @@ def balanced(system: System, condition: Condition, azeotropes: list[Azeotrope]) 
     pure = condition.boil(system, np.eye(n))
     total = 0
     for i in range(n):
-        ratios = _escape(
-            system, np.eye(n)[i], float(pure.temperature_K[i]), float(pure.pressure_kPa[i])
-        )
+        x, T, P = np.eye(n)[i], float(pure.temperature_K[i]), float(pure.pressure_kPa[i])
+        ratios = _escape(system, x, T, P, x)
         total += 2 * int(np.prod(np.sign(-ratios[np.arange(n) != i])))
     for azeotrope in azeotropes:
         total += 2 ** len(azeotrope.components) * _sign(system, azeotrope)
@@ -56,9 +55,29 @@ def _sign(system: System, azeotrope: Azeotrope) -> int:
     inner = _derivatives(system, azeotrope)
     basis = steps_basis(int(present.sum()))
     values = np.linalg.eigvalsh(basis @ inner @ basis.T)
-    liquid = azeotrope.liquids[0]
-    outward = _escape(system, liquid, azeotrope.temperature_K, azeotrope.pressure_kPa)[~present]
+    outward = _outward(system, azeotrope)[~present]
     return int(np.prod(np.sign(-values)) * np.prod(np.sign(-outward)))
+
+
+def _outward(system: System, azeotrope: Azeotrope) -> FloatArray:
+    """ln K of every component, K over both liquids together where there are two."""
+    T, P = azeotrope.temperature_K, azeotrope.pressure_kPa
+    vapour = azeotrope.mole_fractions
+    ln_k = [_escape(system, x, T, P, vapour) for x in azeotrope.liquids]
+    if len(ln_k) == 1:
+        return ln_k[0]
+    share = liquid_share(azeotrope)
+    # A trace divides itself between the liquids: 1/K = sum of share/K.
+    shares = np.log([max(share, 1e-300), max(1.0 - share, 1e-300)])
+    return np.asarray(-np.logaddexp(shares[0] - ln_k[0], shares[1] - ln_k[1]))
+
+
+def liquid_share(azeotrope: Azeotrope) -> float:
+    """Mole fraction of both liquids that is in the first."""
+    first, second = azeotrope.liquids
+    widest = int(np.argmax(np.abs(first - second)))
+    gap = azeotrope.mole_fractions[widest] - second[widest]
+    return float(gap / (first[widest] - second[widest]))
 
 
 def _derivatives(system: System, azeotrope: Azeotrope) -> FloatArray:
@@ -69,16 +88,14 @@ def _derivatives(system: System, azeotrope: Azeotrope) -> FloatArray:
         T = np.array([azeotrope.temperature_K])
         return np.asarray(part.activity.ln_gamma_mole_derivatives(T, z[None])[0])
     first, second = (liquid[kept] for liquid in azeotrope.liquids)
-    widest = int(np.argmax(np.abs(first - second)))
-    share = (z[widest] - second[widest]) / (first[widest] - second[widest])
+    share = liquid_share(azeotrope)
     amounts = np.stack([share * first, (1.0 - share) * second])
     two = TwoLiquidAzeotrope(amounts, azeotrope.temperature_K, azeotrope.pressure_kPa)
     return convex_derivatives(part, two)
 
 
-def _escape(system: System, x: FloatArray, T: float, P: float) -> FloatArray:
+def _escape(system: System, x: FloatArray, T: float, P: float, vapour: FloatArray) -> FloatArray:
     """ln K of every component over a boiling liquid: positive where a trace of it leaves."""
     temperature, pressure = np.array([T]), np.array([P])
     ln_k = system.ln_volatility(temperature, x[None])[0] - np.log(P)
-    vapour = x[None] / x.sum()
-    return np.asarray(ln_k - system.vapour.ln_correction(temperature, pressure, vapour)[0])
+    return np.asarray(ln_k - system.vapour.ln_correction(temperature, pressure, vapour[None])[0])

@@ -30,6 +30,7 @@ MAX_ITERATIONS = 100
 TOLERANCE = 1e-11
 #: Phase amounts must add up to the feed this closely: a few roundings.
 BALANCE = 1e-10
+SMALLEST_CURVATURE = 1e-6
 NO_BOUNDS = "the bubble or dew pressure of this mixture was not found"
 NOT_CONVERGED = "the amounts of the phases did not settle"
 
@@ -119,36 +120,42 @@ class _Split:
 
     def __init__(self, system: System, T: FloatArray, P: FloatArray, z: FloatArray) -> None:
         self.system, self.T, self.P, self.z = system, T, P, z
-        self.v = np.zeros_like(z)
+        # Both amounts are kept: a difference from the feed would lose what little there is of one.
+        self.v, self.lean = np.zeros_like(z), z.copy()
         self.settled = np.zeros(len(z), dtype=bool)
 
     @property
     def fraction(self) -> FloatArray:
-        return np.asarray(self.v.sum(axis=1))
+        return np.asarray(self.v.sum(axis=1) / (self.v + self.lean).sum(axis=1))
 
     @property
     def liquid(self) -> FloatArray:
-        amounts = self.z - self.v
-        return np.asarray(amounts / amounts.sum(axis=1, keepdims=True))
+        return np.asarray(self.lean / self.lean.sum(axis=1, keepdims=True))
 
     @property
     def vapour(self) -> FloatArray:
         return np.asarray(self.v / self.v.sum(axis=1, keepdims=True))
 
     def run(self, dew_liquid: FloatArray, bubble_vapour: FloatArray) -> None:
-        """Start between the dew and the bubble point, and settle."""
-        if not len(self.z):
-            return
-        rows = np.arange(len(self.z), dtype=np.int64)
+        """Settle from between the dew and the bubble point, else from either of them."""
+        ln_z, ln_x, ln_y = safe_log(self.z), safe_log(dew_liquid), safe_log(bubble_vapour)
         present = self.z > 0.0
-        middle = 0.5 * (self.z + dew_liquid)
-        start = np.log(np.where(present, 0.5 * (self.z + bubble_vapour), 1.0))
-        self._share(rows, start - np.log(np.where(present, middle, 1.0)))
+        from_dew, from_bubble = np.zeros_like(self.z), np.zeros_like(self.z)
+        np.subtract(ln_z, np.maximum(ln_x, -690.0), out=from_dew, where=present)
+        np.subtract(np.maximum(ln_y, -690.0), ln_z, out=from_bubble, where=present)
+        for start in (0.5 * (from_dew + from_bubble), from_dew, from_bubble):
+            rows = np.flatnonzero(~self.settled)
+            if len(rows):
+                self._share(rows, np.clip(start[rows], -300.0, 300.0))
+                self._settle(rows)
+
+    def _settle(self, rows: IntArray) -> None:
+        """Iterate until the fugacities agree or the iterations end."""
         for iteration in range(MAX_ITERATIONS):
             x, y = self.liquid[rows], self.vapour[rows]
             ln_k = self._ln_k(rows, x, y)
-            gap = np.where(present[rows], safe_log(y) - safe_log(x) - ln_k, 0.0)
-            gap = np.where((x > 1e-290) & (y > 1e-290), gap, 0.0)
+            gap = np.zeros_like(x)
+            np.subtract(safe_log(y), safe_log(x) + ln_k, out=gap, where=(x > 1e-290) & (y > 1e-290))
             done = np.abs(gap).max(axis=1) <= TOLERANCE
             self.settled[rows[done]] = True
             rows, ln_k, gap = rows[~done], ln_k[~done], gap[~done]
@@ -172,23 +179,25 @@ class _Split:
         share = np.clip(share, 1e-9, 1.0 - 1e-9)[:, None]
         # v_i/z_i = b K/(1 - b + b K), written so that neither end loses figures.
         ratio = np.exp(np.clip(ln_k, -300.0, 300.0))
-        self.v[rows] = self.z[rows] * share * ratio / (1.0 - share + share * ratio)
+        whole = 1.0 - share + share * ratio
+        self.v[rows] = self.z[rows] * share * ratio / whole
+        self.lean[rows] = self.z[rows] * (1.0 - share) / whole
 
     def _newton(self, rows: IntArray, gap: FloatArray) -> None:
-        z, v = self.z[rows], self.v[rows]
-        lean = z - v
+        z, v, lean = self.z[rows], self.v[rows], self.lean[rows]
         scale = np.sqrt(np.maximum(v * lean, 0.0) / np.where(z > 0.0, z, 1.0))
         matrix = self._curvature(rows, v, lean) * scale[:, :, None] * scale[:, None, :]
         matrix += np.eye(z.shape[1]) * (scale <= 0.0)[:, :, None]
-        right = -(scale * gap)[:, :, None]
-        try:
-            step = scale * np.linalg.solve(matrix, right)[:, :, 0]
-        except np.linalg.LinAlgError:
-            return
+        # Where the liquid is unstable the curvature has the wrong sign: keep the step downhill.
+        values, vectors = np.linalg.eigh(matrix)
+        values = np.maximum(np.abs(values), SMALLEST_CURVATURE)
+        rotated = np.einsum("mji,mj->mi", vectors, -scale * gap) / values
+        step = scale * np.einsum("mij,mj->mi", vectors, rotated)
         # The longest step that keeps nine tenths of the way to an empty phase.
         limit = np.where(step < 0.0, v, lean) / np.maximum(np.abs(step), 1e-300)
         length = np.minimum(1.0, 0.9 * np.where(scale > 0.0, limit, np.inf).min(axis=1))
         self.v[rows] = v + step * length[:, None]
+        self.lean[rows] = lean - step * length[:, None]
 
     def _curvature(self, rows: IntArray, v: FloatArray, lean: FloatArray) -> FloatArray:
         """Second derivative of the Gibbs energy over RT in the vapour amounts."""

@@ -18,7 +18,7 @@ from groups.equilibrium.system import System
 from groups.equilibrium.two_liquids import two_liquids
 
 TOLERANCE = 1e-10
-MAX_ITERATIONS = 60
+MAX_ITERATIONS = 40
 #: Amounts below this mean that the point runs to an edge or a phase vanishes.
 EDGE = 1e-13
 
@@ -60,7 +60,10 @@ def heterogeneous_azeotrope(
         gap = _gap(system, amounts, T, ln_P)
         if np.abs(gap).max() <= TOLERANCE:
             return _checked(system, TwoLiquidAzeotrope(amounts, T, float(np.exp(ln_P))))
-        step, change = _step(system, amounts, T, gap, condition)
+        taken = _step(system, amounts, T, gap, condition)
+        if taken is None:
+            return None
+        step, change = taken
         amounts = amounts * np.exp(step)
         amounts /= amounts.sum()
         if amounts.min() < EDGE * 1e-6 or amounts.sum(axis=1).min() < 1e-9:
@@ -106,7 +109,8 @@ def _hessians(system: System, amounts: FloatArray, T: float) -> FloatArray:
 
 def _step(
     system: System, amounts: FloatArray, T: float, gap: FloatArray, condition: Condition
-) -> tuple[FloatArray, float]:
+) -> tuple[FloatArray, float] | None:
+    """Relative steps of the amounts and the step of T or ln P; None where singular."""
     n = amounts.shape[1]
     first, second = _hessians(system, amounts, T)
     x = amounts / amounts.sum(axis=1, keepdims=True)
@@ -125,7 +129,9 @@ def _step(
     try:
         solution = np.linalg.solve(matrix, np.append(-gap, 0.0))
     except np.linalg.LinAlgError:
-        return np.full_like(amounts, -1e3), 0.0
+        return None
+    if not np.isfinite(solution).all():
+        return None
     shrink = min(1.0, LARGEST_STEP / max(float(np.abs(solution[:-1]).max()), 1e-300))
     return solution[:-1].reshape(2, n) * shrink, float(solution[-1]) * shrink
 

@@ -46,7 +46,7 @@ def phase_fraction(z: FloatArray, ln_k: FloatArray) -> tuple[FloatArray, BoolArr
         low[rows] = np.where(value > 0.0, b[rows], low[rows])
         high[rows] = np.where(value > 0.0, high[rows], b[rows])
         newton = b[rows] - value / slope
-        good = (newton > low[rows]) & (newton < high[rows])
+        good = (newton >= low[rows]) & (newton <= high[rows])
         new = np.where(good, newton, 0.5 * (low[rows] + high[rows]))
         small = np.abs(new - b[rows]) <= 1e-16 + 4e-16 * b[rows]
         b[rows] = new

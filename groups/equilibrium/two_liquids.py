@@ -13,9 +13,9 @@ from groups.equilibrium.phase_fraction import phase_fraction
 from groups.equilibrium.states import safe_log
 from groups.equilibrium.system import LiquidModel
 
-MAX_ITERATIONS = 400
+MAX_ITERATIONS = 60
 #: Change of ln(distribution coefficient) at which a Newton method may take over.
-TOLERANCE = 1e-7
+TOLERANCE = 1e-4
 
 
 @dataclass(frozen=True, slots=True)
