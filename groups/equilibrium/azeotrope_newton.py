@@ -17,6 +17,8 @@ from groups.equilibrium.system import System
 TOLERANCE = 1e-11
 MAX_ITERATIONS = 50
 LARGEST_STEP = 1.0
+#: Added to the diagonal of matrices of order one where rounding made one of them singular.
+NUDGE = 1e-9
 #: A composition that runs below this runs to the edge, where another face takes over.
 EDGE = 1e-14
 
@@ -99,7 +101,12 @@ def _steps(
     size = np.abs(matrix).max(axis=2, keepdims=True)
     singular = np.abs(np.linalg.det(matrix / np.where(size > 0.0, size, 1.0))) < 1e-280
     matrix[singular] = np.eye(n + 1)
-    solution = np.linalg.solve(matrix, right[:, :, None])[:, :, 0]
+    try:
+        solution = np.linalg.solve(matrix, right[:, :, None])[:, :, 0]
+    except np.linalg.LinAlgError:  # one row that rounding made singular must not stop the others
+        nudged = matrix + NUDGE * np.eye(n + 1)
+        solution = np.linalg.solve(nudged, right[:, :, None])[:, :, 0]
+    solution = np.where(np.isfinite(solution), solution, 0.0)
     change = solution[:, :n] / np.where(present, x, 1.0)
     largest = np.abs(change).max(axis=1, keepdims=True)
     shrink = np.minimum(1.0, LARGEST_STEP / np.maximum(largest, 1e-300))

@@ -137,9 +137,9 @@ def _roots(system: System, condition: Condition, curve: BoilingCurve) -> Azeotro
     ).astype(np.int64)
     at, at_T = _interpolated(s, T, ln_alpha, crossings)
     size = np.abs(ln_alpha)
-    misses = 1 + np.flatnonzero(
-        (size[1:-1] <= size[:-2]) & (size[1:-1] <= size[2:]) & (size[1:-1] < NEAR_MISS)
-    )
+    low = (size[1:-1] <= size[:-2]) & (size[1:-1] <= size[2:]) & (size[1:-1] < NEAR_MISS)
+    same_side = (ln_alpha[1:-1] * ln_alpha[:-2] > 0.0) & (ln_alpha[1:-1] * ln_alpha[2:] > 0.0)
+    misses = 1 + np.flatnonzero(low & same_side)
     aside = [0.5 * (s[misses] + s[misses + k]) for k in (-1, 1)]
     if not len(crossings) + len(misses):
         return _none()

@@ -10,7 +10,7 @@ from groups.equilibrium.azeotrope import Azeotrope
 from groups.equilibrium.binary_azeotropes import Splitting, binary_azeotropes, splitting
 from groups.equilibrium.boiling_curve import Condition, boiling_curve
 from groups.equilibrium.conditions import checked_pressure, checked_temperature
-from groups.equilibrium.stability import stability
+from groups.equilibrium.stability import stability, tested
 from groups.equilibrium.states import States
 from groups.equilibrium.system import System
 from groups.equilibrium.three_phase import ThreePhase
@@ -187,9 +187,19 @@ def _stable(system: System, states: States, x: FloatArray, liquids: Splitting) -
         stable &= ~_inside(line, x)
     unknown = np.flatnonzero(stable & states.converged & (x > 0.0).all(axis=1))
     if len(unknown):
-        test = stability(system.activity, states.temperature_K[unknown], x[unknown])
-        stable[unknown] = test.stable
+        stable[unknown] = _outside_gaps(system, states.temperature_K[unknown], x[unknown], liquids)
     return stable
+
+
+def _outside_gaps(system: System, T: FloatArray, x: FloatArray, liquids: Splitting) -> BoolArray:
+    """Stability beside the gaps: their liquids are the trials that matter there."""
+    if not liquids.lines:
+        return stability(system.activity, T, x).stable
+    ends = [end for line in liquids.lines for end in (line.first, line.second)]
+    trials = np.stack([*ends, *(np.eye(2) * (1.0 - 2e-6) + 1e-6)])
+    starts = np.broadcast_to(trials[:, None, :], (len(trials), *x.shape)).copy()
+    plane = np.log(x) + system.activity.ln_gamma(T, x)
+    return tested(system.activity, T, x, plane, starts).stable
 
 
 def _inside(line: ThreePhase, x: FloatArray) -> BoolArray:

@@ -64,13 +64,18 @@ def stability(
     """
     x = checked_fractions(mole_fractions, liquid.n_components)
     T, x = paired(checked_temperature(temperature_K), x)
-    m, n = x.shape
-    if not m:
+    if not len(x):
         return Stability(np.empty(0, dtype=bool), np.empty(0), x)
     plane = safe_log(x) + liquid.ln_gamma(T, x)
-    beside = [_beside(x, factor) for factor in (0.9, 1.1)] if n <= 3 else []
-    starts = np.concatenate([trial_starts(plane), *beside])
-    s = len(starts)
+    beside = [_beside(x, factor) for factor in (0.9, 1.1)] if x.shape[1] <= 3 else []
+    return tested(liquid, T, x, plane, np.concatenate([trial_starts(plane), *beside]))
+
+
+def tested(
+    liquid: LiquidModel, T: FloatArray, x: FloatArray, plane: FloatArray, starts: FloatArray
+) -> Stability:
+    """The test of liquids x, of shape (m, n), from trial liquids of shape (n_starts, m, n)."""
+    s, m, n = starts.shape
     points = stationary_points(
         liquid, np.tile(T, s), np.tile(plane, (s, 1)), starts.reshape(s * m, n)
     )
