@@ -1,10 +1,10 @@
 """Services with the usual and with low caps."""
 
 import pytest
-from service_caller import Service
 
 from api.application import create_app
 from api.settings import Settings
+from tests.api.service_caller import Service
 
 
 @pytest.fixture(scope="session")

@@ -8,13 +8,13 @@ import anyio
 import httpx
 import pytest
 from fastapi import FastAPI
-from problem_check import assert_problem
-from service_caller import Service
 
 from api.application import create_app
 from api.limits import TimeLimit
 from api.problems import add_problem_handlers
 from api.settings import Settings
+from tests.api.problem_check import assert_problem
+from tests.api.service_caller import Service
 
 JSON = {"Content-Type": "application/json"}
 

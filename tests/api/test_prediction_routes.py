@@ -6,11 +6,11 @@ import math
 from typing import Any
 
 import pytest
-from problem_check import assert_problem
 
 from groups import prediction
 from groups.prediction import Component
 from groups.structure.molecule import molecule_from_smiles
+from tests.api.problem_check import assert_problem
 
 ETHANOL_WATER: dict[str, Any] = {"components": ["CCO", "O"]}
 ATMOSPHERE = 101.325
@@ -347,7 +347,19 @@ INVOLATILE = "C(C(C(C(C(CO)O)O)O)O)O"
             "/v1/bubble-point",
             POINT | {"temperature_K": 350.0, "mole_fractions": [0.3, 0.8]},
             "fraction-sum",
-            None,
+            "/mole_fractions",
+        ),
+        (
+            "/v1/flash",
+            POINT | {"temperature_K": 350.0, "pressure_kPa": 100.0, "mole_fractions": [1.3, -0.3]},
+            "out-of-range",
+            "/mole_fractions/0",
+        ),
+        (
+            "/v1/liquid-splits",
+            ETHANOL_WATER | {"temperature_K": 300.0, "mole_fractions": [0.3, 0.8]},
+            "fraction-sum",
+            "/mole_fractions",
         ),
         ("/v1/flash", POINT | {"temperature_K": 350.0}, "invalid-request", "/pressure_kPa"),
         ("/v1/diagrams", DIAGRAM | {"kind": "xy"}, "invalid-request", "/kind"),

@@ -4,10 +4,10 @@ import json
 from typing import Any
 
 import pytest
-from problem_check import assert_problem
 
 from api.problem_types import ERROR_TYPES, REQUEST_TYPES, all_problem_types, problem_type_of
 from groups import errors
+from tests.api.problem_check import assert_problem
 
 MIXTURE: dict[str, Any] = {
     "components": ["CCO", "O"],

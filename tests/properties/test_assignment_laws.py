@@ -6,13 +6,13 @@ from dataclasses import replace
 from functools import cache
 
 import pytest
-from random_molecules import random_molecules, rewritten
 from rdkit import Chem
 
 from groups.structure import assignment, matching
 from groups.structure.assignment import Assignment, assign
 from groups.structure.molecule import Molecule, molecule_from_smiles
 from groups.structure.patterns import ASSIGNED_METHODS, pattern_set
+from tests.properties.random_molecules import random_molecules, rewritten
 
 METHODS = ASSIGNED_METHODS[:6]
 EASY = (

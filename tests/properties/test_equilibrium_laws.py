@@ -9,8 +9,6 @@ from hypothesis import strategies as st
 
 sys.path.insert(0, str(Path(__file__).parents[1] / "unit" / "equilibrium"))
 
-from equilibrium_mixtures import LINES, Regular, regular_system
-
 from groups.equilibrium import (
     azeotropes,
     binary_split,
@@ -21,6 +19,7 @@ from groups.equilibrium import (
     stability,
 )
 from groups.equilibrium.subset import subset
+from tests.unit.equilibrium.equilibrium_mixtures import LINES, Regular, regular_system
 
 STRENGTH = st.floats(-6.0, 8.0)
 SEED = st.integers(0, 2**31)

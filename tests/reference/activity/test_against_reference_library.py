@@ -8,10 +8,10 @@ from typing import Any
 
 import numpy as np
 import pytest
-from random_mixtures import RandomMixture, random_mixture
 
 from groups.activity import activity_model, excess_enthalpy, excess_heat_capacity
 from groups.parameters import METHODS, MethodTable, table
+from tests.reference.activity.random_mixtures import RandomMixture, random_mixture
 
 thermo_unifac = pytest.importorskip("thermo.unifac", reason="the reference library is absent")
 

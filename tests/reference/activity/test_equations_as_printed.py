@@ -1,12 +1,12 @@
 """The rearranged array equations give what the printed ones give."""
 
 import numpy as np
-import paper_equations
 import pytest
-from random_mixtures import random_mixture
 
 from groups.activity import activity_model
 from groups.parameters import METHODS, table
+from tests.reference.activity import paper_equations
+from tests.reference.activity.random_mixtures import random_mixture
 
 # Both are exact algebra; what differs is rounding in sums of up to about a hundred terms.
 TOLERANCE = 1e-11

@@ -1,8 +1,7 @@
 """The committed absurd mixtures are those that the tables predict today."""
 
-import measure_example_mixtures
-
 from groups.parameters.example_mixtures import read_absurd_mixtures
+from tests.reference.parameters import measure_example_mixtures
 
 
 def test_the_list_of_absurd_mixtures_is_current() -> None:

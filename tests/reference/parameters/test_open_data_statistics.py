@@ -1,9 +1,9 @@
 """The committed statistics of open data are those that the data give today."""
 
-import measure_open_data
 import pytest
 
 from groups.parameters.open_data import read_open_data
+from tests.reference.parameters import measure_open_data
 
 
 @pytest.mark.skipif(

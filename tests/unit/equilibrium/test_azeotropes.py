@@ -4,7 +4,13 @@ import itertools
 
 import numpy as np
 import pytest
-from equilibrium_mixtures import (
+
+from groups.equilibrium import System, azeotropes
+from groups.equilibrium.azeotrope_index import balanced
+from groups.equilibrium.boiling_curve import Condition
+from groups.equilibrium.subset import subset
+from groups.errors import InvalidInputError
+from tests.unit.equilibrium.equilibrium_mixtures import (
     ACETONE,
     BENZENE,
     ETHANOL,
@@ -13,12 +19,6 @@ from equilibrium_mixtures import (
     Antoine,
     regular_system,
 )
-
-from groups.equilibrium import System, azeotropes
-from groups.equilibrium.azeotrope_index import balanced
-from groups.equilibrium.boiling_curve import Condition
-from groups.equilibrium.subset import subset
-from groups.errors import InvalidInputError
 
 # Smith, Van Ness & Abbott (2005), appendix B.2, from memory.
 CHLOROFORM = Antoine(13.7324, 2548.74, 218.552 - 273.15)

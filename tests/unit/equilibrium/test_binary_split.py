@@ -2,10 +2,10 @@
 
 import numpy as np
 import pytest
-from equilibrium_mixtures import Margules, Regular
 
 from groups.equilibrium import binary_split, binary_splits, stability
 from groups.errors import ShapeError
+from tests.unit.equilibrium.equilibrium_mixtures import Margules, Regular
 
 
 def symmetric(strength: float) -> Regular:

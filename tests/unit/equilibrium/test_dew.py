@@ -2,7 +2,6 @@
 
 import numpy as np
 import pytest
-from equilibrium_mixtures import BENZENE, TOLUENE, WATER, regular_system
 
 from groups.equilibrium import (
     bubble_pressure,
@@ -11,6 +10,7 @@ from groups.equilibrium import (
     dew_temperature,
     stability,
 )
+from tests.unit.equilibrium.equilibrium_mixtures import BENZENE, TOLUENE, WATER, regular_system
 
 
 def test_an_ideal_vapour_condenses_at_the_harmonic_mean():

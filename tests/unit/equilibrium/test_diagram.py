@@ -2,7 +2,10 @@
 
 import numpy as np
 import pytest
-from equilibrium_mixtures import (
+
+from groups.equilibrium import System, bubble_temperature, diagram
+from groups.errors import InvalidInputError, OutOfRangeError, ShapeError
+from tests.unit.equilibrium.equilibrium_mixtures import (
     ACETONE,
     BENZENE,
     METHANOL,
@@ -11,9 +14,6 @@ from equilibrium_mixtures import (
     Margules,
     regular_system,
 )
-
-from groups.equilibrium import System, bubble_temperature, diagram
-from groups.errors import InvalidInputError, OutOfRangeError, ShapeError
 
 
 def test_both_ends_are_pure_and_exact():

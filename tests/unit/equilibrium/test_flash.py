@@ -2,10 +2,10 @@
 
 import numpy as np
 import pytest
-from equilibrium_mixtures import BENZENE, TOLUENE, regular_system
 
 from groups.equilibrium import bubble_pressure, dew_pressure, flash
 from groups.equilibrium.phase_fraction import phase_fraction
+from tests.unit.equilibrium.equilibrium_mixtures import BENZENE, TOLUENE, regular_system
 
 SYSTEM = regular_system(1.4, -0.5, 0.8, power=1.0)
 
