@@ -19,7 +19,7 @@ from rdkit import Chem
 
 from groups.parameters import table
 from groups.structure.cover import Candidate, blocks, cheapest_cover
-from groups.structure.functional import functional_groups
+from groups.structure.functional import FunctionalGroup, functional_groups
 from groups.structure.matching import Matcher, with_published_aromaticity
 from groups.structure.molecule import Molecule
 from groups.structure.patterns import PatternSet, pattern_set
@@ -157,7 +157,7 @@ def _remembered(structure: _ByStructure, method: str) -> Assignment:
         complete=not left,
         groups=_grouped(chosen, matcher.patterns, method, mol.GetNumAtoms()),
         unassigned_atoms=left,
-        explanation=_explained(structure.mol, left, method) if left else None,
+        explanation=_explained(structure, left, method) if left else None,
         alternatives=alternatives,
     )
 
@@ -234,10 +234,16 @@ def _names(method: str) -> dict[int, tuple[str, int, str]]:
     }
 
 
-def _explained(mol: Chem.Mol, left: tuple[int, ...], method: str) -> str:
+def _explained(structure: _ByStructure, left: tuple[int, ...], method: str) -> str:
     """Which functional groups the uncovered atoms belong to, in words."""
     open_atoms = set(left)
-    lacking = [g.name for g in functional_groups(mol) if open_atoms & set(g.atoms)]
-    elements = sorted({mol.GetAtomWithIdx(i).GetSymbol() for i in left})
+    lacking = [g.name for g in _functional_groups(structure) if open_atoms & set(g.atoms)]
+    elements = sorted({structure.mol.GetAtomWithIdx(i).GetSymbol() for i in left})
     what = ", ".join(dict.fromkeys(lacking)) or f"this arrangement of {', '.join(elements)}"
     return f"The table of {method} has no group for: {what}."
+
+
+@lru_cache(maxsize=_REMEMBERED)
+def _functional_groups(structure: _ByStructure) -> tuple[FunctionalGroup, ...]:
+    """Remembered, since a molecule is often asked for by several methods."""
+    return functional_groups(structure.mol)
