@@ -153,20 +153,22 @@ def infinite_dilution(
     found: Sequence[answers.InfiniteDilutionAnswer],
 ) -> InfiniteDilutionResponse:
     """Limits, one result a pair."""
-    results = [
-        InfiniteDilutionResult(
-            solute=identity(answer.solute),
-            solvent=identity(answer.solvent),
-            temperature_K=answer.temperature_K,
-            ln_gamma_inf=number(answer.ln_gamma_inf),
-            gamma_inf=number(math.exp(min(answer.ln_gamma_inf, 700.0))),
-            method=answer.method,
-            methods_used=methods_used(answer.methods_used),
-            confidence=confidence(answer.confidence),
-        )
-        for answer in found
-    ]
+    results = [infinite_dilution_result(answer) for answer in found]
     return InfiniteDilutionResponse(results=results, cautions=cautions())
+
+
+def infinite_dilution_result(answer: answers.InfiniteDilutionAnswer) -> InfiniteDilutionResult:
+    """The limit of one pair."""
+    return InfiniteDilutionResult(
+        solute=identity(answer.solute),
+        solvent=identity(answer.solvent),
+        temperature_K=answer.temperature_K,
+        ln_gamma_inf=number(answer.ln_gamma_inf),
+        gamma_inf=number(math.exp(min(answer.ln_gamma_inf, 700.0))),
+        method=answer.method,
+        methods_used=methods_used(answer.methods_used),
+        confidence=confidence(answer.confidence),
+    )
 
 
 def phase_point(answer: answers.PhasePointAnswer) -> PhasePointResponse:

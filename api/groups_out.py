@@ -3,6 +3,8 @@
 from collections.abc import Mapping
 
 from api.answers import identity
+from api.molecules_in import Refused
+from api.problems import problem_of_error
 from api.schemas.molecule import (
     AlternativeGroup,
     GroupAssignment,
@@ -18,6 +20,19 @@ def molecule_result(molecule: Molecule, assignments: Mapping[str, Assignment]) -
     return MoleculeResult(
         **dict(identity(molecule)),
         assignments={method: assignment_out(found) for method, found in assignments.items()},
+    )
+
+
+def refused_result(refused: Refused) -> MoleculeResult:
+    """The place of a molecule that no method describes."""
+    return MoleculeResult(
+        canonical_smiles=None,
+        name=None,
+        cas=None,
+        formula=None,
+        molar_mass_g_mol=None,
+        assignments={},
+        problem=problem_of_error(refused.error, refused.field),
     )
 
 

@@ -1,10 +1,11 @@
 """From the molecules of a request to the components of `groups`, naming the field of each fault."""
 
 from collections.abc import Sequence
+from dataclasses import dataclass
 
 from api.schemas.molecule import MoleculeInput
 from api.user_vapour_pressure import own_vapour_pressure
-from groups.errors import MixwrightError
+from groups.errors import MixwrightError, UnsupportedStructureError
 from groups.prediction import Component
 from groups.structure.identify import identified, molecule_from_cas, molecule_from_name
 from groups.structure.molecule import Molecule, molecule_from_smiles
@@ -18,26 +19,57 @@ class MoleculesRefusedError(Exception):
         self.faults = tuple(faults)
 
 
+@dataclass(frozen=True, slots=True)
+class Refused:
+    """A molecule of a batch that no method describes, and the field that gives it."""
+
+    field: str
+    error: MixwrightError
+
+
 def molecules_of(fields: Sequence[tuple[str, MoleculeInput]]) -> list[Molecule]:
-    """The molecules of a request, each text read once; every fault is reported together.
+    """The molecules of a request; every fault is reported together.
 
     `fields` pairs the JSON pointer of each molecule with what was given there.
     """
+    outcomes = _outcomes(fields)
+    refuse([outcome for outcome in outcomes if isinstance(outcome, Refused)])
+    return [outcome for outcome in outcomes if isinstance(outcome, Molecule)]
+
+
+def batch_of(fields: Sequence[tuple[str, MoleculeInput]]) -> list[Molecule | Refused]:
+    """The molecules of a batch, with a `Refused` in the place of each that no method describes.
+
+    What the caller can correct (SMILES that cannot be read, a name that is not known) refuses the
+    whole batch; what the methods cannot describe costs only its own place.
+    """
+    outcomes = _outcomes(fields)
+    faults = [outcome for outcome in outcomes if isinstance(outcome, Refused)]
+    refuse([f for f in faults if not isinstance(f.error, UnsupportedStructureError)])
+    return outcomes
+
+
+def refuse(faults: Sequence[Refused]) -> None:
+    """Refuse a request for these faults; without any, do nothing."""
+    if faults:
+        raise MoleculesRefusedError([(fault.field, fault.error) for fault in faults])
+
+
+def _outcomes(fields: Sequence[tuple[str, MoleculeInput]]) -> list[Molecule | Refused]:
+    """Each molecule or its refusal; one text is read once."""
     read: dict[tuple[str, str], Molecule | MixwrightError] = {}
-    faults: list[tuple[str, MixwrightError]] = []
-    found: list[Molecule] = []
+    outcomes: list[Molecule | Refused] = []
     for field, given in fields:
         key = (given.identifier, str(getattr(given, given.identifier)))
         if key not in read:
             read[key] = _read(*key)
         outcome = read[key]
         if isinstance(outcome, MixwrightError):
-            faults.append((field if given.was_text else f"{field}/{given.identifier}", outcome))
+            place = field if given.was_text else f"{field}/{given.identifier}"
+            outcomes.append(Refused(place, outcome))
         else:
-            found.append(outcome)
-    if faults:
-        raise MoleculesRefusedError(faults)
-    return found
+            outcomes.append(outcome)
+    return outcomes
 
 
 def components_of(given: Sequence[MoleculeInput]) -> list[Component]:

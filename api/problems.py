@@ -87,12 +87,14 @@ def problem_of(
     return problem.model_copy(update=members or {})
 
 
-def problem_of_error(error: MixwrightError) -> Problem:
-    """The problem that an error of `groups` becomes."""
+def problem_of_error(error: MixwrightError, field: str | None = None) -> Problem:
+    """The problem that an error of `groups` becomes; `field` where the request knows it better."""
     kind = problem_type_of(error)
     members = {name: _wire(getattr(error, name)) for name in kind.members if hasattr(error, name)}
     detail = str(error) if kind.status < 500 else kind.title + "."
-    return problem_of(kind, detail, cure=error.cure, field=pointer(error.field), members=members)
+    return problem_of(
+        kind, detail, cure=error.cure, field=field or pointer(error.field), members=members
+    )
 
 
 def problem_of_validation(errors: Sequence[Mapping[str, object]], body: object = None) -> Problem:
@@ -146,7 +148,7 @@ async def _refused_by_groups(_request: Request, error: Exception) -> Response:
 async def _molecules_refused(_request: Request, error: Exception) -> Response:
     assert isinstance(error, MoleculesRefusedError)
     field, fault = error.faults[0]
-    first = problem_of_error(fault).model_copy(update={"field": field})
+    first = problem_of_error(fault, field)
     if len(error.faults) > 1:
         detail = f"{first.detail} ({len(error.faults)} molecules are refused.)"
         listed = [

@@ -12,7 +12,7 @@ from api.schemas.equilibrium import (
     LiquidSplitResponse,
     PhasePointResponse,
 )
-from api.schemas.molecule import MoleculesResponse
+from api.schemas.molecule import MoleculeIdentity, MoleculesResponse
 
 Cell = str | float | int | bool | None
 _FORMULA_STARTS = ("=", "+", "-", "@", "\t", "\r")
@@ -39,6 +39,10 @@ def _trust(confidence: Confidence) -> list[Cell]:
     return [confidence.grade, " ".join(reason.code for reason in confidence.reasons)]
 
 
+def _smiles(molecule: MoleculeIdentity | None) -> str | None:
+    return None if molecule is None else molecule.canonical_smiles
+
+
 _TRUST = ["grade", "reasons"]
 
 
@@ -50,6 +54,8 @@ def molecules_csv(answer: MoleculesResponse) -> str:
     """One row a molecule, method and group; one without groups keeps a row."""
     rows: list[list[Cell]] = []
     for index, result in enumerate(answer.results):
+        if result.problem is not None:
+            rows.append([index, None, None, None, False, None, None, None, None])
         for method, assignment in result.assignments.items():
             start: list[Cell] = [
                 index,
@@ -98,8 +104,8 @@ def infinite_dilution_csv(answer: InfiniteDilutionResponse) -> str:
     header = ["solute_smiles", "solvent_smiles", "temperature_K", "ln_gamma_inf", "gamma_inf"]
     rows = (
         [
-            result.solute.canonical_smiles,
-            result.solvent.canonical_smiles,
+            _smiles(result.solute),
+            _smiles(result.solvent),
             result.temperature_K,
             result.ln_gamma_inf,
             result.gamma_inf,

@@ -4,7 +4,7 @@ import textwrap
 from collections.abc import Sequence
 
 from api.schemas.confidence import Confidence
-from api.schemas.molecule import MoleculeIdentity
+from api.schemas.molecule import MoleculeIdentity, MoleculeResult
 
 WIDTH = 96
 
@@ -55,8 +55,10 @@ def cautions_text(cautions: Sequence[str]) -> str:
     return wrapped(" ".join(cautions))
 
 
-def named(molecule: MoleculeIdentity) -> str:
+def named(molecule: MoleculeIdentity | MoleculeResult | None) -> str:
     """Name and SMILES."""
+    if molecule is None or molecule.canonical_smiles is None:
+        return "(not described)"
     if molecule.name is None:
         return molecule.canonical_smiles
     return f"{molecule.name} ({molecule.canonical_smiles})"

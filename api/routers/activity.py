@@ -7,8 +7,9 @@ from fastapi.responses import Response
 
 from api import answers
 from api.dependencies import SettingsDependency, check_length
+from api.dilute_pairs import predicted_pairs
 from api.documentation import MIXTURE_PROBLEMS, post_responses
-from api.molecules_in import components_of, molecules_of
+from api.molecules_in import components_of
 from api.negotiation import MediaType, accepts
 from api.responses import CSV_ALSO, answer_as
 from api.schemas.activity import (
@@ -84,18 +85,9 @@ def predict_infinite_dilution(
     media: _json_or_csv,
     settings: SettingsDependency,
 ) -> Response:
-    """A pair that no table describes comes back null with the reason; the others are computed."""
+    """A pair that no table describes comes back null with the reason; the others are computed.
+
+    If no pair of the request can be taken, the request is refused.
+    """
     check_length("pairs", len(request.pairs), settings.max_pairs)
-    fields = [
-        (f"/pairs/{k}/{role}", getattr(pair, role))
-        for k, pair in enumerate(request.pairs)
-        for role in ("solute", "solvent")
-    ]
-    molecules = molecules_of(fields)
-    temperatures = [pair.temperature_K for pair in request.pairs]
-    found = prediction.infinite_dilution(
-        list(zip(molecules[::2], molecules[1::2], temperatures, strict=True)),
-        method=request.method,
-        on_missing=request.on_missing,
-    )
-    return answer_as(media, answers.infinite_dilution(found), infinite_dilution_csv)
+    return answer_as(media, predicted_pairs(request), infinite_dilution_csv)

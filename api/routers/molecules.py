@@ -7,14 +7,15 @@ from fastapi.responses import Response
 
 from api.dependencies import SettingsDependency, check_length
 from api.documentation import MOLECULE_PROBLEMS, post_responses
-from api.groups_out import molecule_result
-from api.molecules_in import molecules_of
+from api.groups_out import molecule_result, refused_result
+from api.molecules_in import Refused, batch_of, molecules_of, refuse
 from api.negotiation import MediaType, accepts
 from api.responses import CSV_ALSO, answer_as, picture_as
 from api.schemas.molecule import DepictionRequest, MoleculesRequest, MoleculesResponse
 from api.tables import molecules_csv
 from groups.prediction import assign_groups
 from groups.structure.depiction import depict
+from groups.structure.molecule import Molecule
 
 router = APIRouter(prefix="/v1/molecules", tags=["molecules"])
 _json_or_csv = Annotated[MediaType, Depends(accepts("application/json", "text/csv"))]
@@ -41,12 +42,23 @@ def describe_molecules(
     media: _json_or_csv,
     settings: SettingsDependency,
 ) -> Response:
-    """Every heavy atom and every hydrogen lands in exactly one group, or `complete` is false."""
+    """Every heavy atom and every hydrogen lands in exactly one group, or `complete` is false.
+
+    A molecule that no method describes (a salt, a metal, ...) comes back null with its `problem`;
+    if that is every molecule of the request, the request is refused.
+    """
     check_length("molecules", len(request.molecules), settings.max_molecules)
-    molecules = molecules_of([(f"/molecules/{k}", m) for k, m in enumerate(request.molecules)])
-    methods = list(dict.fromkeys(request.methods))
-    assignments = assign_groups(molecules, methods)
-    results = [molecule_result(m, a) for m, a in zip(molecules, assignments, strict=True)]
+    batch = batch_of([(f"/molecules/{k}", m) for k, m in enumerate(request.molecules)])
+    molecules = [molecule for molecule in batch if isinstance(molecule, Molecule)]
+    assignments = iter(assign_groups(molecules, list(dict.fromkeys(request.methods))))
+    if not molecules:
+        refuse([refused for refused in batch if isinstance(refused, Refused)])
+    results = [
+        refused_result(item)
+        if isinstance(item, Refused)
+        else molecule_result(item, next(assignments))
+        for item in batch
+    ]
     return answer_as(media, MoleculesResponse(results=results), molecules_csv)
 
 

@@ -6,6 +6,7 @@ from api.schemas.base import Number, NumberOrList, StrictModel
 from api.schemas.confidence import Confidence, MethodUse
 from api.schemas.molecule import MoleculeIdentity, MoleculeInput
 from api.schemas.prediction import MethodChoice, MixtureRequest, PredictionResponse
+from api.schemas.problem import Problem
 
 
 class ActivityRequest(MixtureRequest):
@@ -56,14 +57,17 @@ class InfiniteDilutionRequest(MethodChoice):
 class InfiniteDilutionResult(StrictModel):
     """The limit of one pair; null with the reason where no number could be had."""
 
-    solute: MoleculeIdentity
-    solvent: MoleculeIdentity
+    solute: MoleculeIdentity | None
+    solvent: MoleculeIdentity | None
     temperature_K: float
     ln_gamma_inf: float | None
     gamma_inf: float | None
     method: str | None
     methods_used: list[MethodUse]
     confidence: Confidence
+    problem: Problem | None = Field(
+        default=None, description="Set where no method describes the solute or the solvent."
+    )
 
 
 class InfiniteDilutionResponse(StrictModel):

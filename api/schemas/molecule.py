@@ -13,6 +13,7 @@ from pydantic.json_schema import JsonSchemaValue
 from pydantic_core import CoreSchema, PydanticCustomError
 
 from api.schemas.base import StrictModel
+from api.schemas.problem import Problem
 from api.schemas.vapour_pressure import VapourPressureInput
 
 MAX_SMILES_LENGTH = 5_000  # as groups.structure takes at most
@@ -127,10 +128,16 @@ class GroupAssignment(StrictModel):
     alternatives: list[list[AlternativeGroup]]
 
 
-class MoleculeResult(MoleculeIdentity):
-    """One molecule and its groups by method."""
+class MoleculeResult(StrictModel):
+    """One molecule and its groups by method; null, with `problem`, where no method describes it."""
 
+    canonical_smiles: str | None
+    name: str | None
+    cas: str | None
+    formula: str | None
+    molar_mass_g_mol: float | None
     assignments: dict[str, GroupAssignment]
+    problem: Problem | None = None
 
 
 class MoleculesRequest(StrictModel):

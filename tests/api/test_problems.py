@@ -129,7 +129,7 @@ def test_place_of_a_mistake_in_smiles_is_said(service):
 
 
 def test_all_bad_molecules_are_named_together(service):
-    body = {"molecules": ["CCO", "C(C", {"name": "unobtainium ether"}, "[Na+].[Cl-]"]}
+    body = {"molecules": ["CCO", "C(C", {"name": "unobtainium ether"}, "C1CC"]}
     problem = assert_problem(service.post("/v1/molecules", body), "unreadable-smiles")
     assert [error["field"] for error in problem["errors"]] == [
         "/molecules/1",
@@ -137,6 +137,57 @@ def test_all_bad_molecules_are_named_together(service):
         "/molecules/3",
     ]
     assert all(error["cure"] for error in problem["errors"])
+
+
+@pytest.mark.parametrize("accept", ["application/json", "text/csv"])
+def test_a_molecule_that_no_method_describes_costs_only_its_own_place(service, accept):
+    body = {"molecules": ["CCO", "[Na+].[Cl-]", "O"], "methods": ["unifac"]}
+    response = service.post("/v1/molecules", body, accept)
+    assert response.status_code == 200
+    if accept == "application/json":
+        first, second, third = response.json()["results"]
+        assert (first["canonical_smiles"], third["canonical_smiles"]) == ("CCO", "O")
+        assert second["canonical_smiles"] is None
+        assert second["problem"]["type"] == "/problems/salt"
+        assert second["problem"]["field"] == "/molecules/1"
+        assert first["problem"] is None
+
+
+def test_a_batch_of_which_nothing_is_left_is_refused(service):
+    body = {"molecules": ["[Na+].[Cl-]", "[Fe]"]}
+    problem = assert_problem(service.post("/v1/molecules", body), "salt", "/molecules/0")
+    assert [error["field"] for error in problem["errors"]] == ["/molecules/0", "/molecules/1"]
+
+
+@pytest.mark.parametrize("accept", ["application/json", "text/csv"])
+def test_a_pair_that_no_method_describes_costs_only_its_own_place(service, accept):
+    pairs = [
+        {"solute": "CCO", "solvent": {"smiles": "[Fe]"}, "temperature_K": 300.0},
+        {"solute": "CCO", "solvent": "O", "temperature_K": 300.0},
+    ]
+    response = service.post("/v1/infinite-dilution", {"pairs": pairs}, accept)
+    assert response.status_code == 200
+    if accept == "application/json":
+        first, second = response.json()["results"]
+        assert first["ln_gamma_inf"] is None
+        assert first["solute"]["canonical_smiles"] == "CCO"
+        assert first["solvent"] is None
+        assert first["confidence"]["grade"] == "none"
+        assert first["confidence"]["reasons"][0]["subject"] == "solvent"
+        assert first["problem"]["type"] == "/problems/element-not-described"
+        assert first["problem"]["field"] == "/pairs/0/solvent/smiles"
+        assert second["ln_gamma_inf"] is not None
+
+
+def test_a_bad_number_keeps_its_place_beside_a_pair_left_out(service):
+    pairs = [
+        {"solute": "CCO", "solvent": "[Fe]", "temperature_K": 300.0},
+        {"solute": "CCO", "solvent": "O", "temperature_K": 1.0},
+    ]
+    problem = assert_problem(
+        service.post("/v1/infinite-dilution", {"pairs": pairs}), "out-of-range"
+    )
+    assert problem["field"].startswith("/pairs/1")
 
 
 def test_all_bad_fields_are_named_together(service):
