@@ -196,7 +196,9 @@ def _enclosed(
         low, high = s[int(left)], s[int(left) + 1]
         if found[k] and low - SAME <= where[k] <= high + SAME:
             continue
-        root = float(brentq(lambda at: _ln_alpha(system, condition, at), low, high, xtol=1e-13))
+        root = _bracketed(system, condition, low, high)
+        if root is None:
+            continue
         state = condition.boil(system, fractions(root))
         again = azeotrope_roots(
             system,
@@ -208,6 +210,14 @@ def _enclosed(
         x[k], T[k], P[k] = again.mole_fractions[0], again.temperature_K[0], again.pressure_kPa[0]
         found[k] = again.found[0]
     return AzeotropeRoots(x, T, P, found)
+
+
+def _bracketed(system: System, condition: Condition, low: float, high: float) -> float | None:
+    """s of a zero of ln alpha; None where some liquid in between has no boiling point."""
+    try:
+        return float(brentq(lambda at: _ln_alpha(system, condition, at), low, high, xtol=1e-13))
+    except ValueError:  # NaN on the way, or ends that changed sides: a curve with a tear in it
+        return None
 
 
 def _ln_alpha(system: System, condition: Condition, s: float) -> float:

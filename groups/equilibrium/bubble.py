@@ -24,7 +24,9 @@ from groups.equilibrium.temperature_root import rising_root
 MAX_VAPOUR_PASSES = 60
 VAPOUR_TOLERANCE = 1e-12
 #: Temperatures of the table that a start is interpolated from: Chebyshev places between the bounds.
-TABLE_PLACES = 0.5 - 0.5 * np.cos(np.pi * (np.arange(4) + 0.5) / 4.0)
+TABLE_PLACES = 0.5 - 0.5 * np.cos(np.pi * (np.arange(5) + 0.5) / 5.0)
+#: Step of ln P for the slope of the table; the mean of both sides is right to its square.
+TABLE_STEP = 1e-4
 #: Over a wider range of boiling temperatures the table would be too coarse to help.
 WIDEST_TABLE_K = 150.0
 #: |ln P error| below which Newton's method keeps its slope.
@@ -106,10 +108,10 @@ def bubble_temperature(
     P, x = paired(checked_pressure(pressure_kPa), x)
     if not len(P):
         return verified_states(system, P, P, x, x, ())
-    T = _start(system, P, x)
+    T, slope = _start(system, P, x)
     correction = np.zeros_like(x)
     for _ in range(MAX_VAPOUR_PASSES):
-        search = _BubbleSearch(system, np.log(P), x, correction)
+        search = _BubbleSearch(system, np.log(P), x, correction, slope)
         T, found = rising_root(search, T)
         y = search.vapour
         change = new_correction(system, T, P, y, correction)
@@ -125,45 +127,61 @@ def start_temperature(system: System, pressure_kPa: FloatArray, x: FloatArray) -
     return np.asarray((x * pure).sum(axis=1))
 
 
-def _start(system: System, pressure_kPa: FloatArray, x: FloatArray) -> FloatArray:
-    """A better start: ln P of every liquid at a few temperatures, interpolated back to 1/T.
+def _start(
+    system: System, pressure_kPa: FloatArray, x: FloatArray
+) -> tuple[FloatArray, FloatArray | None]:
+    """A better start, and d ln P/dT there: ln P at a few temperatures, interpolated back to 1/T.
 
     The interaction terms of a few temperatures serve all liquids, so this costs less than the one
-    evaluation at as many temperatures as points that it saves.
+    evaluation at as many temperatures as points, and that of the slopes, which it saves.
     """
     pure, immiscible = rough_boiling_temperatures(system, pressure_kPa)
     average = np.asarray((x * pure).sum(axis=1))
     low, high = float(immiscible.min()) - 2.0, float(pure.max()) + 5.0
     if high - low > WIDEST_TABLE_K or len(x) < len(TABLE_PLACES):
-        return average
+        return average, None
     nodes = 1.0 / (1.0 / low + TABLE_PLACES * (1.0 / high - 1.0 / low))
     terms = safe_log(x) + system.activity.ln_gamma(nodes[:, None], x[None])
     ln_pressure = log_sum_exp(terms + system.ln_saturation(nodes)[:, None, :])
-    inverse = np.zeros(len(x))
-    wanted = np.log(pressure_kPa)
-    for k, node in enumerate(nodes):
-        weight = np.full(len(x), 1.0 / node)
-        for other in range(len(nodes)):
-            if other != k:
-                gap = ln_pressure[k] - ln_pressure[other]
-                weight *= (wanted - ln_pressure[other]) / np.where(gap == 0.0, np.inf, gap)
-        inverse += weight
-    inside = (inverse > 0.8 / high) & (inverse < 1.2 / low)
-    return np.where(inside, 1.0 / np.where(inside, inverse, 1.0), average)
+    below, above = _interpolated_back(ln_pressure, 1.0 / nodes, np.log(pressure_kPa))
+    inverse, run = 0.5 * (below + above), (above - below) / (2.0 * TABLE_STEP)
+    if not ((inverse > 0.8 / high) & (inverse < 1.2 / low) & (run < 0.0)).all():
+        usable = (inverse > 0.8 / high) & (inverse < 1.2 / low)
+        return np.where(usable, 1.0 / np.where(usable, inverse, 1.0), average), None
+    return 1.0 / inverse, -(inverse**2) / run
+
+
+def _interpolated_back(
+    ln_pressure: FloatArray, inverse: FloatArray, wanted: FloatArray
+) -> FloatArray:
+    """1/T a small step of ln P below and above the pressure wanted (Lagrange), of shape (2, n)."""
+    own = np.eye(len(inverse), dtype=bool)[:, :, None]
+    gaps = ln_pressure[:, None, :] - ln_pressure[None, :, :]
+    denominator = np.where(own, 1.0, np.where(gaps == 0.0, np.inf, gaps)).prod(axis=1)
+    targets = wanted + np.array([[-TABLE_STEP], [TABLE_STEP]])
+    distance = targets[:, None, :] - ln_pressure
+    numerator = np.where(own, 1.0, distance[:, None, :, :]).prod(axis=2)
+    weights = numerator / denominator
+    return np.asarray((weights * inverse[:, None]).sum(axis=1))
 
 
 class _BubbleSearch:
     """ln of the sum of partial pressures less ln P, and its slope, for `rising_root`."""
 
     def __init__(
-        self, system: System, ln_pressure: FloatArray, x: FloatArray, correction: FloatArray
+        self,
+        system: System,
+        ln_pressure: FloatArray,
+        x: FloatArray,
+        correction: FloatArray,
+        slope: FloatArray | None,
     ) -> None:
         self.system, self.ln_pressure, self.x, self.correction = system, ln_pressure, x, correction
         self.ln_x = safe_log(x)
         self.vapour = np.zeros_like(x)
         self.ln_gamma, self.ln_saturation = np.zeros_like(x), np.zeros_like(x)
-        self.slope = np.zeros(len(x))
-        self.far = True
+        self.slope = np.zeros(len(x)) if slope is None else slope.copy()
+        self.far = slope is None
 
     def __call__(self, T: FloatArray, index: IntArray) -> tuple[FloatArray, FloatArray]:
         everything = len(index) == len(self.x)
