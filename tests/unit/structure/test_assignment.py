@@ -119,3 +119,20 @@ def test_many_are_answered_in_order() -> None:
 def test_an_unknown_method_is_refused() -> None:
     with pytest.raises(UnknownMethodError):
         assign(molecule_from_smiles("O"), "unifac-3.0")
+
+
+@pytest.mark.parametrize(
+    ("smiles", "counts"),
+    [
+        ("CCN1CCCCC1", {1: 1, 35: 1, 78: 5}),
+        ("CC(C)NC1CCCCC1", {1: 2, 33: 1, 78: 5, 79: 1}),
+        ("CC(C)OC1CCCCC1", {1: 2, 26: 1, 78: 5, 79: 1}),
+    ],
+)
+def test_a_chain_carbon_joins_the_heteroatom_before_a_ring_carbon(
+    smiles: str, counts: dict[int, int]
+) -> None:
+    """The rule that the record of unifac-dortmund states; common practice, no source."""
+    found = assign(molecule_from_smiles(smiles), "unifac-dortmund")
+    assert found.counts == counts
+    assert found.alternatives == ()
