@@ -1,5 +1,7 @@
 """The strongest warning there is: how far independent published tables lie apart."""
 
+from math import exp, log
+
 from groups.confidence.confidence import Grade, Reason
 
 # Differences in ln gamma between published tables, and the grade they leave. The measured error
@@ -47,13 +49,20 @@ def agreement_reasons(method: str, spreads: dict[str, float]) -> list[Reason]:
                 disagreement_cap(spread),
             )
         ]
-    factor = 2.718281828459045**spread
     return [
         Reason(
             "tables_disagree",
             f"Published tables disagree: {farthest} differs from {method} by {spread:.2f} in "
-            f"ln gamma, a factor {factor:.1f} in gamma ({named}).",
+            f"ln gamma, {_factor(spread)} in gamma ({named}).",
             f"{method} / {farthest}",
             disagreement_cap(spread),
         )
     ]
+
+
+def _factor(spread_ln_gamma: float) -> str:
+    """A ratio in words; beyond a thousand its digits mean nothing."""
+    if spread_ln_gamma > log(1000.0):
+        return "more than a thousandfold"
+    factor = exp(spread_ln_gamma)
+    return f"a factor {factor:.1f}" if factor < 10.0 else f"a factor {factor:.0f}"

@@ -3,10 +3,13 @@
 from collections.abc import Iterable, Sequence
 from itertools import combinations
 
-from groups.confidence.confidence import Reason
+from groups.confidence.confidence import Grade, Reason
 from groups.parameters import MethodTable
 
-FAR_OUTSIDE_K = 50.0  # common practice, no source: beyond this the psi(T) form is a guess
+# Common practice, no source: a few kelvin beyond the range cost nothing (room temperature lies
+# 2 K below the range of one table); far beyond it the psi(T) form is a guess.
+JUST_OUTSIDE_K = 5.0
+FAR_OUTSIDE_K = 50.0
 
 
 def pair_name(table: MethodTable, pair: tuple[int, int]) -> str:
@@ -51,7 +54,7 @@ def suspect_reasons(table: MethodTable, main_numbers: Sequence[int]) -> list[Rea
         Reason(
             "parameter_suspect",
             f"The parameter of {table.method} for {pair_name(table, pair)} failed the audit: "
-            f"{table.suspects[pair]}",
+            f"{table.suspects[pair]}.",
             pair_name(table, pair),
             "low",
         )
@@ -77,7 +80,19 @@ def temperature_reasons(table: MethodTable, lowest_K: float, highest_K: float) -
             "outside_temperature_range",
             f"{outside:.0f} K {side} the range of {table.method} "
             f"({lower:.0f} to {upper:.0f} K){trend}.",
-            f"{lowest_K:.1f} to {highest_K:.1f} K",
-            "low" if outside > FAR_OUTSIDE_K else "moderate",
+            _range(lowest_K, highest_K),
+            _outside_cap(outside),
         )
     ]
+
+
+def _outside_cap(outside_K: float) -> Grade:
+    if outside_K <= JUST_OUTSIDE_K:
+        return "high"
+    return "low" if outside_K > FAR_OUTSIDE_K else "moderate"
+
+
+def _range(lowest_K: float, highest_K: float) -> str:
+    """A range of temperatures, or the one temperature."""
+    lower, upper = f"{lowest_K:.1f}", f"{highest_K:.1f}"
+    return f"{lower} K" if lower == upper else f"{lower} to {upper} K"

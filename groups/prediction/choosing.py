@@ -47,13 +47,18 @@ class Choice:
 
     @property
     def others(self) -> tuple[str, ...]:
-        """Published tables, beside the one taken, that have every parameter of the mixture."""
+        """Published tables, beside the one taken, with every parameter and none suspect.
+
+        A suspect parameter says nothing of another table's number: it would only raise an alarm
+        at the table that has the better one.
+        """
         return tuple(
             method
             for method in COMPARED_METHODS
             if method != self.taken.method
             and method in self.candidates
             and not self.candidates[method].missing
+            and not self.candidates[method].suspect
         )
 
     def counts(self, method: str) -> list[Mapping[int, int]]:

@@ -1,0 +1,299 @@
+"""Each reason fires for a real mixture that has it, and not for a like one that has it not."""
+
+import re
+from collections.abc import Callable
+
+import pytest
+
+from groups.confidence import Confidence
+from groups.confidence.agreement_rules import agreement_reasons
+from groups.prediction import (
+    Component,
+    activity_coefficients,
+    azeotropes,
+    bubble_point,
+    diagram,
+    infinite_dilution,
+    liquid_splits,
+)
+from groups.pure import AntoineInput
+from groups.structure.molecule import molecule_from_smiles
+
+AMIDE = "CCCCN(C)C(=O)c1ccccc1OC"  # in no open table of vapour pressures
+# Toluene, Smith, Van Ness & Abbott (2005), appendix B.2, from memory: ln P/kPa, t in deg C. The
+# range given here is narrower than the book's, so that one of the two temperatures is outside.
+TOLUENE = AntoineInput(13.9320, 3056.96, 217.625, "e", "kPa", "C", (330.0, 400.0))
+
+
+def mixture(*smiles: str) -> list[Component]:
+    return [Component(molecule_from_smiles(one)) for one in smiles]
+
+
+def boiling(first: str, second: str, x1: float = 0.5, **given) -> Confidence:
+    return bubble_point(mixture(first, second), [x1, 1.0 - x1], **given).confidence
+
+
+def dilute(solute: str, solvent: str, method: str = "auto", on_missing: str = "estimate", T=298.15):
+    pair = (molecule_from_smiles(solute), molecule_from_smiles(solvent), T)
+    return infinite_dilution([pair], method, on_missing)[0].confidence
+
+
+def given_line(temperature_K: float) -> Confidence:
+    components = [*mixture("c1ccccc1"), Component(molecule_from_smiles("Cc1ccccc1"), TOLUENE)]
+    return bubble_point(components, [0.5, 0.5], temperature_K=temperature_K).confidence
+
+
+Case = tuple[str, Callable[[], Confidence], Callable[[], Confidence]]
+ONE_ATM = 101.325
+CASES: list[Case] = [
+    (
+        "missing_parameter",
+        lambda: dilute("CCCCC=C", "CCI", "unifac", "refuse"),
+        lambda: dilute("CCCCC=C", "CCCCC", "unifac", "refuse"),
+    ),
+    (
+        "method_replaced",
+        lambda: dilute("CCCCC=C", "CCI", "unifac", "estimate"),
+        lambda: dilute("CCCCC=C", "CCCCC", "unifac", "estimate"),
+    ),
+    (
+        "parameter_completed",
+        lambda: dilute("CCCCC=C", "CCI", "unifac-2.0"),
+        lambda: dilute("CCO", "O", "unifac-2.0"),
+    ),
+    (
+        "no_groups",
+        lambda: dilute("CS(C)=O", "O", "unifac-lyngby"),
+        lambda: dilute("CCO", "O", "unifac-lyngby"),
+    ),
+    (
+        "parameter_suspect",
+        lambda: dilute("OCCO", "C1CCCCC1", "unifac"),
+        lambda: dilute("CCO", "C1CCCCC1", "unifac"),
+    ),
+    (
+        "outside_temperature_range",
+        lambda: dilute("CCO", "O", "unifac-dortmund", T=480.0),
+        lambda: dilute("CCO", "O", "unifac-dortmund", T=350.0),
+    ),
+    (
+        "tables_disagree",
+        lambda: dilute("CS(C)=O", "CCCCCC", "unifac-dortmund"),
+        lambda: dilute("CCCCCCC", "CCCCCC", "unifac-dortmund"),
+    ),
+    (
+        "tables_agree",
+        lambda: dilute("CCCCCCC", "CCCCCC", "unifac-dortmund"),
+        lambda: dilute("CS(C)=O", "CCCCCC", "unifac-dortmund"),
+    ),
+    (
+        "no_second_table",
+        lambda: dilute("C", "CCCCCC", "psrk"),
+        lambda: dilute("CCCCC", "CCCCCC", "psrk"),
+    ),
+    (
+        "ideal_solution_assumed",
+        lambda: dilute("CCO", "O", "ideal"),
+        lambda: dilute("CCO", "O", "unifac"),
+    ),
+    (
+        "pressure_too_high_for_ideal_vapour",
+        lambda: boiling("CCC", "CCCCC", pressure_kPa=1500.0),
+        lambda: boiling("CCC", "CCCCC", pressure_kPa=ONE_ATM),
+    ),
+    (
+        "near_critical_component",  # propane: 369.8 K
+        lambda: boiling("CCC", "CCCCC", temperature_K=350.0),
+        lambda: boiling("CCC", "CCCCC", temperature_K=300.0),
+    ),
+    (
+        "supercritical_component",  # methane: 190.6 K
+        lambda: boiling("C", "CCCCCC", temperature_K=250.0),
+        lambda: boiling("CC", "CCCCCC", temperature_K=250.0),
+    ),
+    (
+        "vapour_dimers",
+        lambda: boiling("CC(=O)O", "O", pressure_kPa=ONE_ATM),
+        lambda: boiling("COC(C)=O", "O", pressure_kPa=ONE_ATM),
+    ),
+    (
+        "neighbouring_polar_groups",
+        lambda: dilute("NCCO", "O"),
+        lambda: dilute("CCCO", "O"),
+    ),
+    (
+        "polyfunctional",
+        lambda: dilute("N#CCCCCC#N", "O"),
+        lambda: dilute("CCCCC#N", "O"),
+    ),
+    ("polyol", lambda: dilute("OCCCO", "O"), lambda: dilute("CCCO", "O")),
+    (
+        "long_chain",
+        lambda: dilute("CCCCCC", "CCCCCCCCCCCCCCCC"),
+        lambda: dilute("CCCCCC", "CCCCCCCC"),
+    ),
+    (
+        "size_asymmetry",
+        lambda: dilute("CCO", "CCCCCCCCCCCCCCCC"),
+        lambda: dilute("CCCCCCCCO", "CCCCCCCCCCCCCCCC"),
+    ),
+    (
+        "hydrophobe_in_water",
+        lambda: dilute("CCCCCC", "O"),
+        lambda: dilute("CCCCCC", "CCO"),
+    ),
+    (
+        "isomers_not_told_apart",
+        lambda: boiling("Cc1ccccc1C", "Cc1cccc(C)c1", pressure_kPa=ONE_ATM),
+        lambda: boiling("Cc1ccccc1C", "CCc1ccccc1", pressure_kPa=ONE_ATM),
+    ),
+    (
+        "vapour_pressure_estimated",
+        lambda: boiling(AMIDE, "CO", temperature_K=450.0),
+        lambda: boiling("Cc1ccccc1", "CO", temperature_K=350.0),
+    ),
+    (
+        "vapour_pressure_extrapolated",
+        lambda: given_line(315.0),
+        lambda: given_line(345.0),
+    ),
+    (
+        "ambiguous_assignment",
+        lambda: dilute("C1OCCOC1", "CCCCCC", "unifac"),
+        lambda: dilute("C1CCOC1", "CCCCCC", "unifac"),
+    ),
+    (
+        "possible_liquid_split",
+        lambda: boiling("CCCCO", "O", pressure_kPa=ONE_ATM, x1=0.1),
+        lambda: boiling("CCO", "O", pressure_kPa=ONE_ATM, x1=0.1),
+    ),
+    (
+        "possible_liquid_split",
+        lambda: diagram("Txy", mixture("CCCCO", "O"), pressure_kPa=ONE_ATM).confidence,
+        lambda: diagram("Txy", mixture("CCO", "O"), pressure_kPa=ONE_ATM).confidence,
+    ),
+    (
+        "close_boiling",  # benzene 353.2 K, cyclohexane 353.9 K
+        lambda: azeotropes(mixture("c1ccccc1", "C1CCCCC1"), pressure_kPa=ONE_ATM).confidence,
+        lambda: azeotropes(mixture("c1ccccc1", "CO"), pressure_kPa=ONE_ATM).confidence,
+    ),
+    (
+        "table_not_fitted_to_splits",
+        lambda: liquid_splits(mixture("CCCCCC", "O"), temperature_K=300.0).confidence,
+        lambda: (
+            liquid_splits(
+                mixture("CCCCCC", "O"), temperature_K=300.0, method="unifac-lle"
+            ).confidence
+        ),
+    ),
+]
+
+
+def codes(confidence: Confidence) -> set[str]:
+    return {reason.code for reason in confidence.reasons}
+
+
+@pytest.mark.parametrize(("code", "having", "lacking"), CASES, ids=[case[0] for case in CASES])
+def test_a_reason_fires_where_it_should_and_not_beside(code, having, lacking):
+    assert code in codes(having())
+    assert code not in codes(lacking())
+
+
+@pytest.mark.parametrize(
+    ("code", "having"), [case[:2] for case in CASES], ids=lambda v: str(v)[:30]
+)
+def test_the_grade_is_the_lowest_cap_and_the_gravest_reason_stands_first(code, having):
+    order = ("high", "moderate", "low", "none")
+    confidence = having()
+    caps = [order.index(reason.cap) for reason in confidence.reasons]
+    assert caps == sorted(caps, reverse=True)
+    assert order.index(confidence.grade) == caps[0]
+
+
+@pytest.mark.parametrize("case", CASES, ids=lambda case: case[0])
+def test_every_message_reads_as_a_sentence(case):
+    # 420 characters: what is read in one go; the longest names three group pairs and their errors.
+    for reason in case[1]().reasons:
+        assert reason.message.endswith(".") and not reason.message.endswith("..")
+        assert "  " not in reason.message and "nan" not in reason.message.split()
+        assert 20 < len(reason.message) < 420
+        assert reason.subject.strip()
+
+
+def test_a_completed_parameter_is_named_with_its_group_pair_and_caps_the_grade_at_low():
+    reasons = dilute("CCCCC=C", "CCI", "unifac-2.0").reasons
+    (completed,) = [r for r in reasons if r.code == "parameter_completed" and "I" in r.subject][:1]
+    assert completed.cap == "low"
+    assert completed.subject in completed.message
+
+
+def test_a_missing_parameter_names_the_pair_and_leaves_no_grade():
+    confidence = dilute("CCCCC=C", "CCI", "unifac", "refuse")
+    assert confidence.grade == "none"
+    assert "C=C / I" in confidence.reasons[0].message
+
+
+def test_by_how_much_the_tables_disagree_is_said():
+    components = mixture("CS(C)=O", "CCCCCC")
+    own, other = (
+        activity_coefficients(components, 298.15, [0.0, 1.0], method).ln_gamma[0, 0]
+        for method in ("unifac-dortmund", "unifac")
+    )
+    confidence = dilute("CS(C)=O", "CCCCCC", "unifac-dortmund")
+    (reason,) = [r for r in confidence.reasons if r.code == "tables_disagree"]
+    assert f"unifac {abs(own - other):.2f}" in reason.message
+
+
+def test_a_suspect_table_raises_no_alarm_at_the_others():
+    # The audit lists CH2 with the diol group in `unifac` (ln gamma off by some 15), so its number
+    # for ethylene glycol in cyclohexane is left out of the comparison.
+    (reason,) = [
+        r
+        for r in dilute("OCCO", "C1CCCCC1", "unifac-dortmund").reasons
+        if r.code in ("tables_disagree", "tables_agree")
+    ]
+    assert re.search(r"\bunifac-nist \d", reason.message)
+    assert not re.search(r"\bunifac \d", reason.message)
+
+
+def test_an_enormous_disagreement_is_put_in_words_and_does_not_overflow():
+    (reason,) = agreement_reasons("unifac", {"unifac-dortmund": 5000.0})
+    assert "more than a thousandfold" in reason.message
+
+
+@pytest.mark.parametrize(
+    ("temperature_K", "cap"), [(287.0, "high"), (275.0, "moderate"), (235.0, "low"), (471.0, "low")]
+)
+def test_the_farther_outside_its_range_the_less_a_table_is_believed(temperature_K, cap):
+    # unifac-dortmund: 290 to 420 K, as its record says.
+    reasons = dilute("CCO", "O", "unifac-dortmund", T=temperature_K).reasons
+    (reason,) = [r for r in reasons if r.code == "outside_temperature_range"]
+    assert reason.cap == cap
+
+
+def test_the_direction_of_the_temperature_is_said():
+    for temperature_K, side in ((250.0, "below"), (450.0, "above")):
+        reasons = dilute("CCO", "O", "unifac-dortmund", T=temperature_K).reasons
+        (reason,) = [r for r in reasons if r.code == "outside_temperature_range"]
+        assert side in reason.message and reason.subject == f"{temperature_K:.1f} K"
+
+
+@pytest.mark.parametrize(
+    ("pressure_kPa", "cap"), [(250.0, None), (500.0, "moderate"), (1500.0, "low")]
+)
+def test_the_pressure_caps_the_grade_in_two_steps(pressure_kPa, cap):
+    reasons = boiling("CCCC", "CCCCC", pressure_kPa=pressure_kPa).reasons
+    found = [r.cap for r in reasons if r.code == "pressure_too_high_for_ideal_vapour"]
+    assert found == ([] if cap is None else [cap])
+
+
+def test_isomers_beside_a_third_component_are_named():
+    components = mixture("Cc1ccccc1C", "CO", "Cc1cccc(C)c1")
+    answer = bubble_point(components, [0.3, 0.3, 0.4], pressure_kPa=ONE_ATM)
+    found = [r for r in answer.confidence.reasons if r.code == "isomers_not_told_apart"]
+    assert [r.subject for r in found] == ["o-xylene / m-xylene"]
+
+
+def test_a_single_component_carries_reasons_of_its_vapour_only():
+    answer = bubble_point(mixture("CC(=O)O"), [1.0], pressure_kPa=ONE_ATM)
+    assert codes(answer.confidence) == {"vapour_dimers"}
