@@ -13,7 +13,7 @@ from api.schemas.activity import (
 )
 from api.schemas.confidence import Confidence, Reason
 from groups import prediction
-from groups.errors import InvalidInputError
+from groups.errors import DuplicateComponentError, InvalidInputError
 from groups.structure.molecule import Molecule
 
 _Outcome = Molecule | Refused
@@ -29,16 +29,17 @@ def predicted_pairs(request: InfiniteDilutionRequest) -> InfiniteDilutionRespons
     ]
     outcomes = batch_of(fields)
     pairs = list(zip(outcomes[::2], outcomes[1::2], strict=True))
+    faults = {k: fault for k, pair in enumerate(pairs) if (fault := _fault(k, pair)) is not None}
+    if len(faults) == len(pairs):
+        refuse(list(faults.values()))
     described = [
         (k, (solute, solvent, request.pairs[k].temperature_K))
         for k, (solute, solvent) in enumerate(pairs)
-        if isinstance(solute, Molecule) and isinstance(solvent, Molecule)
+        if isinstance(solute, Molecule) and isinstance(solvent, Molecule) and k not in faults
     ]
-    if not described:
-        refuse([outcome for outcome in outcomes if isinstance(outcome, Refused)])
     computed = _computed(described, request)
     results = [
-        computed[k] if k in computed else _refused(pair, request.pairs[k].temperature_K)
+        computed[k] if k in computed else _refused(pair, request.pairs[k].temperature_K, faults[k])
         for k, pair in enumerate(pairs)
     ]
     return InfiniteDilutionResponse(results=results, cautions=answers.cautions())
@@ -62,13 +63,30 @@ def _computed(
     return dict(zip(places, converted, strict=True))
 
 
-def _refused(pair: tuple[_Outcome, _Outcome], temperature_K: float) -> InfiniteDilutionResult:
-    """The place of a pair with a molecule that no method describes."""
+def _fault(place: int, pair: tuple[_Outcome, _Outcome]) -> Refused | None:
+    """Why a pair cannot be taken, if it cannot: a molecule, or twice the same one.
+
+    Collections of measurements hold both, so neither costs the other pairs their numbers.
+    """
+    solute, solvent = pair
+    if isinstance(solute, Refused):
+        return solute
+    if isinstance(solvent, Refused):
+        return solvent
+    if solute.canonical_smiles == solvent.canonical_smiles:
+        error = DuplicateComponentError(solute.canonical_smiles, 0, 1)
+        return Refused(f"/pairs/{place}/solvent", error)
+    return None
+
+
+def _refused(
+    pair: tuple[_Outcome, _Outcome], temperature_K: float, refused: Refused
+) -> InfiniteDilutionResult:
+    """The place of a pair that cannot be taken."""
     solute, solvent = (None if isinstance(one, Refused) else answers.identity(one) for one in pair)
-    refused = next(one for one in pair if isinstance(one, Refused))
     problem = problem_of_error(refused.error, refused.field)
     reason = Reason(
-        code="structure_not_described",
+        code="pair_not_described",
         message=problem.detail,
         subject="solute" if refused is pair[0] else "solvent",
         best_grade="none",

@@ -17,7 +17,7 @@ class Settings(BaseSettings):
     workers: int = Field(default=1, ge=1, le=64, description="Service processes.")
     threads: int = Field(default=4, ge=1, le=256, description="Requests computed at once.")
     max_body_bytes: int = Field(default=16 * 1024 * 1024, ge=1024)
-    time_limit_s: float = Field(default=60.0, gt=0.0, description="Longest time for one request.")
+    time_limit_s: float = Field(default=120.0, gt=0.0, description="Longest time for one request.")
     max_components: int = Field(default=20, ge=2)
     max_molecules: int = Field(default=5_000, ge=1, description="Molecules in one request.")
     max_pairs: int = Field(default=50_000, ge=1, description="Solute/solvent pairs in a request.")

@@ -66,7 +66,7 @@ class InfiniteDilutionResult(StrictModel):
     methods_used: list[MethodUse]
     confidence: Confidence
     problem: Problem | None = Field(
-        default=None, description="Set where no method describes the solute or the solvent."
+        default=None, description="Set where no method can describe the pair."
     )
 
 

@@ -179,6 +179,17 @@ def test_a_pair_that_no_method_describes_costs_only_its_own_place(service, accep
         assert second["ln_gamma_inf"] is not None
 
 
+def test_a_pair_of_one_molecule_costs_only_its_own_place(service):
+    same = {"solute": "CCO", "solvent": {"name": "ethanol"}, "temperature_K": 300.0}
+    other = {"solute": "CCO", "solvent": "O", "temperature_K": 300.0}
+    answered = service.post("/v1/infinite-dilution", {"pairs": [same, other]}).json()["results"]
+    assert answered[0]["ln_gamma_inf"] is None
+    assert answered[0]["problem"]["type"] == "/problems/duplicate-component"
+    assert answered[1]["ln_gamma_inf"] is not None
+    alone = service.post("/v1/infinite-dilution", {"pairs": [same]})
+    assert_problem(alone, "duplicate-component", "/pairs/0/solvent")
+
+
 def test_a_bad_number_keeps_its_place_beside_a_pair_left_out(service):
     pairs = [
         {"solute": "CCO", "solvent": "[Fe]", "temperature_K": 300.0},
