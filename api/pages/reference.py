@@ -14,11 +14,27 @@ def reference_page(described: dict[str, Any]) -> str:
     """HTML of every address: what it takes, what it gives, an example, its problems."""
     schemas = described["components"]["schemas"]
     parts = [f"<h1>Reference, version {escape(described['info']['version'])}</h1>"]
+    parts.append(_molecules(schemas))
     for path, operations in described["paths"].items():
         for verb in _VERBS:
             if verb in operations:
                 parts.append(_operation(path, verb, operations[verb], schemas))
     return page("Reference", "".join(parts))
+
+
+def _molecules(schemas: dict[str, Any]) -> str:
+    """How a molecule is given, with the user's own vapour pressure."""
+    as_object = schemas["MoleculeInput"]["anyOf"][1]
+    forms = ("AntoineEquation", "Dippr101Equation", "MeasuredPoints")
+    parts = [
+        "<h2>MoleculeInput</h2><p>A molecule is SMILES as a text, or an object with exactly one of "
+        "<code>smiles</code>, <code>name</code> and <code>cas</code>, and the vapour pressure you "
+        "have measured, if any.</p>" + _fields(as_object, schemas)
+    ]
+    for name in forms:
+        described = escape(schemas[name].get("description", ""))
+        parts.append(f"<h3>vapour_pressure: {described}</h3>" + _fields(schemas[name], schemas))
+    return "".join(parts)
 
 
 def _operation(path: str, verb: str, operation: dict[str, Any], schemas: dict[str, Any]) -> str:
@@ -86,10 +102,13 @@ def _resolved(schema: dict[str, Any], schemas: dict[str, Any]) -> dict[str, Any]
 def _kind(field: dict[str, Any], schemas: dict[str, Any]) -> str:
     if "$ref" in field:
         return str(field["$ref"]).rsplit("/", 1)[1]
+    if "const" in field:
+        return json.dumps(field["const"])
     if "enum" in field:
         return " | ".join(json.dumps(value) for value in field["enum"])
-    if "anyOf" in field:
-        return " or ".join(dict.fromkeys(_kind(option, schemas) for option in field["anyOf"]))
+    options = field.get("anyOf") or field.get("oneOf")
+    if options:
+        return " or ".join(dict.fromkeys(_kind(option, schemas) for option in options))
     if field.get("type") == "array":
         return f"list of {_kind(field.get('items', {}), schemas)}"
-    return str(field.get("type", field.get("const", "any")))
+    return str(field.get("type", "any"))

@@ -86,5 +86,11 @@ def test_the_reference_shows_every_address_and_field(service):
     described = service.get("/openapi.json").json()
     for path in described["paths"]:
         assert f"{path}</code>" in page
-    for field in ("mole_fractions", "on_missing", "components[].canonical_smiles", "interval_90"):
+    for field in (
+        "mole_fractions",
+        "on_missing",
+        "components[].canonical_smiles",
+        "interval_90",
+        "log_base",
+    ):
         assert field in page
