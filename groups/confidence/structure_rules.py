@@ -7,14 +7,8 @@ from itertools import combinations
 from groups.confidence.confidence import Reason
 from groups.confidence.labels import label
 from groups.structure.assignment import Assignment
-from groups.structure.functional import (
-    FunctionalGroup,
-    is_hydrophobe,
-    is_polyol,
-    longest_chain,
-    neighbouring_polar_groups,
-    polar_groups,
-)
+from groups.structure.facts import molecule_facts
+from groups.structure.functional import FunctionalGroup
 from groups.structure.molecule import Molecule
 
 LONG_CHAIN_ATOMS = 10  # common practice, no source
@@ -26,8 +20,8 @@ def polar_reasons(molecules: Sequence[Molecule]) -> list[Reason]:
     """Neighbouring polar groups and polyfunctional molecules."""
     reasons = []
     for molecule in molecules:
-        polar = polar_groups(molecule.mol)
-        if neighbouring_polar_groups(molecule.mol):
+        polar = molecule_facts(molecule).polar_groups
+        if molecule_facts(molecule).has_neighbouring_polar_groups:
             reasons.append(
                 Reason(
                     "neighbouring_polar_groups",
@@ -68,7 +62,7 @@ def polyol_reasons(molecules: Sequence[Molecule]) -> list[Reason]:
             "low",
         )
         for molecule in molecules
-        if is_polyol(molecule.mol)
+        if molecule_facts(molecule).is_polyol
     ]
 
 
@@ -77,14 +71,14 @@ def size_reasons(molecules: Sequence[Molecule]) -> list[Reason]:
     reasons = [
         Reason(
             "long_chain",
-            f"{label(molecule)} has a chain of {longest_chain(molecule.mol)} carbon atoms; the "
+            f"{label(molecule)} has a chain of {molecule_facts(molecule).longest_chain} carbon atoms; the "
             "combinatorial part is uncertain there and the original form overstates "
             "the negative deviation.",
             label(molecule),
             "moderate",
         )
         for molecule in molecules
-        if longest_chain(molecule.mol) > LONG_CHAIN_ATOMS
+        if molecule_facts(molecule).longest_chain > LONG_CHAIN_ATOMS
     ]
     sizes = [molecule.mol.GetNumHeavyAtoms() for molecule in molecules]
     largest, smallest = max(sizes), min(sizes)
@@ -117,7 +111,7 @@ def water_reasons(molecules: Sequence[Molecule]) -> list[Reason]:
             "low",
         )
         for molecule in molecules
-        if is_hydrophobe(molecule.mol)
+        if molecule_facts(molecule).is_hydrophobe
     ]
 
 

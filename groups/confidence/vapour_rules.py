@@ -5,7 +5,7 @@ from collections.abc import Sequence
 from groups.confidence.confidence import Reason
 from groups.confidence.labels import label
 from groups.pure import VapourPressure
-from groups.structure.functional import associates_in_vapour
+from groups.structure.facts import molecule_facts
 from groups.structure.molecule import Molecule
 
 # Common practice, no source: an ideal vapour errs by about 1 to 3 % at 300 kPa and by 5 to 15 %
@@ -69,7 +69,7 @@ def association_reasons(molecules: Sequence[Molecule]) -> list[Reason]:
             "low",
         )
         for molecule in molecules
-        if associates_in_vapour(molecule.mol)
+        if molecule_facts(molecule).associates_in_vapour
     ]
 
 
