@@ -75,12 +75,10 @@ def run(folder: Path) -> str:
 
 
 def _pictures(answer: DiagramAnswer, stem: Path) -> list[Path]:
-    paths = []
-    for file_format in ("svg", "png"):
-        path = stem.with_suffix(f".{file_format}")
-        path.write_bytes(diagram_picture(answer, file_format))  # type: ignore[arg-type]
-        paths.append(path)
-    return paths
+    vector, raster = stem.with_suffix(".svg"), stem.with_suffix(".png")
+    vector.write_bytes(diagram_picture(answer, "svg"))
+    raster.write_bytes(diagram_picture(answer, "png"))
+    return [vector, raster]
 
 
 def _pot(pressure_kPa: float) -> PhasePointAnswer:

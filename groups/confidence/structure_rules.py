@@ -71,8 +71,8 @@ def size_reasons(molecules: Sequence[Molecule]) -> list[Reason]:
     reasons = [
         Reason(
             "long_chain",
-            f"{label(molecule)} has a chain of {molecule_facts(molecule).longest_chain} carbon atoms; the "
-            "combinatorial part is uncertain there and the original form overstates "
+            f"{label(molecule)} has a chain of {molecule_facts(molecule).longest_chain} carbon "
+            "atoms; the combinatorial part is uncertain there and the original form overstates "
             "the negative deviation.",
             label(molecule),
             "moderate",

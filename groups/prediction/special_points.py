@@ -10,6 +10,7 @@ from groups.arrays import FloatArray
 from groups.confidence import Reason, graded
 from groups.equilibrium import azeotropes as solve_azeotropes
 from groups.equilibrium import binary_split, stability
+from groups.errors import ShapeError
 from groups.prediction.answers import AzeotropeAnswer, LiquidSplitAnswer
 from groups.prediction.boiling_mixture import BoilingMixture, boiling_mixture
 from groups.prediction.checks import (
@@ -161,9 +162,13 @@ def liquid_splits(
     check_components(molecules, least=2)
     temperature = check_temperatures(temperature_K)[:1]
     n = len(molecules)
-    fractions = None
-    if mole_fractions is not None or n > 2:
-        fractions = check_fractions(mole_fractions if mole_fractions is not None else [], n)[:1]
+    if mole_fractions is None and n > 2:
+        raise ShapeError(
+            f"A liquid split of {n} components needs 'mole_fractions', the liquid to test.",
+            cure="Give one mole fraction a component; only a binary may leave them out.",
+            field="mole_fractions",
+        )
+    fractions = None if mole_fractions is None else check_fractions(mole_fractions, n)[:1]
     mixture = liquid(molecules, method, on_missing)
     phases: tuple[FloatArray, ...] = ()
     if n == 2:
