@@ -1,7 +1,7 @@
 """Txy and Pxy diagrams of binaries."""
 
 from collections.abc import Sequence
-from typing import Literal
+from typing import Literal, get_args
 
 import numpy as np
 
@@ -86,6 +86,12 @@ def _check_condition(
     kind: DiagramKind, pressure_kPa: float | None, temperature_K: float | None
 ) -> None:
     """A Txy diagram takes a pressure, a Pxy diagram a temperature, and not the other."""
+    if kind not in get_args(DiagramKind):
+        raise InvalidInputError(
+            f"There is no diagram of kind '{kind}'. Allowed: {', '.join(get_args(DiagramKind))}.",
+            cure="Ask for 'Txy' at one pressure or 'Pxy' at one temperature.",
+            field="kind",
+        )
     given, other = (
         (("pressure_kPa", pressure_kPa), ("temperature_K", temperature_K))
         if kind == "Txy"

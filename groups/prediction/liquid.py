@@ -12,9 +12,10 @@ from groups.arrays import FloatArray
 from groups.confidence import Reason
 from groups.confidence.agreement_rules import agreement_reasons
 from groups.confidence.parameter_rules import temperature_reasons
+from groups.errors import UnknownMethodError
 from groups.parameters import table
 from groups.prediction.answers import MethodUse
-from groups.prediction.choosing import choose
+from groups.prediction.choosing import ALL_METHODS, choose
 from groups.prediction.mixture_reasons import mixture_reasons
 from groups.structure.molecule import Molecule
 
@@ -122,6 +123,8 @@ def liquid(molecules: Sequence[Molecule], method: str, on_missing: OnMissing) ->
     UnknownMethodError, IncompleteAssignmentError, MissingParameterError
         As `groups.prediction.choosing.choose` says.
     """
+    if method not in ALL_METHODS:
+        raise UnknownMethodError(method, ALL_METHODS)
     return _liquid(tuple(molecules), method, on_missing)
 
 
