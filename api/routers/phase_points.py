@@ -8,7 +8,6 @@ from fastapi.responses import Response
 from api import answers
 from api.dependencies import SettingsDependency, check_length
 from api.documentation import BOILING_PROBLEMS, post_responses
-from api.fields import one_composition
 from api.molecules_in import components_of
 from api.negotiation import MediaType, accepts
 from api.responses import CSV_ALSO, answer_as
@@ -71,15 +70,14 @@ def predict_bubble_point(
 ) -> Response:
     """`mole_fractions` is the liquid. Give `temperature_K` or `pressure_kPa`, not both."""
     check_length("components", len(request.components), settings.max_components)
-    with one_composition():
-        answer = prediction.bubble_point(
-            components_of(request.components),
-            request.mole_fractions,
-            temperature_K=request.temperature_K,
-            pressure_kPa=request.pressure_kPa,
-            method=request.method,
-            on_missing=request.on_missing,
-        )
+    answer = prediction.bubble_point(
+        components_of(request.components),
+        request.mole_fractions,
+        temperature_K=request.temperature_K,
+        pressure_kPa=request.pressure_kPa,
+        method=request.method,
+        on_missing=request.on_missing,
+    )
     return answer_as(media, answers.phase_point(answer), phase_point_csv)
 
 
@@ -95,15 +93,14 @@ def predict_dew_point(
 ) -> Response:
     """`mole_fractions` is the vapour. Give `temperature_K` or `pressure_kPa`, not both."""
     check_length("components", len(request.components), settings.max_components)
-    with one_composition():
-        answer = prediction.dew_point(
-            components_of(request.components),
-            request.mole_fractions,
-            temperature_K=request.temperature_K,
-            pressure_kPa=request.pressure_kPa,
-            method=request.method,
-            on_missing=request.on_missing,
-        )
+    answer = prediction.dew_point(
+        components_of(request.components),
+        request.mole_fractions,
+        temperature_K=request.temperature_K,
+        pressure_kPa=request.pressure_kPa,
+        method=request.method,
+        on_missing=request.on_missing,
+    )
     return answer_as(media, answers.phase_point(answer), phase_point_csv)
 
 
@@ -121,13 +118,12 @@ def predict_flash(
 ) -> Response:
     """`mole_fractions` is the feed; a feed that is all liquid or all vapour says so."""
     check_length("components", len(request.components), settings.max_components)
-    with one_composition():
-        answer = prediction.flash(
-            components_of(request.components),
-            request.mole_fractions,
-            temperature_K=request.temperature_K,
-            pressure_kPa=request.pressure_kPa,
-            method=request.method,
-            on_missing=request.on_missing,
-        )
+    answer = prediction.flash(
+        components_of(request.components),
+        request.mole_fractions,
+        temperature_K=request.temperature_K,
+        pressure_kPa=request.pressure_kPa,
+        method=request.method,
+        on_missing=request.on_missing,
+    )
     return answer_as(media, answers.phase_point(answer), phase_point_csv)

@@ -8,7 +8,6 @@ from fastapi.responses import Response
 from api import answers
 from api.dependencies import SettingsDependency, check_length
 from api.documentation import BOILING_PROBLEMS, MIXTURE_PROBLEMS, post_responses
-from api.fields import one_composition
 from api.molecules_in import components_of
 from api.negotiation import MediaType, accepts
 from api.responses import CSV_ALSO, answer_as
@@ -74,12 +73,11 @@ def find_liquid_split(
 ) -> Response:
     """The coexisting liquids at one temperature."""
     check_length("components", len(request.components), settings.max_components)
-    with one_composition():
-        answer = prediction.liquid_splits(
-            components_of(request.components),
-            temperature_K=request.temperature_K,
-            mole_fractions=request.mole_fractions,
-            method=request.method,
-            on_missing=request.on_missing,
-        )
+    answer = prediction.liquid_splits(
+        components_of(request.components),
+        temperature_K=request.temperature_K,
+        mole_fractions=request.mole_fractions,
+        method=request.method,
+        on_missing=request.on_missing,
+    )
     return answer_as(media, answers.liquid_split(answer), liquid_split_csv)

@@ -61,25 +61,27 @@ def check_one_of(temperature_K: float | None, pressure_kPa: float | None) -> Non
 def check_fractions(mole_fractions: ArrayLike, n_components: int) -> FloatArray:
     """Mole fractions of shape (n_points, n_components), each 0..1, each row summing to one."""
     try:
-        fractions = np.atleast_2d(np.asarray(mole_fractions, dtype=float))
+        given = np.asarray(mole_fractions, dtype=float)
     except ValueError as error:
         raise ShapeError(
             "The 'mole_fractions' must be lists of equal length. Got ragged lists instead.",
             cure=f"Give {n_components} numbers for each point.",
             field="mole_fractions",
         ) from error
+    fractions = np.atleast_2d(given)
     if fractions.ndim != 2 or fractions.shape[1] != n_components or fractions.shape[0] == 0:
         raise ShapeError(
             f"Each point of 'mole_fractions' must have {n_components} numbers, one a component. "
-            f"Got an array of shape {fractions.shape} instead.",
+            f"Got an array of shape {given.shape} instead.",
             cure="Give one mole fraction a component, in the order of 'components'.",
             field="mole_fractions",
         )
-    _refuse_outside("mole_fractions", fractions, (0.0, 1.0))
+    _refuse_outside("mole_fractions", given, (0.0, 1.0))
     totals = fractions.sum(axis=1)
     worst = int(np.argmax(np.abs(totals - 1.0)))
     if abs(totals[worst] - 1.0) > SUM_TOLERANCE:
-        raise FractionSumError(float(totals[worst]), field=f"mole_fractions[{worst}]")
+        row = f"mole_fractions[{worst}]" if given.ndim == 2 else "mole_fractions"
+        raise FractionSumError(float(totals[worst]), field=row)
     normalised: FloatArray = fractions / totals[:, np.newaxis]
     return normalised
 
