@@ -113,7 +113,10 @@ class StructureError(MixwrightError):
 class UnreadableSmilesError(StructureError):
     """Text that is not valid SMILES; `position` is the 0-based place, where known."""
 
-    cure = "Correct the SMILES at the place named."
+    cure = (
+        "Correct the SMILES at the place named. A name or a CAS number is given as "
+        '{"name": ...} or {"cas": ...}.'
+    )
 
     def __init__(self, message: str, *, smiles: str, position: int | None = None) -> None:
         super().__init__(message, smiles=smiles)
@@ -151,7 +154,7 @@ class RadicalError(UnsupportedStructureError):
 
 
 class MetalError(UnsupportedStructureError):
-    """A metal or another element that no table describes."""
+    """A metal."""
 
 
 class PolymerError(UnsupportedStructureError):
