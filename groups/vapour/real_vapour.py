@@ -1,8 +1,6 @@
 """Build the real vapour of a mixture, and tell what it rests on."""
 
 from collections.abc import Sequence
-from dataclasses import dataclass
-from typing import Literal
 
 import numpy as np
 from rdkit import Chem
@@ -15,36 +13,14 @@ from groups.structure.molecule import Molecule
 from groups.vapour.association import dimerisation
 from groups.vapour.cross_coefficients import pair_constants
 from groups.vapour.gas_constants import GasConstants, gas_constants
+from groups.vapour.label import label
 from groups.vapour.liquid_volume import liquid_volume
+from groups.vapour.note import VapourNote
 from groups.vapour.polar_terms import PolarTerms
 from groups.vapour.virial_vapour import VirialVapour
 
-Cap = Literal["high", "moderate", "low"]
-
 #: Stands in where a component has no constants; its coefficients are then taken as zero.
 _NOBODY = GasConstants(500.0, 4000.0, 0.3, 300.0, PolarTerms(0.0, 0.0, ""), (), ())
-
-
-@dataclass(frozen=True, slots=True)
-class VapourNote:
-    """What the user of a real vapour should be told.
-
-    Parameters
-    ----------
-    code : str
-        Stable identifier.
-    message : str
-        In a chemist's words.
-    subject : str
-        The component, or "vapour".
-    cap : {"high", "moderate", "low"}
-        The best grade that a number with this note may still have.
-    """
-
-    code: str
-    message: str
-    subject: str
-    cap: Cap = "high"
 
 
 def real_vapour(
@@ -107,7 +83,7 @@ def real_vapour(
 def _notes(
     molecule: Molecule, gas: GasConstants | None, model: VirialVapour, i: int
 ) -> list[VapourNote]:
-    name = _label(molecule)
+    name = label(molecule)
     if gas is None:
         text = f"No critical constants of {name} are known here; its vapour is taken as ideal."
         return [VapourNote("vapour_constants_missing", text, name, "moderate")]
@@ -120,13 +96,6 @@ def _notes(
         text = f"The liquid volume of {name}, for the Poynting factor: {volume.source}."
         found.append(VapourNote("liquid_volume_estimated", text, name))
     return found + _dimer_notes(molecule.mol, name, model, i)
-
-
-def _label(molecule: Molecule) -> str:
-    from groups.structure.identify import name_and_cas  # the list loads only when it is needed
-
-    known = molecule.name or name_and_cas(molecule.canonical_smiles)[0]
-    return known or molecule.canonical_smiles
 
 
 def _virial_note(name: str, gas: GasConstants) -> VapourNote:
