@@ -12,7 +12,7 @@ import numpy as np
 
 from groups.arrays import FloatArray
 from groups.equilibrium.azeotrope import Azeotrope
-from groups.equilibrium.binary_azeotropes import binary_azeotropes, splitting
+from groups.equilibrium.binary_azeotropes import binary_azeotropes
 from groups.equilibrium.boiling_curve import Condition, boiling_curve
 from groups.equilibrium.conditions import checked_pressure, checked_temperature
 from groups.equilibrium.interior_azeotropes import interior_azeotropes
@@ -85,8 +85,7 @@ def _of_face(
     part = subset(system, face)
     if len(face) == 2:
         curve = boiling_curve(part, condition, np.linspace(0.0, 1.0, 21))
-        liquids = splitting(part, condition, curve)
-        inner = list(binary_azeotropes(part, condition, curve, liquids))
+        inner = list(binary_azeotropes(part, condition, curve))
     else:
         inner = interior_azeotropes(part, condition, [_within(a, face) for a in known])
     return [_outside(a, face, system.n_components) for a in inner]

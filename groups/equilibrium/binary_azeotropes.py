@@ -1,87 +1,41 @@
 """Every azeotrope of a binary: where the relative volatility passes through one.
 
 Between neighbouring points of the boiling curve a change of sign of ln alpha encloses an azeotrope;
-a near miss may enclose two. Newton's method finishes what the curve encloses. An azeotrope of a
+a near miss may enclose two. A few secant steps finish what the curve encloses. An azeotrope of a
 liquid that would split is none; where two liquids boil together to a vapour between them, that is
 the heterogeneous azeotrope.
 """
 
-from dataclasses import dataclass
-
 import numpy as np
 from scipy.optimize import brentq
 
-from groups.arrays import FloatArray, IntArray
-from groups.equilibrium.azeotrope import Azeotrope, homogeneous_kind
-from groups.equilibrium.azeotrope_newton import AzeotropeRoots, azeotrope_roots
-from groups.equilibrium.binary_split import fractions, may_split
+from groups.equilibrium.azeotrope import Azeotrope, Kind, homogeneous_kind
+from groups.equilibrium.azeotrope_brackets import Brackets, brackets, near_misses, places
+from groups.equilibrium.azeotrope_newton import (
+    TOLERANCE,
+    AzeotropeRoots,
+    azeotrope_roots,
+    fugacity_gap,
+)
+from groups.equilibrium.binary_split import fractions
 from groups.equilibrium.boiling_curve import BoilingCurve, Condition
-from groups.equilibrium.saturation import rough_boiling_temperatures
 from groups.equilibrium.stability import stability
 from groups.equilibrium.states import safe_log
 from groups.equilibrium.system import System
-from groups.equilibrium.three_phase import (
-    ThreePhase,
-    three_phase_at_pressure,
-    three_phase_at_temperature,
-)
+from groups.equilibrium.three_phase import ThreePhase
 
-#: Temperatures of the quick look for a liquid split.
-QUICK_NODES = 5
-#: |ln alpha| at a local extremum below which two azeotropes may hide between grid points.
-NEAR_MISS = 0.05
 #: |ln alpha| along a whole curve below which the two components cannot be told apart.
 IDENTICAL = 1e-10
 #: Two azeotropes closer than this in s = ln(x1/x2) are one.
 SAME = 1e-5
-
-
-@dataclass(frozen=True, slots=True)
-class Splitting:
-    """Whether a boiling liquid can split at all, and the three-phase lines if it does."""
-
-    conceivable: bool
-    lines: tuple[ThreePhase, ...]
-
-
-def splitting(system: System, condition: Condition, curve: BoilingCurve) -> Splitting:
-    """Liquid splits along a boiling curve, after one quick look that most mixtures pass.
-
-    Parameters
-    ----------
-    system : System
-        Of two components.
-    condition : Condition
-    curve : BoilingCurve
-        At that condition.
-
-    Returns
-    -------
-    Splitting
-    """
-    temperatures = curve.states.temperature_K[curve.states.converged]
-    if not len(temperatures):
-        return Splitting(True, ())
-    low, high = float(temperatures.min()), float(temperatures.max())
-    if condition.temperature_K is None:
-        assert condition.pressure_kPa is not None
-        _, immiscible = rough_boiling_temperatures(system, np.array([condition.pressure_kPa]))
-        nodes = np.linspace(min(low, float(immiscible[0]) - 2.0), high, QUICK_NODES)
-    else:
-        nodes = np.array([low])
-    if not may_split(system.activity, nodes):
-        return Splitting(False, ())
-    if condition.temperature_K is not None:
-        return Splitting(True, three_phase_at_temperature(system, condition.temperature_K))
-    assert condition.pressure_kPa is not None
-    return Splitting(True, three_phase_at_pressure(system, condition.pressure_kPa, high + 0.1))
+#: Secant steps before Newton's method takes over.
+SECANT_STEPS = 6
+#: Lowest d ln P/dT in 1/K that is believed; that of a liquid which boils is a hundred times this.
+LEAST_RISE = 1e-4
 
 
 def binary_azeotropes(
-    system: System,
-    condition: Condition,
-    curve: BoilingCurve,
-    liquids: Splitting,
+    system: System, condition: Condition, curve: BoilingCurve
 ) -> tuple[Azeotrope, ...]:
     """All azeotropes of a binary at the condition of its boiling curve, in the order of x1.
 
@@ -91,25 +45,30 @@ def binary_azeotropes(
         Of two components.
     condition : Condition
     curve : BoilingCurve
-    liquids : Splitting
-        At the same condition.
 
     Returns
     -------
     tuple of Azeotrope
     """
-    found = [_heterogeneous(state) for state in liquids.lines if state.azeotropic]
-    roots = _roots(system, condition, curve)
-    x = roots.mole_fractions[roots.found]
-    if len(x):
-        T, P = roots.temperature_K[roots.found], roots.pressure_kPa[roots.found]
-        stable = np.ones(len(x), dtype=bool)
-        if liquids.conceivable:
-            stable = stability(system.activity, T, x).stable
-        for k in np.flatnonzero(stable):
-            kind = homogeneous_kind(system, float(T[k]), x[k])
-            found.append(Azeotrope((0, 1), x[k], float(T[k]), float(P[k]), kind, True, (x[k],)))
-    return tuple(sorted(found, key=lambda azeotrope: float(azeotrope.mole_fractions[0])))
+    found = [_heterogeneous(state) for state in curve.lines if state.azeotropic]
+    at = places(curve)
+    if len(at.s) < 2 or np.abs(at.ln_alpha).max() < IDENTICAL:
+        return tuple(found)
+    fixed = condition.pressure_kPa is not None
+    enclosed = brackets(at)
+    if len(enclosed.s):
+        roots = _enclosed(system, condition, _polished(system, enclosed, fixed=fixed), enclosed)
+        slopes: list[float | None] = enclosed.slope.tolist()
+        found += _stable_ones(system, roots, slopes, splits=curve.may_split)
+    misses = near_misses(at)
+    if len(misses):
+        aside = np.concatenate([0.5 * (at.s[misses] + at.s[misses + k]) for k in (-1, 1)])
+        T, P = at.temperature_K[misses], np.exp(at.ln_pressure[misses])
+        more = azeotrope_roots(
+            system, fractions(aside), np.tile(T, 2), np.tile(P, 2), fixed_pressure=fixed
+        )
+        found += _stable_ones(system, more, [None] * len(aside), splits=curve.may_split)
+    return _distinct(found)
 
 
 def _heterogeneous(state: ThreePhase) -> Azeotrope:
@@ -125,81 +84,67 @@ def _heterogeneous(state: ThreePhase) -> Azeotrope:
     )
 
 
-def _roots(system: System, condition: Condition, curve: BoilingCurve) -> AzeotropeRoots:
-    inner = np.isfinite(curve.ln_alpha) & (curve.x > 0.0).all(axis=1)
-    ln_alpha, x = curve.ln_alpha[inner], curve.x[inner]
-    T, P = curve.states.temperature_K[inner], curve.states.pressure_kPa[inner]
-    s = np.log(x[:, 0]) - np.log(x[:, 1])
-    if len(s) < 2 or np.abs(ln_alpha).max() < IDENTICAL:
-        return _none()
-    crossings: IntArray = np.flatnonzero(
-        np.sign(ln_alpha[:-1]) * np.sign(ln_alpha[1:]) <= 0.0
-    ).astype(np.int64)
-    at, at_T = _interpolated(s, T, ln_alpha, crossings)
-    size = np.abs(ln_alpha)
-    low = (size[1:-1] <= size[:-2]) & (size[1:-1] <= size[2:]) & (size[1:-1] < NEAR_MISS)
-    same_side = (ln_alpha[1:-1] * ln_alpha[:-2] > 0.0) & (ln_alpha[1:-1] * ln_alpha[2:] > 0.0)
-    misses = 1 + np.flatnonzero(low & same_side)
-    aside = [0.5 * (s[misses] + s[misses + k]) for k in (-1, 1)]
-    if not len(crossings) + len(misses):
-        return _none()
-    start_P = P[np.concatenate([crossings, misses, misses])]
-    roots = azeotrope_roots(
-        system,
-        fractions(np.concatenate([at, *aside])),
-        np.concatenate([at_T, T[misses], T[misses]]),
-        start_P,
-        fixed_pressure=condition.pressure_kPa is not None,
-    )
-    return _distinct(_enclosed(system, condition, roots, s, crossings))
+def _stable_ones(
+    system: System, roots: AzeotropeRoots, slopes: list[float | None], *, splits: bool
+) -> list[Azeotrope]:
+    """The roots whose liquid does not split; their kind from d ln alpha/ds where it is known."""
+    rows = np.flatnonzero(roots.found)
+    x, T, P = roots.mole_fractions, roots.temperature_K, roots.pressure_kPa
+    if splits and len(rows):
+        rows = rows[stability(system.activity, T[rows], x[rows]).stable]
+    found = []
+    for k in rows:
+        slope = slopes[int(k)]
+        kind: Kind = "minimum-boiling" if slope is not None and slope < 0.0 else "maximum-boiling"
+        if not slope:
+            kind = homogeneous_kind(system, float(T[k]), x[k])
+        found.append(Azeotrope((0, 1), x[k], float(T[k]), float(P[k]), kind, True, (x[k],)))
+    return found
 
 
-def _interpolated(
-    s: FloatArray, T: FloatArray, ln_alpha: FloatArray, crossings: IntArray
-) -> tuple[FloatArray, FloatArray]:
-    """s and T where ln alpha is zero: inverse interpolation through four points, else two."""
-    at, at_T = np.empty(len(crossings)), np.empty(len(crossings))
-    for k, left in enumerate(crossings.tolist()):
-        near = slice(max(left - 1, 0), left + 3)
-        steps = np.diff(ln_alpha[near])
-        if not ((steps > 0.0).all() or (steps < 0.0).all()):
-            near = slice(left, left + 2)
-        weights = _zero_weights(ln_alpha[near])
-        at[k] = np.clip(weights @ s[near], s[left], s[left + 1])
-        at_T[k] = weights @ T[near]
-    return at, at_T
-
-
-def _zero_weights(values: FloatArray) -> FloatArray:
-    """Lagrange weights of interpolation to where the values are zero; equal ones if they repeat."""
-    gaps = values[:, None] - values[None, :]
-    own = np.eye(len(values), dtype=bool)
-    if (gaps == 0.0)[~own].any():
-        return np.full(len(values), 1.0 / len(values))
-    ratio = -values[None, :] / np.where(own, 1.0, gaps)
-    return np.asarray(np.where(own, 1.0, ratio).prod(axis=1))
+def _polished(system: System, start: Brackets, *, fixed: bool) -> AzeotropeRoots:
+    """Secant steps from the slope of the bracket, then Newton's method for what is left."""
+    s, T, ln_P = start.s.copy(), start.temperature_K.copy(), start.ln_pressure.copy()
+    slope, rise = start.slope, np.ones_like(s)
+    if fixed:
+        rise = (fractions(s) * system.ln_saturation_slope(T)).sum(axis=1)
+    old_s, old_value = s, np.zeros_like(s)
+    for step in range(SECANT_STEPS):
+        x = fractions(s)
+        gap = fugacity_gap(system, x, T, ln_P)
+        found = np.abs(gap).max(axis=1) <= TOLERANCE
+        if found.all():
+            return AzeotropeRoots(x, T, np.exp(ln_P), found)
+        excess, value = (x * gap).sum(axis=1), gap[:, 0] - gap[:, 1]
+        if step:
+            moved, change = s - old_s, value - old_value
+            # Where nothing moves any more, or the signs disagree, the slope of before stays.
+            better = (moved != 0.0) & (change * moved * slope > 0.0)
+            slope = np.where(better, change / np.where(better, moved, 1.0), slope)
+        old_s, old_value = s, value
+        if fixed:
+            T = T - excess / np.maximum(rise, LEAST_RISE)
+        else:
+            ln_P = ln_P + excess
+        s = np.clip(s - value / np.where(slope == 0.0, np.inf, slope), start.low, start.high)
+    return azeotrope_roots(system, fractions(s), T, np.exp(ln_P), fixed_pressure=fixed)
 
 
 def _enclosed(
-    system: System,
-    condition: Condition,
-    roots: AzeotropeRoots,
-    s: FloatArray,
-    crossings: IntArray,
+    system: System, condition: Condition, roots: AzeotropeRoots, around: Brackets
 ) -> AzeotropeRoots:
     """The roots, with any that Newton led out of its bracket found again inside it."""
     x, T, P = roots.mole_fractions.copy(), roots.temperature_K.copy(), roots.pressure_kPa.copy()
     found = roots.found.copy()
     ends = safe_log(x)
     where = ends[:, 0] - ends[:, 1]
-    for k, left in enumerate(crossings):
-        low, high = s[int(left)], s[int(left) + 1]
-        if found[k] and low - SAME <= where[k] <= high + SAME:
-            continue
-        root = _bracketed(system, condition, low, high)
+    within = (around.low - SAME <= where) & (where <= around.high + SAME)
+    for k in np.flatnonzero(~(found & within)):
+        root = _bracketed(system, condition, float(around.low[k]), float(around.high[k]))
         if root is None:
+            found[k] = False
             continue
-        state = condition.boil(system, fractions(root))
+        state = condition.boil(system, fractions(root)[None])
         again = azeotrope_roots(
             system,
             fractions(root)[None],
@@ -221,25 +166,17 @@ def _bracketed(system: System, condition: Condition, low: float, high: float) ->
 
 
 def _ln_alpha(system: System, condition: Condition, s: float) -> float:
-    x = fractions(s)
-    state = condition.boil(system, x)
+    state = condition.boil(system, fractions(s)[None])
     return float(np.log(state.vapour[0, 0] / state.vapour[0, 1]) - s)
 
 
-def _distinct(roots: AzeotropeRoots) -> AzeotropeRoots:
-    keep = np.flatnonzero(roots.found)
-    ln_x = safe_log(roots.mole_fractions[keep])
-    s = ln_x[:, 0] - ln_x[:, 1]
-    order = np.argsort(s)
-    new = np.concatenate([[True], np.diff(s[order]) > SAME]) if len(keep) else keep
-    keep = keep[order][new]
-    return AzeotropeRoots(
-        roots.mole_fractions[keep],
-        roots.temperature_K[keep],
-        roots.pressure_kPa[keep],
-        roots.found[keep],
-    )
-
-
-def _none() -> AzeotropeRoots:
-    return AzeotropeRoots(np.empty((0, 2)), np.empty(0), np.empty(0), np.empty(0, dtype=bool))
+def _distinct(found: list[Azeotrope]) -> tuple[Azeotrope, ...]:
+    """In the order of x1, each once."""
+    kept: list[Azeotrope] = []
+    last = -np.inf
+    logits = [float(np.log(a.mole_fractions[0] / a.mole_fractions[1])) for a in found]
+    for k in np.argsort(logits, kind="stable"):
+        if not kept or logits[int(k)] - last > SAME or found[int(k)].heterogeneous:
+            kept.append(found[int(k)])
+        last = logits[int(k)]
+    return tuple(kept)

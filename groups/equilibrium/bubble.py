@@ -9,6 +9,7 @@ import numpy as np
 import numpy.typing as npt
 
 from groups.arrays import FloatArray, IntArray
+from groups.equilibrium.boiling_table import PLACES, BoilingTable, boiling_table
 from groups.equilibrium.conditions import (
     checked_fractions,
     checked_pressure,
@@ -23,12 +24,6 @@ from groups.equilibrium.temperature_root import rising_root
 #: Passes over the correction of a real vapour; it is a weak function of the composition.
 MAX_VAPOUR_PASSES = 60
 VAPOUR_TOLERANCE = 1e-12
-#: Temperatures of the table that a start is interpolated from: Chebyshev places between the bounds.
-TABLE_PLACES = 0.5 - 0.5 * np.cos(np.pi * (np.arange(5) + 0.5) / 5.0)
-#: Step of ln P for the slope of the table; the mean of both sides is right to its square.
-TABLE_STEP = 1e-4
-#: Over a wider range of boiling temperatures the table would be too coarse to help.
-WIDEST_TABLE_K = 150.0
 #: |ln P error| below which Newton's method keeps its slope.
 CHORD = 3e-3
 NO_BUBBLE_TEMPERATURE = "no temperature was found at which this liquid boils at this pressure"
@@ -106,9 +101,16 @@ def bubble_temperature(
     """
     x = checked_fractions(mole_fractions, system.n_components)
     P, x = paired(checked_pressure(pressure_kPa), x)
+    return boiling_states(system, P, x)
+
+
+def boiling_states(
+    system: System, P: FloatArray, x: FloatArray, table: BoilingTable | None = None
+) -> States:
+    """Bubble temperatures at pressures (n,) of liquids (n, n_components), from a table if given."""
     if not len(P):
         return verified_states(system, P, P, x, x, ())
-    T, slope = _start(system, P, x)
+    T, slope = _start(system, P, x, table)
     correction = np.zeros_like(x)
     for _ in range(MAX_VAPOUR_PASSES):
         search = _BubbleSearch(system, np.log(P), x, correction, slope)
@@ -128,41 +130,17 @@ def start_temperature(system: System, pressure_kPa: FloatArray, x: FloatArray) -
 
 
 def _start(
-    system: System, pressure_kPa: FloatArray, x: FloatArray
+    system: System, pressure_kPa: FloatArray, x: FloatArray, table: BoilingTable | None
 ) -> tuple[FloatArray, FloatArray | None]:
-    """A better start, and d ln P/dT there: ln P at a few temperatures, interpolated back to 1/T.
-
-    The interaction terms of a few temperatures serve all liquids, so this costs less than the one
-    evaluation at as many temperatures as points, and that of the slopes, which it saves.
-    """
-    pure, immiscible = rough_boiling_temperatures(system, pressure_kPa)
-    average = np.asarray((x * pure).sum(axis=1))
-    low, high = float(immiscible.min()) - 2.0, float(pure.max()) + 5.0
-    if high - low > WIDEST_TABLE_K or len(x) < len(TABLE_PLACES):
-        return average, None
-    nodes = 1.0 / (1.0 / low + TABLE_PLACES * (1.0 / high - 1.0 / low))
-    terms = safe_log(x) + system.activity.ln_gamma(nodes[:, None], x[None])
-    ln_pressure = log_sum_exp(terms + system.ln_saturation(nodes)[:, None, :])
-    below, above = _interpolated_back(ln_pressure, 1.0 / nodes, np.log(pressure_kPa))
-    inverse, run = 0.5 * (below + above), (above - below) / (2.0 * TABLE_STEP)
-    if not ((inverse > 0.8 / high) & (inverse < 1.2 / low) & (run < 0.0)).all():
-        usable = (inverse > 0.8 / high) & (inverse < 1.2 / low)
-        return np.where(usable, 1.0 / np.where(usable, inverse, 1.0), average), None
-    return 1.0 / inverse, -(inverse**2) / run
-
-
-def _interpolated_back(
-    ln_pressure: FloatArray, inverse: FloatArray, wanted: FloatArray
-) -> FloatArray:
-    """1/T a small step of ln P below and above the pressure wanted (Lagrange), of shape (2, n)."""
-    own = np.eye(len(inverse), dtype=bool)[:, :, None]
-    gaps = ln_pressure[:, None, :] - ln_pressure[None, :, :]
-    denominator = np.where(own, 1.0, np.where(gaps == 0.0, np.inf, gaps)).prod(axis=1)
-    targets = wanted + np.array([[-TABLE_STEP], [TABLE_STEP]])
-    distance = targets[:, None, :] - ln_pressure
-    numerator = np.where(own, 1.0, distance[:, None, :, :]).prod(axis=2)
-    weights = numerator / denominator
-    return np.asarray((weights * inverse[:, None]).sum(axis=1))
+    """Starts for the temperatures, and d ln P/dT there where the table gives it."""
+    if table is None and len(x) >= PLACES:
+        table = boiling_table(system, pressure_kPa, x)
+    if table is None:
+        return start_temperature(system, pressure_kPa, x), None
+    T, slope, usable = table.boiling(np.log(pressure_kPa))
+    if usable.all():
+        return T, slope
+    return np.where(usable, T, start_temperature(system, pressure_kPa, x)), None
 
 
 class _BubbleSearch:

@@ -7,8 +7,8 @@ import numpy as np
 
 from groups.arrays import BoolArray, FloatArray, IntArray
 from groups.equilibrium.azeotrope import Azeotrope
-from groups.equilibrium.binary_azeotropes import Splitting, binary_azeotropes, splitting
-from groups.equilibrium.boiling_curve import Condition, boiling_curve
+from groups.equilibrium.binary_azeotropes import binary_azeotropes
+from groups.equilibrium.boiling_curve import BoilingCurve, Condition, boiling_curve, inside
 from groups.equilibrium.conditions import checked_pressure, checked_temperature
 from groups.equilibrium.stability import stability, tested
 from groups.equilibrium.states import States
@@ -129,14 +129,18 @@ def diagram(
     condition = _condition(system, kind, pressure_kPa, temperature_K, points)
     x1 = np.linspace(0.0, 1.0, points)
     curve = boiling_curve(system, condition, x1)
-    liquids = splitting(system, condition, curve)
-    azeotropes = binary_azeotropes(system, condition, curve, liquids)
-    place = np.searchsorted(curve.x[:, 0], x1).astype(np.int64)
-    place[-1] = len(curve.x) - 1  # points crowd at x1 = 1; the pure end is the last
-    states, alpha = _at(curve.states, place), np.exp(curve.ln_alpha[place])
+    azeotropes = binary_azeotropes(system, condition, curve)
     x = np.stack([x1, 1.0 - x1], axis=-1)
-    stable = _stable(system, states, x, liquids)
-    return _assembled(kind, x, states, alpha, stable, liquids.lines, azeotropes)
+    covered = np.zeros(points, dtype=bool)
+    for line in curve.lines:
+        covered |= inside(line, x)
+    outside = np.flatnonzero(~covered)
+    place = np.searchsorted(curve.x[:, 0], x1[outside]).astype(np.int64)
+    place[-1] = len(curve.x) - 1  # points crowd at x1 = 1; the pure end is the last
+    states = _at(curve.states, place)
+    stable = _stable(system, states, curve)
+    drawn = _Drawn.of(states, np.exp(curve.ln_alpha[place]), stable)
+    return drawn.spread(points, outside).over(x, curve.lines).result(kind, x, curve, azeotropes)
 
 
 def _condition(
@@ -174,87 +178,123 @@ def _at(states: States, place: IntArray) -> States:
         states.gamma[place],
         states.converged[place],
         states.residual[place],
-        tuple(states.failure[int(k)] for k in place),
+        tuple([states.failure[k] for k in place.tolist()]),
     )
 
 
-def _stable(system: System, states: States, x: FloatArray, liquids: Splitting) -> BoolArray:
+def _stable(system: System, states: States, curve: BoilingCurve) -> BoolArray:
     """Stability of every point, by the tangent plane where any split is conceivable."""
+    x = states.liquid
     stable = np.ones(len(x), dtype=bool)
-    if not liquids.conceivable:
+    unknown = np.flatnonzero(states.converged & (x > 0.0).all(axis=1))
+    if not curve.may_split or not len(unknown):
         return stable
-    for line in liquids.lines:
-        stable &= ~_inside(line, x)
-    unknown = np.flatnonzero(stable & states.converged & (x > 0.0).all(axis=1))
-    if len(unknown):
-        stable[unknown] = _outside_gaps(system, states.temperature_K[unknown], x[unknown], liquids)
-    return stable
-
-
-def _outside_gaps(system: System, T: FloatArray, x: FloatArray, liquids: Splitting) -> BoolArray:
-    """Stability beside the gaps: their liquids are the trials that matter there."""
-    if not liquids.lines:
-        return stability(system.activity, T, x).stable
-    ends = [end for line in liquids.lines for end in (line.first, line.second)]
+    T, x = states.temperature_K[unknown], x[unknown]
+    if not curve.lines:
+        stable[unknown] = stability(system.activity, T, x).stable
+        return stable
+    # Beside the gaps their liquids are the trials that matter.
+    ends = [end for line in curve.lines for end in (line.first, line.second)]
     trials = np.stack([*ends, *(np.eye(2) * (1.0 - 2e-6) + 1e-6)])
     starts = np.broadcast_to(trials[:, None, :], (len(trials), *x.shape)).copy()
     plane = np.log(x) + system.activity.ln_gamma(T, x)
-    return tested(system.activity, T, x, plane, starts).stable
+    stable[unknown] = tested(system.activity, T, x, plane, starts).stable
+    return stable
 
 
-def _inside(line: ThreePhase, x: FloatArray) -> BoolArray:
-    # By the fraction that is the smaller at either side, so that a gap to the very edge is seen.
-    inside: BoolArray = (x[:, 0] > line.first[0]) & (x[:, 1] > line.second[1])
-    return inside
+@dataclass(slots=True)
+class _Drawn:
+    """What is drawn at each point."""
+
+    temperature_K: FloatArray
+    pressure_kPa: FloatArray
+    y1: FloatArray
+    gamma: FloatArray
+    alpha: FloatArray
+    stable: BoolArray
+    converged: BoolArray
+    failure: list[str | None]
+
+    @classmethod
+    def of(cls, states: States, alpha: FloatArray, stable: BoolArray) -> "_Drawn":
+        """Homogeneous states; blank where the liquid splits although no line was found."""
+        drawn = cls(
+            states.temperature_K,
+            states.pressure_kPa,
+            states.vapour[:, 0],
+            states.gamma,
+            alpha,
+            stable,
+            states.converged & stable,
+            list(states.failure),
+        )
+        blank = ~stable
+        if blank.any():
+            for values in (drawn.temperature_K, drawn.pressure_kPa, drawn.y1, drawn.gamma, alpha):
+                values[blank] = np.nan
+            for k in np.flatnonzero(blank):
+                drawn.failure[int(k)] = drawn.failure[int(k)] or SPLITS
+        return drawn
+
+    def spread(self, points: int, outside: IntArray) -> "_Drawn":
+        """Over all points of the diagram; those inside a gap are still empty."""
+        if len(outside) == points:
+            return self
+        failure: list[str | None] = [None] * points
+        for k, place in enumerate(outside.tolist()):
+            failure[place] = self.failure[k]
+        T, P, y1, gamma, alpha = (
+            _spread(values, points, outside)
+            for values in (self.temperature_K, self.pressure_kPa, self.y1, self.gamma, self.alpha)
+        )
+        stable, converged = np.zeros(points, dtype=bool), np.ones(points, dtype=bool)
+        stable[outside], converged[outside] = self.stable, self.converged
+        return _Drawn(T, P, y1, gamma, alpha, stable, converged, failure)
+
+    def over(self, x: FloatArray, lines: tuple[ThreePhase, ...]) -> "_Drawn":
+        """With the three-phase lines in place of liquids that do not exist."""
+        for line in lines:
+            within = inside(line, x)
+            self.temperature_K[within], self.pressure_kPa[within] = (
+                line.temperature_K,
+                line.pressure_kPa,
+            )
+            self.y1[within] = line.vapour[0]
+            ratio = line.vapour / x[within]
+            self.alpha[within] = ratio[:, 0] / ratio[:, 1]
+            self.gamma[within] = line.activity / x[within]
+        return self
+
+    def result(
+        self,
+        kind: Literal["Txy", "Pxy"],
+        x: FloatArray,
+        curve: BoilingCurve,
+        azeotropes: tuple[Azeotrope, ...],
+    ) -> Diagram:
+        """The diagram."""
+        splits = tuple(_range(line) for line in curve.lines)
+        return Diagram(
+            kind,
+            x[:, 0],
+            self.y1,
+            self.temperature_K,
+            self.pressure_kPa,
+            self.gamma,
+            self.alpha,
+            self.stable,
+            self.converged,
+            tuple(self.failure),
+            azeotropes,
+            max(splits, key=lambda r: r.x1_upper - r.x1_lower) if splits else None,
+            splits,
+        )
 
 
-def _assembled(
-    kind: Literal["Txy", "Pxy"],
-    x: FloatArray,
-    states: States,
-    alpha: FloatArray,
-    stable: BoolArray,
-    lines: tuple[ThreePhase, ...],
-    azeotropes: tuple[Azeotrope, ...],
-) -> Diagram:
-    """The diagram, with the three-phase line in place of liquids that do not exist."""
-    T, P = states.temperature_K.copy(), states.pressure_kPa.copy()
-    y1, gamma, alpha = states.vapour[:, 0].copy(), states.gamma.copy(), alpha.copy()
-    failure, converged = list(states.failure), states.converged.copy()
-    covered = np.zeros(len(x), dtype=bool)
-    for line in lines:
-        inside = _inside(line, x)
-        T[inside], P[inside], y1[inside] = line.temperature_K, line.pressure_kPa, line.vapour[0]
-        covered |= inside
-        ratio = line.vapour / x[inside]
-        alpha[inside] = ratio[:, 0] / ratio[:, 1]
-        gamma[inside] = line.activity / x[inside]
-        converged[inside] = True
-    blank = ~stable & ~covered
-    for values in (T, P, y1, gamma, alpha):
-        values[blank] = np.nan
-    converged &= ~blank
-    for k in np.flatnonzero(covered):
-        failure[int(k)] = None
-    for k in np.flatnonzero(blank):
-        failure[int(k)] = failure[int(k)] or SPLITS
-    splits = tuple(_range(line) for line in lines)
-    widest = max(splits, key=lambda r: r.x1_upper - r.x1_lower) if splits else None
-    return Diagram(
-        kind,
-        x[:, 0],
-        y1,
-        T,
-        P,
-        gamma,
-        alpha,
-        stable,
-        converged,
-        tuple(failure),
-        azeotropes,
-        widest,
-        splits,
-    )
+def _spread(values: FloatArray, points: int, outside: IntArray) -> FloatArray:
+    whole = np.full((points, *values.shape[1:]), np.nan)
+    whole[outside] = values
+    return whole
 
 
 def _range(line: ThreePhase) -> SplitRange:

@@ -7,10 +7,7 @@ import numpy as np
 
 from groups.arrays import FloatArray
 from groups.equilibrium.states import log_sum_exp
-from groups.equilibrium.system import System
-
-#: Between these nodes ln P is taken straight in 1/T, which costs about a kelvin.
-NODES_K = np.geomspace(60.0, 1500.0, 40)
+from groups.equilibrium.system import ROUGH_K, System
 
 
 def rough_boiling_temperatures(
@@ -31,12 +28,12 @@ def rough_boiling_temperatures(
         In K: where the sum of the pure vapour pressures is the pressure. No liquid mixture of
         activities below one boils lower.
     """
-    table = system.ln_saturation(NODES_K)
+    table = system.rough_saturation
     columns = [*table.T, log_sum_exp(table)]
     ln_pressure = np.log(pressure_kPa)
     # A saturation line rises everywhere; the running maximum guards a user's line that does not.
     inverse = [
-        np.interp(ln_pressure, np.maximum.accumulate(column), 1.0 / NODES_K) for column in columns
+        np.interp(ln_pressure, np.maximum.accumulate(column), 1.0 / ROUGH_K) for column in columns
     ]
     found = 1.0 / np.stack(inverse, axis=-1)
     return found[:, :-1], found[:, -1]

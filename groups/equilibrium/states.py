@@ -44,8 +44,7 @@ def safe_log(values: FloatArray) -> FloatArray:
 
 def log_sum_exp(values: FloatArray) -> FloatArray:
     """ln of the sum over the last axis of exp(values), which may hold minus infinity."""
-    top = values.max(axis=-1, keepdims=True)
-    total: FloatArray = top[..., 0] + np.log(np.exp(values - top).sum(axis=-1))
+    total: FloatArray = np.logaddexp.reduce(values, axis=-1)
     return total
 
 
@@ -100,12 +99,15 @@ def verified_states(
     residual = equilibrium_residual(system, T, P, x, y, ln_gamma + ln_saturation)
     residual = np.where(known & np.isfinite(residual), residual, np.inf)
     good = residual <= RESIDUAL_TOLERANCE
+    gamma = np.exp(np.minimum(ln_gamma, 700.0))
+    if good.all():
+        return States(T, P, x, y, gamma, good, residual, (None,) * len(good))
     texts = tuple(
         None if ok else (text or f"the iteration left a residual of {value:.1e} in ln fugacity")
         for ok, text, value in zip(good.tolist(), failure, residual.tolist(), strict=True)
     )
     blank = ~good
-    columns = (temperature_K, pressure_kPa, liquid, vapour, np.exp(np.minimum(ln_gamma, 700.0)))
+    columns = (temperature_K, pressure_kPa, liquid, vapour, gamma)
     T, P, x, y, gamma = (_blanked(column, blank) for column in columns)
     return States(T, P, x, y, gamma, good, residual, texts)
 

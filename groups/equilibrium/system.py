@@ -17,6 +17,9 @@ import numpy.typing as npt
 from groups.arrays import FloatArray
 from groups.errors import ShapeError
 
+#: Between these temperatures ln P is taken straight in 1/T for a guess, which costs about a kelvin.
+ROUGH_K = np.geomspace(60.0, 1500.0, 40)
+
 
 class LiquidModel(Protocol):
     """The part of an activity-coefficient model that phase equilibrium uses."""
@@ -104,6 +107,7 @@ class System:
     activity: LiquidModel
     vapour_pressures: tuple[SaturationLine, ...]
     vapour: VapourModel = field(default_factory=IdealVapour)
+    _rough: list[FloatArray] = field(default_factory=list, init=False, repr=False, compare=False)
 
     def __post_init__(self) -> None:
         if len(self.vapour_pressures) != self.activity.n_components:
@@ -118,6 +122,13 @@ class System:
     def n_components(self) -> int:
         """Number of components."""
         return len(self.vapour_pressures)
+
+    @property
+    def rough_saturation(self) -> FloatArray:
+        """ln of the pure vapour pressures in kPa at ROUGH_K, for first guesses; evaluated once."""
+        if not self._rough:
+            self._rough.append(self.ln_saturation(ROUGH_K))
+        return self._rough[0]
 
     def ln_saturation(self, temperature_K: FloatArray) -> FloatArray:
         """ln of the pure vapour pressures in kPa, of shape (..., n_components)."""

@@ -80,9 +80,14 @@ class VapourPressure:
         ndarray, same shape
         """
         T = np.asarray(temperature_K, dtype=np.float64)
-        inside = np.clip(T, *self.range_K)
-        steepness = self.curve.slope(inside) * inside**2
-        return self.curve.ln_kPa(inside) + steepness * (1.0 / inside - 1.0 / T)
+        low, high = self.range_K
+        if T.size and low <= T.min() and T.max() <= high:
+            return self.curve.ln_kPa(T)
+        inside = np.clip(T, low, high)
+        edges = np.array(self.range_K)
+        steepness = self.curve.slope(edges) * edges**2
+        beyond = np.where(inside < T, steepness[1], steepness[0])
+        return self.curve.ln_kPa(inside) + beyond * (1.0 / inside - 1.0 / T)
 
     def slope(self, temperature_K: npt.ArrayLike) -> FloatArray:
         """Temperature derivative of ln P.
@@ -98,7 +103,10 @@ class VapourPressure:
             1/K, always positive.
         """
         T = np.asarray(temperature_K, dtype=np.float64)
-        inside = np.clip(T, *self.range_K)
+        low, high = self.range_K
+        if T.size and low <= T.min() and T.max() <= high:
+            return self.curve.slope(T)
+        inside = np.clip(T, low, high)
         return self.curve.slope(inside) * (inside / T) ** 2
 
     def kPa(self, temperature_K: npt.ArrayLike) -> FloatArray:
