@@ -6,7 +6,9 @@ MixwrightError
 |   |-- FractionSumError              mole fractions that do not sum to one
 |   |-- ShapeError                    lists whose lengths do not fit together
 |   |-- DuplicateComponentError       one molecule given twice
-|   `-- UnknownMethodError            a method identifier that does not exist
+|   |-- UnknownMethodError            a method identifier that does not exist
+|   |-- MeasurementError              a measured point that cannot be read or be true
+|   `-- TooFewPointsError             fewer measurements than what is asked of them needs
 |-- StructureError                    a molecule that cannot be taken
 |   |-- UnreadableSmilesError         not valid SMILES; says where
 |   |-- UnknownNameError              a name or CAS number that the offline list lacks
@@ -23,7 +25,8 @@ MixwrightError
 |-- PredictionError                   sound input for which no method here gives a number
 |   |-- IncompleteAssignmentError     atoms that no group of the table covers
 |   |-- MissingParameterError         a group pair without published parameter
-|   `-- NoVapourPressureError         no source gives a vapour pressure
+|   |-- NoVapourPressureError         no source gives a vapour pressure
+|   `-- FitRefusedError               an equation that cannot describe this liquid
 |-- ConvergenceError                  an iteration that did not reach its equations
 `-- DataError                         a data file of this project that fails its own record
 """
@@ -98,6 +101,28 @@ class UnknownMethodError(InvalidInputError):
             field="method",
         )
         self.method, self.allowed = method, tuple(allowed)
+
+
+class MeasurementError(InvalidInputError):
+    """A measured point that cannot be read or cannot be true; `points` are 0-based."""
+
+    cure = "Correct the points named, or the units they are stated in."
+
+    def __init__(
+        self, message: str, *, points: Sequence[int] = (), cure: str = "", field: str | None = None
+    ) -> None:
+        super().__init__(message, cure=cure, field=field)
+        self.points = tuple(points)
+
+
+class TooFewPointsError(InvalidInputError):
+    """Fewer measurements than a fit or a test needs."""
+
+    cure = "Give more points, or ask for an equation with fewer parameters."
+
+    def __init__(self, message: str, *, given: int, needed: int, field: str | None = None) -> None:
+        super().__init__(message, field=field)
+        self.given, self.needed = given, needed
 
 
 class StructureError(MixwrightError):
@@ -201,6 +226,15 @@ class NoVapourPressureError(PredictionError):
     def __init__(self, message: str, *, smiles: str) -> None:
         super().__init__(message)
         self.smiles = smiles
+
+
+class FitRefusedError(PredictionError):
+    """An equation that cannot describe this liquid, or data that cannot fix its parameters."""
+
+    cure = "Take another equation, or a form with fewer parameters."
+
+    def __init__(self, message: str, *, cure: str = "", field: str | None = None) -> None:
+        super().__init__(message, cure=cure, field=field)
 
 
 class ConvergenceError(MixwrightError):

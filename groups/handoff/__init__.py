@@ -1,0 +1,1 @@
+"""Hand-over: fits for flowsheets, ThermoML, and measurements against models."""
