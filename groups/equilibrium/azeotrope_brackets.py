@@ -10,7 +10,7 @@ from groups.equilibrium.boiling_curve import BoilingCurve
 #: |ln alpha| at a local extremum below which two azeotropes may hide between grid points.
 NEAR_MISS = 0.05
 #: Points on either side of a crossing through which its place is interpolated.
-NEIGHBOURS = 3
+NEIGHBOURS = 4
 
 
 @dataclass(frozen=True, slots=True)

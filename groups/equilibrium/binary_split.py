@@ -29,6 +29,8 @@ SUSPICIOUS_SLOPE = 0.08
 #: Largest difference of ln activity between the two liquids, and lowest allowed tangent distance.
 TOLERANCE = 1e-10
 NEWTON_STEPS = 40
+#: Halvings of the range of h for a first guess: finer than the grid is.
+BISECTIONS = 20
 
 
 @dataclass(frozen=True, slots=True)
@@ -80,7 +82,7 @@ def binary_splits(liquid: LiquidModel, temperature_K: float) -> tuple[BinarySpli
     As `binary_split`.
     """
     T = float(checked_temperature(temperature_K)[0])
-    curve = _Curve.trace(liquid, T)
+    curve = ActivityCurve.trace(liquid, T)
     tops, bottoms = curve.spinodals()
     found: list[BinarySplit] = []
     for top, bottom in product(tops, bottoms):
@@ -124,7 +126,7 @@ def may_split(liquid: LiquidModel, temperature_K: FloatArray) -> bool:
 
 
 @dataclass(frozen=True, slots=True)
-class _Curve:
+class ActivityCurve:
     """s, h(s), ln a1 and ln a2 along a grid at one temperature."""
 
     temperature_K: float
@@ -133,10 +135,12 @@ class _Curve:
 
     @property
     def h(self) -> FloatArray:
+        """ln a1 - ln a2."""
         return np.asarray(self.ln_a[:, 0] - self.ln_a[:, 1])
 
     @classmethod
-    def trace(cls, liquid: LiquidModel, T: float) -> "_Curve":
+    def trace(cls, liquid: LiquidModel, T: float) -> "ActivityCurve":
+        """Along the whole range of s, closer where the slope of h nearly vanishes."""
         s = logit_grid(liquid, np.array([T]))
         curve = cls(T, s, ln_activity(liquid, T, s))
         for _ in range(3):  # each pass looks ten times closer at a slope that nearly vanishes
@@ -190,14 +194,15 @@ def activity_difference_slope(liquid: LiquidModel, T: float, s: FloatArray) -> F
 
 
 def _common_tangent(
-    liquid: LiquidModel, T: float, curve: _Curve, top: int, bottom: int
+    liquid: LiquidModel, T: float, curve: ActivityCurve, top: int, bottom: int
 ) -> tuple[float, float] | None:
     """s of both liquids around a fall of h, by equal areas on the grid and then by Newton."""
-    guess = _equal_areas(curve, top, bottom)
+    guess = equal_areas(curve, top, bottom)
     return None if guess is None else polish_tangent(liquid, T, *guess)
 
 
-def _equal_areas(curve: _Curve, top: int, bottom: int) -> tuple[float, float] | None:
+def equal_areas(curve: ActivityCurve, top: int, bottom: int) -> tuple[float, float] | None:
+    """s of both liquids around a fall of h, as well as the grid can tell."""
     h, s = curve.h, curve.s
     left = slice(_rise_start(h, top), top + 1)
     right = slice(bottom, _rise_end(h, bottom) + 1)
@@ -205,7 +210,7 @@ def _equal_areas(curve: _Curve, top: int, bottom: int) -> tuple[float, float] | 
     low, high = max(h[left][0], h[bottom]), min(h[top], h[right][-1])
     if not low < high:
         return None
-    for _ in range(60):
+    for _ in range(BISECTIONS):
         level = 0.5 * (low + high)
         a2_left = np.interp(level, h[left], curve.ln_a[left, 1])
         a2_right = np.interp(level, h[right], curve.ln_a[right, 1])

@@ -23,7 +23,7 @@ FIT = np.linalg.inv(np.vander(NODES, increasing=True))
 WIDEST_K = 150.0
 #: How far beyond the places the polynomial is still believed as a start.
 REACH = 1.3
-NEWTON_STEPS = 4
+NEWTON_STEPS = 3
 
 
 @dataclass(frozen=True, slots=True)

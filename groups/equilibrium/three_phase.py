@@ -9,24 +9,25 @@ from dataclasses import dataclass, replace
 import numpy as np
 from scipy.optimize import brentq
 
-from groups.arrays import FloatArray
+from groups.arrays import FloatArray, IntArray
 from groups.equilibrium.binary_split import (
+    ActivityCurve,
     BinarySplit,
     binary_splits,
+    equal_areas,
     fractions,
     may_split,
-    polish_tangent,
 )
 from groups.equilibrium.bubble import MAX_VAPOUR_PASSES, VAPOUR_TOLERANCE
 from groups.equilibrium.saturation import rough_boiling_temperatures
 from groups.equilibrium.states import RESIDUAL_TOLERANCE, log_sum_exp, safe_log
 from groups.equilibrium.system import System
+from groups.equilibrium.three_phase_newton import three_phase_line
 
 #: Temperatures at which a miscibility gap is looked for, between the bounds of the boiling range.
 NODES = 6
-FOLLOWING_STEPS = 12
-#: |ln p3 - ln P| at which the search for the temperature ends.
-FOLLOWED = 1e-11
+#: How far the lowest temperature may be off: it is read from a short table.
+ROUGHNESS_K = 3.0
 
 
 @dataclass(frozen=True, slots=True)
@@ -106,15 +107,13 @@ def three_phase_at_pressure(
     As `three_phase_at_temperature`.
     """
     _, immiscible = rough_boiling_temperatures(system, np.array([pressure_kPa]))
+    followed = _only_line(system, pressure_kPa, float(immiscible[0]))
+    if followed is not None:
+        return (followed,)
     nodes = np.linspace(float(immiscible[0]) - 2.0, highest_K, NODES)
     if not may_split(system.activity, nodes):
         return ()
-    lowest = three_phase_at_temperature(system, float(nodes[0]))
-    if len(lowest) == 1 and lowest[0].pressure_kPa < pressure_kPa:
-        followed = _followed(system, pressure_kPa, lowest[0])
-        if followed is not None:
-            return (followed,)
-    traces = [lowest, *(three_phase_at_temperature(system, float(T)) for T in nodes[1:])]
+    traces = [three_phase_at_temperature(system, float(T)) for T in nodes]
     states: list[ThreePhase] = []
     for k in range(NODES - 1):
         for state in _between(system, pressure_kPa, (nodes[k], nodes[k + 1]), traces[k : k + 2]):
@@ -123,39 +122,31 @@ def three_phase_at_pressure(
     return tuple(states)
 
 
-def _followed(system: System, pressure_kPa: float, state: ThreePhase) -> ThreePhase | None:
-    """The common case: one gap, followed from below to the pressure by Newton and secant steps."""
-    ln_pressure, slope = np.log(pressure_kPa), 0.0
-    previous: ThreePhase | None = None
-    for _ in range(FOLLOWING_STEPS):
-        value = float(np.log(state.pressure_kPa) - ln_pressure)
-        T = state.temperature_K
-        if abs(value) <= FOLLOWED:
-            return _final(system, pressure_kPa, T)
-        if previous is None:
-            lines = system.ln_saturation_slope(np.array([T]))[0]
-            slope = float(state.vapour @ lines)
-        else:
-            rise = float(np.log(state.pressure_kPa / previous.pressure_kPa))
-            slope = rise / (T - previous.temperature_K)
-        if not slope > 0.0:
-            return None
-        next_T = T / max(1.0 + value / (T * slope), 0.5)
-        s = [float(np.log(x[0] / x[1])) for x in (state.first, state.second)]
-        pair = polish_tangent(system.activity, next_T, s[0], s[1])
-        if pair is None or next_T == T:
-            return None
-        split = BinarySplit(next_T, fractions(pair[0]), fractions(pair[1]))
-        previous, state = state, _under_vapour(system, split)
-    return None
-
-
-def _final(system: System, pressure_kPa: float, T: float) -> ThreePhase | None:
-    """The only three-phase state at this temperature, found again from nothing, at the pressure."""
-    states = three_phase_at_temperature(system, T)
-    if len(states) != 1 or abs(np.log(states[0].pressure_kPa / pressure_kPa)) > RESIDUAL_TOLERANCE:
+def _only_line(system: System, pressure_kPa: float, lowest_K: float) -> ThreePhase | None:
+    """The common case: one gap at the lowest temperature, and the same one where it boils."""
+    curve, tops, bottoms = _gaps(system, lowest_K)
+    ends = equal_areas(curve, int(tops[0]), int(bottoms[0])) if len(tops) == 1 else None
+    if ends is None:
         return None
-    return replace(states[0], pressure_kPa=pressure_kPa)
+    line = three_phase_line(system, pressure_kPa, np.array(ends), lowest_K)
+    if line is None or line.temperature_K < lowest_K - ROUGHNESS_K:
+        return None
+    curve, tops, _ = _gaps(system, line.temperature_K)
+    if len(tops) != 1 or not curve.above_tangent(system.activity, float(line.s[0])):
+        return None
+    x = fractions(line.s)
+    state = _under_vapour(system, BinarySplit(line.temperature_K, x[0], x[1]))
+    if abs(np.log(state.pressure_kPa / pressure_kPa)) > RESIDUAL_TOLERANCE:
+        return None
+    state = replace(state, pressure_kPa=pressure_kPa)
+    return state if _verified(system, state) else None
+
+
+def _gaps(system: System, T: float) -> tuple[ActivityCurve, IntArray, IntArray]:
+    """The curve of activities with its tops and bottoms, one pair for each gap."""
+    curve = ActivityCurve.trace(system.activity, T)
+    tops, bottoms = curve.spinodals()
+    return curve, tops, bottoms
 
 
 def _between(
