@@ -123,6 +123,27 @@ def test_bubble_points_dew_points_and_flashes_hold_or_say_why_not(seed):
 
 
 @pytest.mark.parametrize("seed", range(MIXTURES))
+def test_a_flash_between_dew_and_bubble_pressure_has_two_phases_that_balance(seed):
+    draw = Draw(seed)
+    low, high = (
+        answered(lambda s=solve: s(draw.components, draw.x, temperature_K=draw.T, **draw.how))
+        for solve in (dew_point, bubble_point)
+    )
+    if low is None or high is None or low.failure or high.failure or not high.liquid_stable:
+        return
+    assert low.pressure_kPa <= high.pressure_kPa * (1.0 + 1e-9)
+    P = float(np.sqrt(low.pressure_kPa * high.pressure_kPa))
+    if not 1e-3 < P < 1e5 or low.pressure_kPa > 0.999 * high.pressure_kPa:
+        return
+    middle = flash(draw.components, draw.x, temperature_K=draw.T, pressure_kPa=P, **draw.how)
+    assert_holds(draw, middle)
+    if middle.failure is None:
+        assert 0.0 < middle.vapour_fraction < 1.0
+        mixed = (1.0 - middle.vapour_fraction) * middle.x + middle.vapour_fraction * middle.y
+        np.testing.assert_allclose(mixed, draw.x, atol=1e-8)
+
+
+@pytest.mark.parametrize("seed", range(MIXTURES))
 def test_activity_coefficients_are_finite_and_told(seed):
     draw = Draw(seed)
     answer = answered(lambda: activity_coefficients(draw.components, draw.T, draw.x, **draw.how))
