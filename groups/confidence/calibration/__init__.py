@@ -1,0 +1,29 @@
+"""How far off a number may be: weights of `auto`, intervals, grades and evidence from open data."""
+
+from groups.confidence.calibration.dilute import TABLES, DiluteTables, dilute_tables
+from groups.confidence.calibration.evidence import evidence
+from groups.confidence.calibration.grades import THRESHOLDS, grade_of_half_width
+from groups.confidence.calibration.intervals import (
+    DiluteAnswers,
+    dilute_answers,
+    ln_gamma_interval,
+)
+from groups.confidence.calibration.mixture import TableWeight, mixture_weights
+from groups.confidence.calibration.samples import PerturbedModel, SampledModels, sample_models
+
+__all__ = [
+    "TABLES",
+    "THRESHOLDS",
+    "DiluteAnswers",
+    "DiluteTables",
+    "PerturbedModel",
+    "SampledModels",
+    "TableWeight",
+    "dilute_answers",
+    "dilute_tables",
+    "evidence",
+    "grade_of_half_width",
+    "ln_gamma_interval",
+    "mixture_weights",
+    "sample_models",
+]
