@@ -3,6 +3,8 @@
     sqrt(alpha) = 1 + c1 t + c2 t^2 + c3 t^3,    t = 1 - sqrt(T / Tc)         below Tc
     sqrt(alpha) = 1 + c1 t                                                    above Tc
 
+Below the temperatures of the fit sqrt(alpha) goes on straight in t, because a cubic would not.
+
 The coefficients are this project's own: alpha of every temperature is the one that reproduces the
 vapour-pressure curve of `groups.pure` exactly, and the c are the least-squares fit to ln P.
 Where there is no curve, c1 is Soave's function of the acentric factor.
@@ -12,6 +14,7 @@ Gmehling, Fluid Phase Equilib. 70 (1991) 251, eqs. 4 and 5 (use in PSRK); G. Soa
 27 (1972) 1197 (c1 = 0.480 + 1.574 omega - 0.176 omega^2).
 """
 
+from collections.abc import Sequence
 from dataclasses import dataclass
 
 import numpy as np
@@ -52,6 +55,13 @@ class Attraction:
     source: str
     range_K: tuple[float, float] | None
     deviation_ln: float
+
+    @property
+    def coldest(self) -> float:
+        """The t of the lowest temperature fitted; infinite where nothing was fitted."""
+        if self.range_K is None:
+            return np.inf
+        return float(1.0 - np.sqrt(self.range_K[0] / self.critical_temperature_K))
 
 
 def attraction(
@@ -115,23 +125,25 @@ def _fitted(Tc: float, Pc: float, line: VapourPressure) -> Attraction | None:
 
 
 def root_alpha(
-    coefficients: FloatArray, critical_temperature_K: FloatArray, temperature_K: FloatArray
+    attractions: Sequence[Attraction], temperature_K: FloatArray
 ) -> tuple[FloatArray, FloatArray]:
     """sqrt(alpha) and its temperature derivative in 1/K, each of shape (n, n_components).
 
     Parameters
     ----------
-    coefficients : array of shape (n_components, 3)
-    critical_temperature_K : array of shape (n_components,)
+    attractions : sequence of Attraction
     temperature_K : array of shape (n,)
     """
-    reduced = np.sqrt(temperature_K[:, None] / critical_temperature_K)
+    Tc = np.array([a.critical_temperature_K for a in attractions])
+    c1, c2, c3 = np.array([a.coefficients for a in attractions]).T
+    reduced = np.sqrt(temperature_K[:, None] / Tc)
     t = 1.0 - reduced
-    c1, c2, c3 = coefficients.T
+    inside = np.minimum(t, np.array([a.coldest for a in attractions]))
     cold = t > 0.0
     c2, c3 = np.where(cold, c2, 0.0), np.where(cold, c3, 0.0)
-    value = 1.0 + t * (c1 + t * (c2 + t * c3))
-    slope = (c1 + t * (2.0 * c2 + 3.0 * t * c3)) * (-0.5 * reduced / temperature_K[:, None])
+    by_t = c1 + inside * (2.0 * c2 + 3.0 * inside * c3)
+    value = 1.0 + inside * (c1 + inside * (c2 + inside * c3)) + by_t * (t - inside)
+    slope = by_t * (-0.5 * reduced / temperature_K[:, None])
     # Far above Tc the line would cross zero and alpha rise again; it stays at zero instead.
     positive = value > 0.0
     return np.where(positive, value, 0.0), np.where(positive, slope, 0.0)

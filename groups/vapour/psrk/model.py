@@ -67,8 +67,7 @@ class PsrkModel:
 
     def pure_attraction(self, temperature_K: FloatArray) -> tuple[FloatArray, FloatArray]:
         """q_i = a_i/(b_i R T) and d q_i / dT in 1/K, each of shape (n, n_components)."""
-        c = np.array([a.coefficients for a in self.attractions])
-        root, slope = root_alpha(c, self.critical_temperature_K, temperature_K)
+        root, slope = root_alpha(self.attractions, temperature_K)
         scale = CRITICAL_Q * self.critical_temperature_K / temperature_K[:, None]
         q = scale * root**2
         return q, scale * 2.0 * root * slope - q / temperature_K[:, None]

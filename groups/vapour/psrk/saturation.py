@@ -23,6 +23,7 @@ from groups.equilibrium.conditions import (
     checked_temperature,
     paired,
 )
+from groups.vapour.psrk.dew_by_stability import scanned_by_stability
 from groups.vapour.psrk.model import PsrkModel
 from groups.vapour.psrk.saturation_search import (
     SaturationProblem,
@@ -160,7 +161,8 @@ def _points(problem: SaturationProblem) -> EosStates:
     n = len(problem.z)
     s, u, found = np.zeros(n), np.zeros_like(problem.z), np.zeros(n, dtype=bool)
     if n:
-        s, u, found = scanned(problem)
+        by_plane = problem.patient and problem.kind == "dew"
+        s, u, found = scanned_by_stability(problem) if by_plane else scanned(problem)
         newton(problem, np.flatnonzero(found), s, u)
     T, P = problem.conditions(np.arange(n, dtype=np.int64), s)
     w = np.where(problem.z > 0.0, trial_fractions(u), 0.0) if n else problem.z
@@ -170,8 +172,9 @@ def _points(problem: SaturationProblem) -> EosStates:
     failure = tuple(None if ok else text for ok in found.tolist())
     states = verified_points(problem.model, T, P, liquid, vapour, failure)
     again = np.flatnonzero(~states.converged)
-    if problem.kind == "dew" or not problem.vapour_only or not len(again):
+    if problem.patient or not len(again):
         return states
-    # Close to a critical point the vapour itself is as dense as a liquid.
-    part = replace(problem, fixed=problem.fixed[again], z=problem.z[again], vapour_only=False)
-    return with_rows(states, again, _points(part))
+    # Close to a critical point the vapour itself is as dense as a liquid; a liquid far from ideal
+    # needs more substitutions, or the tangent plane.
+    part = replace(problem, fixed=problem.fixed[again], z=problem.z[again], patient=True)
+    return with_rows(states, again, _points(part), text)

@@ -17,9 +17,9 @@ Kind = Literal["bubble", "dew"]
 Sought = Literal["pressure", "temperature"]
 
 #: Grid of the scan.
-PRESSURES_KPA = np.exp(np.linspace(np.log(1e-6), np.log(2e5), 42))
+PRESSURES_KPA = np.exp(np.linspace(np.log(1e-9), np.log(2e5), 52))
 N_TEMPERATURES = 42
-SCAN_PASSES, REFINEMENTS = 8, 14
+SCAN_PASSES, PATIENT_PASSES, REFINEMENTS = 8, 40, 14
 #: |ln sum W| from which Newton's method takes over, and the value that marks a side only.
 CLOSE, SIDE = 1e-3, 0.05
 MAX_ITERATIONS = 40
@@ -41,8 +41,9 @@ class SaturationProblem:
         The temperature in K or the pressure in kPa, whichever is given.
     z : array of shape (n, n_components)
         Feeds.
-    vapour_only : bool
-        Whether a second phase that is as dense as a liquid is passed over at a bubble point.
+    patient : bool
+        A second attempt: more substitutions, and at a bubble point a second phase as dense as a
+        liquid is no longer passed over.
     """
 
     model: PsrkModel
@@ -50,7 +51,7 @@ class SaturationProblem:
     sought: Sought
     fixed: FloatArray
     z: FloatArray
-    vapour_only: bool = True
+    patient: bool = False
 
     @property
     def roots(self) -> tuple[Root, Root]:
@@ -124,7 +125,7 @@ def _sums(
         u = ln_z - np.clip(wilson_ln_k(model, T, P), -60.0, 60.0)
     if start is not None:
         u = np.where(np.isfinite(start), start, u)
-    for _ in range(SCAN_PASSES):
+    for _ in range(PATIENT_PASSES if problem.patient else SCAN_PASSES):
         w = trial_fractions(u)
         trial = phase(model, T, P, w, trial_root)
         u = d - trial.ln_phi
@@ -133,7 +134,7 @@ def _sums(
     alike = np.abs(w - z).max(axis=1) < SAME
     alike &= np.abs(np.log(trial.volume_ratio / feed.volume_ratio)) < 30.0 * SAME
     dense = feed.liquid_like if problem.kind == "dew" else ~feed.liquid_like
-    if problem.kind == "bubble" and problem.vapour_only:
+    if problem.kind == "bubble" and not problem.patient:
         # A liquid that splits meets its second liquid first; the vapour is what is sought.
         value = np.where(trial.liquid_like & ~alike, -SIDE, value)
         alike |= trial.liquid_like

@@ -16,8 +16,9 @@ TRIVIAL = 1e-4
 #: ln of volume ratio and of distribution coefficients below which a state is called near-critical;
 #: common practice, no source.
 NEAR_CRITICAL = 0.7
+#: A residual above this is no attempt that nearly succeeded.
+FAR = 1e-4
 TRIVIAL_SOLUTION = "both phases became one: the point lies beyond the critical point, or close by"
-UNSTABLE = "another phase would form first at these conditions"
 
 
 @dataclass(frozen=True, slots=True)
@@ -136,8 +137,11 @@ def verified_points(
     )
 
 
-def with_rows(states: EosStates, rows: IntArray, better: EosStates) -> EosStates:
-    """The states with some rows replaced, where the replacement converged."""
+def with_rows(states: EosStates, rows: IntArray, better: EosStates, lost: str) -> EosStates:
+    """The states with some rows replaced where the replacement converged; `lost` says why not.
+
+    A point that both attempts left far from equilibrium was none: it gets the text `lost`.
+    """
     kept = np.flatnonzero(better.converged)
     columns = {}
     for name in ARRAYS:
@@ -147,6 +151,8 @@ def with_rows(states: EosStates, rows: IntArray, better: EosStates) -> EosStates
     failure = list(states.failure)
     for k in kept.tolist():
         failure[int(rows[k])] = None
+    for k in np.flatnonzero(~better.converged & ~(better.residual < FAR)).tolist():
+        failure[int(rows[k])] = lost
     return EosStates(**columns, failure=tuple(failure))
 
 
