@@ -19,6 +19,7 @@ from groups.equilibrium.azeotrope_newton import (
 )
 from groups.equilibrium.binary_split import fractions
 from groups.equilibrium.boiling_curve import BoilingCurve, Condition
+from groups.equilibrium.conditions import HIGHEST_K, LOWEST_K
 from groups.equilibrium.stability import stability
 from groups.equilibrium.states import safe_log
 from groups.equilibrium.system import System
@@ -123,7 +124,7 @@ def _polished(system: System, start: Brackets, *, fixed: bool) -> AzeotropeRoots
             slope = np.where(better, change / np.where(better, moved, 1.0), slope)
         old_s, old_value = s, value
         if fixed:
-            T = T - excess / np.maximum(rise, LEAST_RISE)
+            T = np.clip(T - excess / np.maximum(rise, LEAST_RISE), LOWEST_K, HIGHEST_K)
         else:
             ln_P = ln_P + excess
         s = np.clip(s - value / np.where(slope == 0.0, np.inf, slope), start.low, start.high)
