@@ -1,8 +1,9 @@
 """Reasons that come from the vapour side: vapour pressures, ideal-gas limits, association."""
 
 from collections.abc import Sequence
+from math import exp
 
-from groups.confidence.confidence import Reason
+from groups.confidence.confidence import Grade, Reason
 from groups.confidence.labels import label
 from groups.pure import VapourPressure
 from groups.structure.facts import molecule_facts
@@ -13,6 +14,10 @@ from groups.structure.molecule import Molecule
 MODERATE_PRESSURE_KPA = 300.0
 HIGH_PRESSURE_KPA = 1000.0
 NEAR_CRITICAL_REDUCED_TEMPERATURE = 0.9
+# One standard deviation of ln P; common practice, no source: 15 % of a K-value changes a design,
+# 5 % is below the error of the activity coefficient beside it.
+LOW_ERROR_LN = 0.15
+MODERATE_ERROR_LN = 0.05
 
 
 def pressure_reasons(highest_kPa: float) -> list[Reason]:
@@ -82,7 +87,7 @@ def saturation_reasons(
     """Reasons for vapour pressures that are estimated or used outside their range."""
     reasons = []
     for molecule, line in zip(molecules, lines, strict=True):
-        name, error = label(molecule), 100.0 * line.uncertainty_ln
+        name, error = label(molecule), line.uncertainty_ln
         if line.source in ("estimated", "published boiling point"):
             basis = (
                 "from structure alone" if line.source == "estimated" else "from its boiling point"
@@ -91,21 +96,42 @@ def saturation_reasons(
                 Reason(
                     "vapour_pressure_estimated",
                     f"The vapour pressure of {name} is estimated {basis} ({line.equation}), about "
-                    f"{error:.0f} % uncertain; every K-value of it carries that error.",
+                    f"{_percent(error)} uncertain; every K-value of it carries that error.",
                     name,
-                    "low" if error > 15.0 else "moderate",
+                    "low" if error > LOW_ERROR_LN else "moderate",
                 )
             )
-        lower, upper = line.range_K
-        if lowest_K < lower - 0.5 or highest_K > upper + 0.5:
-            outside = max(lower - lowest_K, highest_K - upper)
-            reasons.append(
-                Reason(
-                    "vapour_pressure_extrapolated",
-                    f"The vapour pressure of {name} holds from {lower:.0f} to {upper:.0f} K and "
-                    f"is continued by {outside:.0f} K.",
-                    name,
-                    "low" if outside > 50.0 else "moderate",
-                )
-            )
+        reasons += _extrapolated(name, line, lowest_K, highest_K)
     return reasons
+
+
+def _extrapolated(
+    name: str, line: VapourPressure, lowest_K: float, highest_K: float
+) -> list[Reason]:
+    """A reason if the equation is continued, graded by the error that costs."""
+    lower, upper = line.range_K
+    if lowest_K >= lower - 0.5 and highest_K <= upper + 0.5:
+        return []
+    outside = max(lower - lowest_K, highest_K - upper)
+    error = float(line.uncertainty([lowest_K, highest_K]).max())
+    return [
+        Reason(
+            "vapour_pressure_extrapolated",
+            f"The vapour pressure of {name} holds from {lower:.0f} to {upper:.0f} K and is "
+            f"continued by {outside:.0f} K; there it is about {_percent(error)} uncertain.",
+            name,
+            _saturation_cap(error),
+        )
+    ]
+
+
+def _percent(error_ln: float) -> str:
+    """An error of ln P as percent of P; beyond a factor of two, as that."""
+    return f"{100.0 * error_ln:.0f} %" if error_ln < 0.7 else f"a factor {exp(error_ln):.0f}"
+
+
+def _saturation_cap(error_ln: float) -> Grade:
+    """The best grade that a vapour pressure so uncertain leaves."""
+    if error_ln > LOW_ERROR_LN:
+        return "low"
+    return "moderate" if error_ln > MODERATE_ERROR_LN else "high"

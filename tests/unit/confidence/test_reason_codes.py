@@ -284,6 +284,20 @@ def test_the_pressure_caps_the_grade_in_two_steps(pressure_kPa, cap):
     assert found == ([] if cap is None else [cap])
 
 
+def test_a_vapour_pressure_is_believed_less_the_farther_it_is_continued():
+    order, caps = ("high", "moderate", "low"), []
+    for temperature_K in (328.0, 300.0, 230.0):  # the range given begins at 330 K
+        reasons = given_line(temperature_K).reasons
+        (reason,) = [
+            r for r in reasons if (r.code, r.subject) == ("vapour_pressure_extrapolated", "toluene")
+        ]
+        assert f"by {330.0 - temperature_K:.0f} K" in reason.message
+        assert "330 to 400 K" in reason.message
+        caps.append(order.index(reason.cap))
+    assert caps == sorted(caps)
+    assert caps[0] == 0 and caps[-1] > 0
+
+
 def test_isomers_beside_a_third_component_are_named():
     components = mixture("Cc1ccccc1C", "CO", "Cc1cccc(C)c1")
     answer = bubble_point(components, [0.3, 0.3, 0.4], pressure_kPa=ONE_ATM)
