@@ -152,7 +152,7 @@ def _incomplete(
     index = next(k for k, one in enumerate(assignments) if not one.complete)
     bad = assignments[index]
     error = IncompleteAssignmentError(
-        f"{molecules[index].canonical_smiles} cannot be split into the groups of {named}: "
+        f"{molecules[index].canonical_smiles} cannot be split into the groups of {named}. "
         f"{bad.explanation}",
         smiles=molecules[index].canonical_smiles,
         method=bad.method,
