@@ -9,7 +9,7 @@ import numpy as np
 
 from groups.activity.choice import OnMissing, candidate
 from groups.confidence.calibration.dilute import REFERENCE_TEMPERATURE_K, TABLES, dilute_tables
-from groups.confidence.calibration.weights import distances, weights_from_distance
+from groups.confidence.calibration.weights import dispute, distances, weights_from
 from groups.structure.assignment import assign
 from groups.structure.molecule import Molecule
 
@@ -56,7 +56,8 @@ def _mixture_weights(
     apart = np.where(usable, np.mean(distances(tables), axis=0), np.nan)
     completed = np.asarray(tables.completed.any(axis=0))
     suspect = np.asarray(tables.suspect.any(axis=0))
-    weights = weights_from_distance(apart[None], usable[None], completed[None], suspect[None])[0]
+    disputed = np.mean(dispute(tables), keepdims=True)
+    weights = weights_from(apart[None], disputed, usable[None], completed[None], suspect[None])[0]
     return tuple(
         TableWeight(
             TABLES[k],
