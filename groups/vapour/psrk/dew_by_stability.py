@@ -33,9 +33,10 @@ def scanned_by_stability(problem: SaturationProblem) -> tuple[FloatArray, FloatA
     grid, n = problem.grid(), len(problem.z)
     rows = np.repeat(np.arange(n, dtype=np.int64), len(grid))
     stable, trial = _judged(problem, rows, np.tile(grid, n))
-    stable, trial = stable.reshape(n, -1), trial.reshape(n, len(grid), -1)
-    turn = stable[:, :-1] & ~stable[:, 1:]
-    found, first, here = turn.any(axis=1), turn.argmax(axis=1), np.arange(n)
+    ok_at, trial = stable.reshape(n, len(grid)), trial.reshape(n, len(grid), -1)
+    turn: BoolArray = ok_at[:, :-1] & ~ok_at[:, 1:]
+    found: BoolArray = np.asarray(turn.any(axis=1), dtype=bool)
+    first, here = turn.argmax(axis=1), np.arange(n)
     low, high, liquid = grid[first], grid[first + 1], trial[here, first + 1]
     active: IntArray = np.flatnonzero(found)
     for _ in range(HALVINGS):
