@@ -46,18 +46,20 @@ class Uniquac:
     def ln_gamma(self, u: FloatArray, x: FloatArray) -> FloatArray:
         """ln gamma (t, m, n) for ln tau (t, n, n) and x (t or 1, m, n)."""
         residual = _WILSON.ln_gamma(u.swapaxes(1, 2), self._theta(x))
-        return self.combinatorial(x) + self.q * residual
+        return np.asarray(self.combinatorial(x) + self.q * residual)
 
     def combinatorial(self, x: FloatArray) -> FloatArray:
         """The part for size and shape, of the shape of x."""
         V, F = self._ratios(x)
         ratio = V / F
-        return np.log(V) + 1.0 - V - _HALF_Z * self.q * (np.log(ratio) + 1.0 - ratio)
+        surface = self.q * (np.log(ratio) + 1.0 - ratio)
+        return np.asarray(np.log(V) + 1.0 - V - _HALF_Z * surface)
 
     def interaction_jacobian(self, u: FloatArray, x: FloatArray) -> FloatArray:
         """d ln gamma_i / d ln tau_jk of shape (t, m, n, n, n)."""
         J = _WILSON.interaction_jacobian(u.swapaxes(1, 2), self._theta(x))
-        return self.q[:, None, None] * J.swapaxes(-1, -2)
+        jacobian: FloatArray = self.q[:, None, None] * J.swapaxes(-1, -2)
+        return jacobian
 
     def mole_derivatives(self, u: FloatArray, x: FloatArray) -> FloatArray:
         """n d ln gamma_i / dn_j of shape (t, m, n, n)."""
@@ -67,7 +69,7 @@ class Uniquac:
         combinatorial = short[..., :, None] * short[..., None, :]
         combinatorial = combinatorial - _HALF_Z * surface * long[..., :, None] * long[..., None, :]
         residual = _WILSON.mole_derivatives(u.swapaxes(1, 2), self._theta(x))
-        return combinatorial + (self.q[:, None] * self.q) * residual / surface
+        return np.asarray(combinatorial + (self.q[:, None] * self.q) * residual / surface)
 
     def _ratios(self, x: FloatArray) -> tuple[FloatArray, FloatArray]:
         return self.r / (x @ self.r)[..., None], self.q / (x @ self.q)[..., None]

@@ -29,8 +29,7 @@ class Solution:
     cost : float
         Half the sum of squares.
     residuals : FloatArray of shape (N,)
-    normal_matrix : FloatArray of shape (P, P)
-        J^T J at the solution.
+    jacobian : FloatArray of shape (N, P)
     starts : int
         How many starts were tried.
     agreeing : int
@@ -44,19 +43,24 @@ class Solution:
     starts: int
     agreeing: int
 
-    @property
-    def normal_matrix(self) -> FloatArray:
-        """J^T J of shape (P, P)."""
-        return self.jacobian.T @ self.jacobian
-
     def inverse_normal(self) -> FloatArray:
-        """(J^T J)^-1, through the singular values; infinite where a direction is not determined."""
-        _, size, V = np.linalg.svd(self.jacobian, full_matrices=False)
-        # Directions a billion times weaker than the strongest are rounding.
-        weak = size <= 1e-9 * size.max(initial=0.0)
-        if weak.any() or not len(size):
-            return np.full((len(self.parameters),) * 2, np.inf)
-        return np.asarray((V.T / size**2) @ V)
+        """(J^T J)^-1; infinite for parameters that the data do not determine.
+
+        A parameter without any influence (one that sits at its bound) is left out, and the others
+        are given as if it were known.
+        """
+        size = np.sqrt((self.jacobian**2).sum(axis=0))
+        P = len(size)
+        inverse = np.diag(np.full(P, np.inf))
+        # A billion times weaker than the strongest is rounding.
+        alive = np.flatnonzero(size > 1e-9 * size.max(initial=0.0))
+        if not len(alive):
+            return inverse
+        _, values, V = np.linalg.svd(self.jacobian[:, alive], full_matrices=False)
+        if (values <= 1e-9 * values[0]).any() or len(values) < len(alive):
+            return np.full((P, P), np.inf)
+        inverse[np.ix_(alive, alive)] = (V.T / values**2) @ V
+        return inverse
 
 
 def solve(residuals: Residuals, starts: Sequence[FloatArray]) -> Solution:

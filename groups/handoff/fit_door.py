@@ -1,0 +1,276 @@
+"""The door of fits: molecules and a range in, parameters of a flowsheet model out."""
+
+from collections.abc import Sequence
+from dataclasses import dataclass
+from itertools import combinations
+
+import numpy as np
+
+from groups.activity import ActivityModel, IdealModel, activity_model
+from groups.activity.choice import OnMissing
+from groups.arrays import FloatArray
+from groups.confidence import Confidence, graded
+from groups.errors import InvalidInputError, OutOfRangeError
+from groups.handoff.correlations import FORMS
+from groups.handoff.correlations.build import equation_of
+from groups.handoff.correlations.temperature_forms import form_terms
+from groups.handoff.fits import (
+    Boiling,
+    MixtureFit,
+    PairConstants,
+    fit_grid,
+    fit_mixture,
+)
+from groups.handoff.fits.component_constants import (
+    MolarVolumes,
+    SizeParameters,
+    molar_volumes,
+    size_parameters,
+)
+from groups.handoff.fits.formulation import ALPHA_BOUNDS
+from groups.handoff.fits.mixture import PairSigma
+from groups.handoff.fits.target import COMPOSITIONS, SIGMA_LN_GAMMA, TEMPERATURES
+from groups.handoff.sheets import ParameterSet, parameter_set
+from groups.prediction.answers import MethodUse
+from groups.prediction.boiling_mixture import BoilingMixture, boiling_mixture
+from groups.prediction.checks import check_components, check_pressures
+from groups.prediction.component import Component
+from groups.prediction.liquid import Liquid, liquid
+from groups.pure import VapourPressure
+from groups.structure.assignment import assign
+from groups.structure.identify import identified
+from groups.structure.molecule import Molecule
+
+MOST_COMPONENTS = 12
+#: A minimum-boiling azeotrope lies below the pure components; common practice, no source.
+BELOW_K = 10.0
+
+
+@dataclass(frozen=True, slots=True)
+class FitAnswer:
+    """A fit of one mixture.
+
+    Attributes
+    ----------
+    components : tuple of Molecule
+    method : str
+        The table whose prediction was fitted.
+    methods_used : tuple of MethodUse
+    temperature_range_K : tuple of float
+    pressure_kPa : float or None
+        At which azeotropes were compared.
+    fit : MixtureFit
+    parameters : ParameterSet or None
+        The sheet; None where every pair was refused.
+    vapour_pressures : tuple of VapourPressure or None
+    confidence : Confidence
+        Of the prediction that was fitted, over the grid.
+    """
+
+    components: tuple[Molecule, ...]
+    method: str
+    methods_used: tuple[MethodUse, ...]
+    temperature_range_K: tuple[float, float]
+    pressure_kPa: float | None
+    fit: MixtureFit
+    parameters: ParameterSet | None
+    vapour_pressures: tuple[VapourPressure, ...] | None
+    confidence: Confidence
+
+
+@dataclass(frozen=True, slots=True)
+class _Sizes:
+    """What the equation needs of the components, with its sources."""
+
+    constants: PairConstants
+    sizes: SizeParameters | None
+    volumes: MolarVolumes | None
+
+
+def fit(
+    components: Sequence[Component],
+    *,
+    model: str = "nrtl",
+    form: str = "a+b/T",
+    alpha: float | None = 0.3,
+    wilson_volumes: bool = False,
+    temperature_range_K: tuple[float, float] | None = None,
+    pressure_kPa: float | None = None,
+    temperatures: int = TEMPERATURES,
+    compositions: int = COMPOSITIONS,
+    sigma: float | PairSigma = SIGMA_LN_GAMMA,
+    method: str = "auto",
+    on_missing: OnMissing = "estimate",
+) -> FitAnswer:
+    """Fit a correlative equation to the prediction, for a pair or for all pairs of a mixture.
+
+    Parameters
+    ----------
+    components : sequence of Component
+        2 to 12; two for "van-laar", "margules-2" and "margules-3".
+    model : str
+        One of `groups.handoff.correlations.CORRELATIONS`.
+    form : str
+        Temperature form, a key of `groups.handoff.correlations.FORMS`.
+    alpha : float or None
+        Non-randomness of NRTL, held fixed, 0.05 to 0.9; None to fit it.
+    wilson_volumes : bool
+        True: Wilson's equation with liquid molar volumes.
+    temperature_range_K : tuple of float, optional
+        Range of the fit, K. Where not given, from the boiling points at `pressure_kPa`.
+    pressure_kPa : float, optional
+        Where azeotropes of prediction and fit are compared, kPa.
+    temperatures, compositions : int
+        Points of the grid: 1 to 51 and 5 to 401.
+    sigma : float or callable
+        Standard deviation of the predicted ln gamma: one number, or a function of the pair (i, j),
+        temperatures (t,) and x1 (m,) that answers what broadcasts to (t, m, 2).
+    method : str
+        An identifier of `groups.prediction.ALL_METHODS`.
+    on_missing : {"refuse", "estimate"}
+
+    Returns
+    -------
+    FitAnswer
+
+    Raises
+    ------
+    InvalidInputError
+        If neither range nor pressure is given, or something lies outside its range.
+    FitRefusedError
+        If the equation cannot describe the pair, or the form not the range.
+    PredictionError
+        If no table gives the numbers, or no vapour pressure where a pressure is given.
+
+    Source
+    ------
+    See `groups.handoff.correlations` for the equations.
+    """
+    check_components([c.molecule for c in components], least=2, most=MOST_COMPONENTS)
+    _check(model, form, alpha, len(components), temperature_range_K, pressure_kPa)
+    mixture, boiling = _mixture(components, method, on_missing, pressure_kPa)
+    span = temperature_range_K or _boiling_range(boiling, pressure_kPa)
+    T, x1 = fit_grid(span, temperatures, compositions)
+    own = _sizes(model, mixture.molecules, wilson_volumes=wilson_volumes)
+    binaries = _binaries(mixture)
+    lines = None if boiling is None else boiling.lines
+    found = fit_mixture(
+        mixture.model,
+        T,
+        x1,
+        sigma if callable(sigma) else lambda _pair, _T, _x1: sigma,
+        model,
+        form,
+        alpha=alpha,
+        constants=own.constants,
+        pair_liquid=lambda i, j: binaries[i, j],
+        boiling=None
+        if lines is None or pressure_kPa is None
+        else lambda i, j: Boiling((lines[i], lines[j]), pressure_kPa),
+    )
+    named = tuple(_named(molecule) for molecule in mixture.molecules)
+    origin = f"ln gamma by {mixture.method}, {len(T)} temperatures x {len(x1)} compositions a pair"
+    sheet = None
+    if found.pairs:
+        sheet = parameter_set(
+            found.pairs,
+            named,
+            lines,
+            (float(T[0]), float(T[-1])),
+            origin,
+            predicted=True,
+            sizes=own.sizes,
+            volumes=own.volumes,
+        )
+    return FitAnswer(
+        named,
+        mixture.method,
+        mixture.methods_used,
+        (float(T[0]), float(T[-1])),
+        pressure_kPa,
+        found,
+        sheet,
+        lines,
+        graded(mixture.reasons(*_corners(T, len(components)))),
+    )
+
+
+def _check(
+    model: str,
+    form: str,
+    alpha: float | None,
+    n: int,
+    span: tuple[float, float] | None,
+    pressure_kPa: float | None,
+) -> None:
+    one = np.ones(n)
+    equation_of(model, n, alpha=0.3, volumes=one, surfaces=one)  # refuses what does not exist
+    form_terms(form)
+    if alpha is not None and not ALPHA_BOUNDS[0] <= alpha <= ALPHA_BOUNDS[1]:
+        raise OutOfRangeError("alpha", alpha, *ALPHA_BOUNDS)
+    if pressure_kPa is not None:
+        check_pressures(pressure_kPa)
+    if span is None and pressure_kPa is None:
+        raise InvalidInputError(
+            "A fit needs a range of temperature, or a pressure whose boiling range is taken.",
+            cure="Give 'temperature_range_K', 'pressure_kPa' or both.",
+            field="temperature_range_K",
+        )
+    if span is not None and span[0] == span[1] and len(FORMS[form]) > 1:
+        raise InvalidInputError(
+            f"One temperature cannot fix the form '{form}'.",
+            cure="Take the form 'a' or 'b/T', or a range of temperature.",
+            field="form",
+        )
+
+
+def _mixture(
+    components: Sequence[Component],
+    method: str,
+    on_missing: OnMissing,
+    pressure_kPa: float | None,
+) -> tuple[Liquid, BoilingMixture | None]:
+    if pressure_kPa is None:
+        return liquid([c.molecule for c in components], method, on_missing), None
+    boiling = boiling_mixture(components, method, on_missing, pressure_kPa=pressure_kPa)
+    return boiling.liquid, boiling
+
+
+def _boiling_range(
+    boiling: BoilingMixture | None, pressure_kPa: float | None
+) -> tuple[float, float]:
+    assert boiling is not None
+    assert pressure_kPa is not None
+    at = [line.boiling_temperature(pressure_kPa) for line in boiling.lines]
+    return min(at) - BELOW_K, max(at)
+
+
+def _sizes(model: str, molecules: Sequence[Molecule], *, wilson_volumes: bool) -> _Sizes:
+    if model == "uniquac":
+        sizes = size_parameters(molecules)
+        return _Sizes(PairConstants(sizes.volumes, sizes.surfaces), sizes, None)
+    if model == "wilson" and wilson_volumes:
+        volumes = molar_volumes(molecules)
+        return _Sizes(PairConstants(None, None, volumes.cm3_mol), None, volumes)
+    return _Sizes(PairConstants(), None, None)
+
+
+def _binaries(mixture: Liquid) -> dict[tuple[int, int], ActivityModel]:
+    """Each pair's own small model by the same table: the same numbers as the mixture's, sooner."""
+    pairs = list(combinations(range(len(mixture.molecules)), 2))
+    if len(pairs) == 1:
+        return {(0, 1): mixture.model}
+    if mixture.method == "ideal":
+        return dict.fromkeys(pairs, IdealModel(2))
+    counts = [assign(molecule, mixture.method).counts for molecule in mixture.molecules]
+    return {(i, j): activity_model([counts[i], counts[j]], mixture.method) for i, j in pairs}
+
+
+def _named(molecule: Molecule) -> Molecule:
+    return molecule if molecule.name is not None else identified(molecule)
+
+
+def _corners(T: FloatArray, n: int) -> tuple[FloatArray, FloatArray]:
+    """The grid's ends in temperature at each pure component and at the equimolar mixture."""
+    x = np.concatenate([np.eye(n), np.full((1, n), 1.0 / n)])
+    return np.repeat(T[[0, -1]], len(x)), np.tile(x, (2, 1))
