@@ -6,7 +6,8 @@ from groups.equilibrium.binary_split import BinarySplit, binary_split, binary_sp
 from groups.equilibrium.bubble import bubble_pressure, bubble_temperature
 from groups.equilibrium.dew import dew_pressure, dew_temperature
 from groups.equilibrium.diagram import Diagram, SplitRange, diagram
-from groups.equilibrium.flash import Flash, flash
+from groups.equilibrium.flash import flash
+from groups.equilibrium.flash_result import Flash
 from groups.equilibrium.stability import Stability, stability
 from groups.equilibrium.states import States
 from groups.equilibrium.system import (

@@ -85,16 +85,21 @@ def tested(
     rows = np.arange(m)
     distance = height[best, rows]
     trial = points.liquid.reshape(s, m, n)[best, rows]
-    stable = (distance >= -ZERO_DISTANCE) & (_lowest_curvature(liquid, T, x) >= -FLAT)
+    stable = (distance >= -ZERO_DISTANCE) & (curvature(liquid, T, x)[0] >= -FLAT)
     return Stability(stable, distance, trial)
 
 
-def _lowest_curvature(liquid: LiquidModel, T: FloatArray, x: FloatArray) -> FloatArray:
-    """Lowest eigenvalue of the scaled second derivative of the Gibbs energy of mixing."""
+def curvature(liquid: LiquidModel, T: FloatArray, x: FloatArray) -> tuple[FloatArray, FloatArray]:
+    """Lowest eigenvalue of the scaled second derivative of the Gibbs energy, (m,), and its step.
+
+    The steps, of shape (m, n_components), are relative changes of the amounts; the largest is one.
+    """
     root = np.sqrt(x)
     slope = liquid.ln_gamma_mole_derivatives(T, x)
     matrix = root[:, :, None] * root[:, None, :] * slope + np.eye(x.shape[1])
-    return np.asarray(np.linalg.eigvalsh(matrix)[:, 0])
+    values, vectors = np.linalg.eigh(matrix)
+    step = vectors[:, :, 0] / np.where(root > 0.0, root, np.inf)
+    return values[:, 0], step / np.maximum(np.abs(step).max(axis=1, keepdims=True), 1e-300)
 
 
 def _beside(x: FloatArray, factor: float) -> FloatArray:

@@ -38,7 +38,11 @@ class Stationary:
 
 
 def stationary_points(
-    liquid: LiquidModel, temperature_K: FloatArray, d: FloatArray, start: FloatArray
+    liquid: LiquidModel,
+    temperature_K: FloatArray,
+    d: FloatArray,
+    start: FloatArray,
+    substitutions: int = SUBSTITUTIONS,
 ) -> Stationary:
     """Local minima of the tangent-plane distance, one search for each row.
 
@@ -50,6 +54,8 @@ def stationary_points(
         Plane; minus infinity where a component is absent.
     start : array of shape (m, n_components)
         First trial liquids; zero where a component is absent.
+    substitutions : int
+        Steps of successive substitution before Newton's method.
     """
     search = _Search(liquid, temperature_K, d, start)
     active = np.arange(len(temperature_K), dtype=np.int64)
@@ -57,7 +63,7 @@ def stationary_points(
         active = search.evaluate(active)
         if not len(active):
             break
-        search.advance(active, newton=iteration >= SUBSTITUTIONS)
+        search.advance(active, newton=iteration >= substitutions)
     return Stationary(search.best_w, search.best_height, search.found)
 
 

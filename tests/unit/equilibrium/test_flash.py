@@ -50,10 +50,10 @@ def test_a_flash_balances_and_is_in_equilibrium():
     np.testing.assert_allclose(back.vapour, result.vapour, atol=1e-9)
 
 
-def test_a_liquid_that_would_split_is_marked():
+def test_a_liquid_that_splits_is_given_as_two():
     system = regular_system(5.0)
     result = flash(system, 300.0, 500.0, [[0.5, 0.5], [1e-4, 0.9999]])
-    assert result.phase == ("liquid", "liquid")
+    assert result.phase == ("two liquids", "liquid")
     assert result.liquid_stable.tolist() == [False, True]
 
 
