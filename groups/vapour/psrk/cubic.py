@@ -18,6 +18,8 @@ from groups.arrays import FloatArray
 
 #: Newton steps after the closed form; each doubles the digits.
 POLISH = 4
+#: B below which the liquid is found at zero pressure first; the error of that is of the order of B.
+TINY = 1e-6
 #: q and B at the critical point, where all three roots coincide in u = CRITICAL_VOLUME.
 CRITICAL_B = 0.08664034996495773
 CRITICAL_Q = 0.42748023354034137 / CRITICAL_B
@@ -43,20 +45,22 @@ def compressibility_roots(q: FloatArray, B: FloatArray) -> tuple[FloatArray, Flo
     c, d = (q - 1.0 - B) * B, q * B**2
     p, r = c - 1.0 / 3.0, c / 3.0 - d - 2.0 / 27.0
     discriminant = 0.25 * r**2 + p**3 / 27.0
-    three = discriminant < 0.0
+    # The two liquid-like roots differ by B; the discriminant sees B^2, which drowns in rounding.
+    tiny = B < TINY
+    three = np.where(tiny, (q > 1.0) & ((q - 1.0) ** 2 > 4.0 * q), discriminant < 0.0)
     radius = 2.0 * np.sqrt(np.where(three, -p / 3.0, 1.0))
     cosine = np.where(three, -4.0 * r / np.where(three, radius**3, 1.0), 0.0)
     angle = np.arccos(np.clip(cosine, -1.0, 1.0)) / 3.0
     largest = radius * np.cos(angle) + 1.0 / 3.0
     smallest = radius * np.cos(angle + 2.0 * np.pi / 3.0) + 1.0 / 3.0
-    root = np.sqrt(np.where(three, 0.0, discriminant))
+    root = np.sqrt(np.where(three, 0.0, np.maximum(discriminant, 0.0)))
     # The larger of the two cubic roots is summed without cancellation; the other follows from p.
     larger = np.cbrt(-0.5 * r - np.where(r > 0.0, root, -root))
     other = np.where(larger == 0.0, 0.0, -p / (3.0 * np.where(larger == 0.0, 1.0, larger)))
     single = larger + other + 1.0 / 3.0
     largest = np.where(three, largest, single)
     u = np.where(three, smallest, single) / B
-    u = np.where(three & (B < 1e-4), _zero_pressure_volume(q), u)
+    u = np.where(three & tiny, _zero_pressure_volume(q), u)
     return _polished_volume(u, q, B) * B, _polished_factor(largest, c, d, B)
 
 
