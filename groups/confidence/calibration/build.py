@@ -20,11 +20,11 @@ from scipy.stats import spearmanr
 
 from groups.arrays import FloatArray
 from groups.confidence.calibration.crossval import fit_calibration, out_of_fold_scale
-from groups.confidence.calibration.dilute import TABLES, DiluteTables, dilute_tables
+from groups.confidence.calibration.dilute import TABLES, DiluteTables
 from groups.confidence.calibration.evidence import cross_pairs
-from groups.confidence.calibration.features import FEATURES, feature_matrix
+from groups.confidence.calibration.features import FEATURES
 from groups.confidence.calibration.open_set import OpenSet, group_folds, read_open_set
-from groups.confidence.calibration.weights import table_weights, weighted_ln_gamma
+from groups.confidence.calibration.training import training
 from groups.structure.assignment import assign
 from groups.structure.molecule import Molecule
 
@@ -43,7 +43,7 @@ def main(arguments: Sequence[str] | None = None) -> None:
     parser.add_argument("data", nargs="?", type=Path, default=DEFAULT_DATA)
     path: Path = parser.parse_args(arguments).data
     data = read_open_set(path)
-    tables = dilute_tables(data.pairs)
+    made = training(data)
     _write(
         "evidence",
         (
@@ -58,14 +58,11 @@ def main(arguments: Sequence[str] | None = None) -> None:
             "spread_ln_gamma",
             "mean_absolute_error_ln_gamma",
         ),
-        evidence_rows(data, tables),
+        evidence_rows(data, made.tables),
         "Open measurements behind each main-group pair between solute and solvent",
         data,
     )
-    weights = table_weights(tables)
-    error = data.ln_gamma - weighted_ln_gamma(tables, weights)
-    features = feature_matrix(tables, weights)
-    known = np.isfinite(error)
+    features, error, known = made.features, made.error, made.known
     folds = group_folds(data.pairs, "solvent or aqueous solute")[known]
     fitted = fit_calibration(features[known], error[known], folds)
     scaled = np.full(len(error), np.nan)

@@ -1,0 +1,167 @@
+"""Measure the weights of `auto` and its intervals by cross-validation on whole groups.
+
+    python -m tests.bench.measure_calibration [--figures FOLDER]
+
+Prints, for folds of whole solvents, whole solutes, and solvents or aqueous solutes: rows answered,
+mean absolute error, coverage in all and by group, interval score and median width against those of
+the constant width, and the error by grade. With --figures, a reliability diagram and a histogram
+of the widths are written as PNG and SVG.
+"""
+
+import argparse
+from dataclasses import dataclass
+from functools import cache
+from pathlib import Path
+
+import numpy as np
+from matplotlib.backends.backend_agg import FigureCanvasAgg
+from matplotlib.figure import Figure
+
+from groups.arrays import BoolArray, FloatArray, IntArray
+from groups.confidence.calibration.crossval import (
+    Held,
+    cross_validate,
+    fit_calibration,
+)
+from groups.confidence.calibration.features import FEATURES
+from groups.confidence.calibration.grades import grade_of_half_width
+from groups.confidence.calibration.open_set import OpenSet, group_folds, read_open_set
+from groups.confidence.calibration.scale import half_width
+from groups.confidence.calibration.training import Training, training
+from groups.confidence.calibration.traits import traits
+from groups.confidence.confidence import GRADES
+from tests.bench.open_data import OPEN_DATA
+
+FOLDS = ("solvent or aqueous solute", "solvent", "solute")
+LEVELS = np.array([0.10, 0.20, 0.30, 0.40, 0.50, 0.60, 0.70, 0.80, 0.90, 0.95])
+
+
+@dataclass(frozen=True, slots=True)
+class Prepared:
+    """The open set with what the tables make of it; arrays hold the answered rows alone."""
+
+    data: OpenSet
+    known: BoolArray  # (rows in data,)
+    features: FloatArray
+    error: FloatArray
+
+    def folds(self, by: str, n_folds: int) -> IntArray:
+        """Folds of the answered rows."""
+        return group_folds(self.data.pairs, by, n_folds)[self.known]
+
+    @property
+    def answered(self) -> float:
+        """Share of all rows of the file that have a number."""
+        return float(self.known.sum()) / self.data.rows_in_file
+
+
+@cache
+def prepared() -> Prepared:
+    """Read and predict the open set once."""
+    data = read_open_set(OPEN_DATA / "gamma_infinity.csv")
+    made: Training = training(data)
+    return Prepared(data, made.known, made.features[made.known], made.error[made.known])
+
+
+@cache
+def held(by: str, n_folds: int = 8) -> Held:
+    """Out-of-fold intervals for one kind of fold."""
+    ready = prepared()
+    inner = ready.folds("solvent or aqueous solute", 5)
+    return cross_validate(ready.features, ready.error, ready.folds(by, n_folds), inner)
+
+
+def row_groups() -> dict[str, BoolArray]:
+    """The groups of rows in which the coverage is asked for."""
+    ready = prepared()
+    column = dict(zip(FEATURES, ready.features.T, strict=True))
+    pairs = [pair for pair, known in zip(ready.data.pairs, ready.known, strict=True) if known]
+    solvents = [traits(solvent) for _, solvent, _ in pairs]
+    return {
+        "water as solvent": column["water_is_solvent"] > 0.0,
+        "completed parameters": column["weight_completed"] > 0.5,
+        "polar aprotic solvent": np.array([v.polar_groups > 0 and v.donors == 0 for v in solvents]),
+        "above 373.15 K": np.array([T > 373.15 for _, _, T in pairs]),
+    }
+
+
+def errors_by_grade(result: Held) -> dict[str, tuple[float, float]]:
+    """Share of rows and mean absolute error of each grade."""
+    grades = np.array([grade_of_half_width(float(h)) for h in result.half_width])
+    size = np.abs(result.error)
+    return {
+        grade: (float(np.mean(grades == grade)), float(size[grades == grade].mean()))
+        for grade in GRADES
+        if (grades == grade).any()
+    }
+
+
+def reliability(by: str = FOLDS[0]) -> FloatArray:
+    """Coverage out of fold at each of `LEVELS`."""
+    ready = prepared()
+    folds, inner = ready.folds(by, 8), ready.folds(FOLDS[0], 5)
+    inside = np.zeros((len(LEVELS), len(ready.error)), dtype=np.bool_)
+    for fold in np.unique(folds):
+        test = folds == fold
+        fitted = fit_calibration(ready.features[~test], ready.error[~test], inner[~test])
+        scaled = ready.error[test] / half_width(ready.features[test], fitted.coefficients)
+        for row, level in enumerate(LEVELS):
+            low, high = fitted.bounds(float(level))
+            inside[row, test] = (scaled >= low) & (scaled <= high)
+    share: FloatArray = inside.mean(axis=1)
+    return share
+
+
+def write_figures(folder: Path) -> None:
+    """Reliability diagram and histogram of the widths."""
+    folder.mkdir(parents=True, exist_ok=True)
+    figure = Figure(figsize=(4.5, 4.5), layout="constrained")
+    axes = figure.add_subplot()
+    axes.plot([0, 1], [0, 1], color="0.6", linewidth=1, label="perfect")
+    axes.plot(LEVELS, reliability(), "o-", color="#1f5fa8", label="solvents and solutes unseen")
+    axes.set(xlabel="stated probability", ylabel="share of measurements inside", aspect="equal")
+    axes.legend(frameon=False)
+    _save(figure, folder / "reliability")
+    figure = Figure(figsize=(5.5, 3.5), layout="constrained")
+    axes = figure.add_subplot()
+    result = held(FOLDS[0])
+    axes.hist(np.minimum(result.half_width, 2.5), bins=50, color="#1f5fa8")
+    constant = float(np.median(result.constant_upper - result.constant_lower)) / 2.0
+    axes.axvline(constant, color="0.3", linestyle="--", label="one width for all")
+    axes.set(xlabel="half-width of the 90 % interval of ln γ∞", ylabel="measurements")
+    axes.legend(frameon=False)
+    _save(figure, folder / "widths")
+
+
+def _save(figure: Figure, path: Path) -> None:
+    FigureCanvasAgg(figure)
+    for ending in ("png", "svg"):
+        figure.savefig(path.with_suffix(f".{ending}"), dpi=150)
+
+
+def main() -> None:
+    """Print the measurements; write the figures if asked."""
+    parser = argparse.ArgumentParser(description=__doc__)
+    parser.add_argument("--figures", type=Path, help="folder for the diagrams")
+    folder: Path | None = parser.parse_args().figures
+    ready = prepared()
+    print(f"answered {100 * ready.answered:.1f} % of {ready.data.rows_in_file} rows")
+    for by in FOLDS:
+        result = held(by)
+        size = np.abs(result.error)
+        print(f"\nwhole groups: {by}")
+        print(f"  mean |error| {size.mean():.4f}, median {np.median(size):.4f}")
+        print(
+            f"  coverage {result.coverage():.3f}, score ratio {result.score_ratio():.3f}, "
+            f"width ratio {result.width_ratio():.3f}"
+        )
+        for name, rows in row_groups().items():
+            print(f"  {name}: coverage {result.coverage(rows):.3f} of {rows.sum()} rows")
+        for grade, (share, error) in errors_by_grade(result).items():
+            print(f"  {grade}: {100 * share:.0f} % of rows, mean |error| {error:.3f}")
+    if folder:
+        write_figures(folder)
+
+
+if __name__ == "__main__":
+    main()
