@@ -24,6 +24,9 @@ MAX_ITERATIONS = 90
 SMALLEST_CURVATURE = 1e-7
 #: The longest step keeps this part of every amount.
 KEPT = 0.1
+#: Part of a component in one phase below which it follows by substitution, by at most exp(LARGEST).
+TRACE = 1e-9
+LARGEST = 2.0
 #: A phase with less than this of the feed is gone.
 GONE = 1e-12
 #: Liquids whose ln x differ by less than this everywhere are one.
@@ -31,7 +34,9 @@ SAME = 1e-5
 #: Amounts below this are too small to take part in the test of equal fugacities.
 NOTHING = 1e-290
 #: Rise of the Gibbs energy that rounding may cause.
-ROUNDING = 1e-13
+ROUNDING = 1e-12
+#: Mismatch below which a smaller mismatch counts, whatever the energy seems to do.
+HIDDEN = 1e-4
 
 
 @dataclass(frozen=True, slots=True)
@@ -95,7 +100,7 @@ class _Search:
         worst = np.abs(gap).max(axis=(1, 2))
         limit = self.gibbs[rows] + ROUNDING * (1.0 + np.abs(gibbs))
         # Near the end rounding hides the fall of the energy: there a smaller mismatch will do.
-        better = (gibbs <= limit) | ((worst < 1e-6) & (worst < self.residual[rows]))
+        better = (gibbs <= limit) | ((worst < HIDDEN) & (worst < self.residual[rows]))
         self.retreat[rows] = ~better
         kept = rows[better]
         self.best[kept], self.best_ln_f[kept] = n[better], ln_f[better]
@@ -143,10 +148,13 @@ class _Search:
         rotated = np.einsum("mji,mj->mi", vectors, flat) / curvature
         u = -np.einsum("mij,mj->mi", vectors, rotated).reshape(m, nc, phases - 1)
         step = np.sqrt(n) * np.einsum("mika,mia->mki", basis, u)
+        # What is next to nothing is lost in the rounding of the rest: it follows by substitution.
+        trace = n < TRACE * part.feed[:, None]
+        follow = n * np.expm1(np.clip(-_gap(n, ln_f, part.feed), -LARGEST, LARGEST))
+        step = np.where(trace, follow, step)
         fall = np.where(step < 0.0, -step / np.where(n > 0.0, n, 1.0), 0.0).max(axis=(1, 2))
-        return np.asarray(
-            step * np.minimum(1.0, (1.0 - KEPT) / np.maximum(fall, 1e-300))[:, None, None]
-        )
+        limit = np.minimum(1.0, (1.0 - KEPT) / np.maximum(fall, 1e-300))
+        return np.asarray(step * limit[:, None, None])
 
 
 def ln_fugacities(problem: PhaseProblem, n: FloatArray, n_liquids: int) -> FloatArray:
