@@ -1,1 +1,20 @@
 """Hand-over: fits for flowsheets, ThermoML, and measurements against models."""
+
+from groups.handoff.compare_door import compare
+from groups.handoff.comparisons import ComparisonAnswer, Measurements, Units, read_csv, read_records
+from groups.handoff.fit_door import FitAnswer, fit
+from groups.handoff.sheets import ParameterSet, to_csv, to_text
+
+__all__ = [
+    "ComparisonAnswer",
+    "FitAnswer",
+    "Measurements",
+    "ParameterSet",
+    "Units",
+    "compare",
+    "fit",
+    "read_csv",
+    "read_records",
+    "to_csv",
+    "to_text",
+]

@@ -72,8 +72,9 @@ class Uniquac:
         return np.asarray(combinatorial + (self.q[:, None] * self.q) * residual / surface)
 
     def _ratios(self, x: FloatArray) -> tuple[FloatArray, FloatArray]:
-        return self.r / (x @ self.r)[..., None], self.q / (x @ self.q)[..., None]
+        V, F = self.r / (x @ self.r)[..., None], self.q / (x @ self.q)[..., None]
+        return np.asarray(V), np.asarray(F)
 
     def _theta(self, x: FloatArray) -> FloatArray:
         surface = x * self.q
-        return surface / surface.sum(axis=-1, keepdims=True)
+        return np.asarray(surface / surface.sum(axis=-1, keepdims=True))
