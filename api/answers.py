@@ -49,7 +49,7 @@ def identity(molecule: Molecule) -> MoleculeIdentity:
         name=molecule.name,
         cas=molecule.cas,
         formula=molecule.formula,
-        molar_mass_g_mol=molecule.molar_mass_g_mol,
+        molar_mass_g_mol=round(molecule.molar_mass_g_mol, 4),
     )
 
 

@@ -1,4 +1,4 @@
-"""A batch of pairs at infinite dilution, of which some may hold a molecule no method describes."""
+"""A batch of pairs at infinite dilution, of which some may hold a molecule that cannot be taken."""
 
 import re
 from collections.abc import Sequence

@@ -24,7 +24,7 @@ def molecule_result(molecule: Molecule, assignments: Mapping[str, Assignment]) -
 
 
 def refused_result(refused: Refused) -> MoleculeResult:
-    """The place of a molecule that no method describes."""
+    """The place of a molecule that cannot be taken."""
     return MoleculeResult(
         canonical_smiles=None,
         name=None,

@@ -53,9 +53,15 @@ class BodyGate:
         )
         if not is_json:
             got = f"'{media_type}'" if media_type else "no 'Content-Type'"
-            return _refused("unsupported-media-type", f"The body must be JSON. Got {got} instead.")
+            return _refused(
+                "unsupported-media-type",
+                f"The body must be JSON. Got {got} instead.",
+                "Content-Type",
+            )
         if headers.get("content-encoding", "identity").lower() != "identity":
-            return _refused("unsupported-media-type", "A compressed body is not taken.")
+            return _refused(
+                "unsupported-media-type", "A compressed body is not taken.", "Content-Encoding"
+            )
         return None
 
     def _too_large(self) -> str:
@@ -115,5 +121,5 @@ async def _run(app: ASGIApp, scope: Scope, receive: Receive, send: Send) -> None
     await app(scope, receive, send)
 
 
-def _refused(slug: str, detail: str) -> ProblemResponse:
-    return ProblemResponse(problem_of(REQUEST_TYPES[slug], detail))
+def _refused(slug: str, detail: str, field: str | None = None) -> ProblemResponse:
+    return ProblemResponse(problem_of(REQUEST_TYPES[slug], detail, field=field))

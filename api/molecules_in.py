@@ -5,7 +5,7 @@ from dataclasses import dataclass
 
 from api.schemas.molecule import MoleculeInput
 from api.user_vapour_pressure import own_vapour_pressure
-from groups.errors import MixwrightError, UnsupportedStructureError
+from groups.errors import MixwrightError
 from groups.prediction import Component
 from groups.structure.identify import identified, molecule_from_cas, molecule_from_name
 from groups.structure.molecule import Molecule, molecule_from_smiles
@@ -21,7 +21,7 @@ class MoleculesRefusedError(Exception):
 
 @dataclass(frozen=True, slots=True)
 class Refused:
-    """A molecule of a batch that no method describes, and the field that gives it."""
+    """A molecule of a batch that cannot be taken, and the field that gives it."""
 
     field: str
     error: MixwrightError
@@ -38,15 +38,12 @@ def molecules_of(fields: Sequence[tuple[str, MoleculeInput]]) -> list[Molecule]:
 
 
 def batch_of(fields: Sequence[tuple[str, MoleculeInput]]) -> list[Molecule | Refused]:
-    """The molecules of a batch, with a `Refused` in the place of each that no method describes.
+    """The molecules of a batch, with a `Refused` in the place of each that cannot be taken.
 
-    What the caller can correct (SMILES that cannot be read, a name that is not known) refuses the
-    whole batch; what the methods cannot describe costs only its own place.
+    A list out of a database holds salts, unknown names and SMILES that cannot be read; one of
+    them among thousands costs only its own place.
     """
-    outcomes = _outcomes(fields)
-    faults = [outcome for outcome in outcomes if isinstance(outcome, Refused)]
-    refuse([f for f in faults if not isinstance(f.error, UnsupportedStructureError)])
-    return outcomes
+    return _outcomes(fields)
 
 
 def refuse(faults: Sequence[Refused]) -> None:

@@ -75,6 +75,20 @@ ERROR_TYPES: dict[type[errors.MixwrightError], ProblemType] = {
         "Use one of the identifiers listed by GET /v1/methods.",
         ("method", "allowed"),
     ),
+    errors.MeasurementError: ProblemType(
+        "measurement",
+        422,
+        "A measured point cannot be read or cannot be true",
+        "Correct the points named, or the units they are stated in.",
+        ("points",),
+    ),
+    errors.TooFewPointsError: ProblemType(
+        "too-few-points",
+        422,
+        "There are fewer measurements than the request needs",
+        "Give more points, or ask for an equation with fewer parameters.",
+        ("given", "needed"),
+    ),
     errors.UnreadableSmilesError: ProblemType(
         "unreadable-smiles",
         422,
@@ -174,6 +188,12 @@ ERROR_TYPES: dict[type[errors.MixwrightError], ProblemType] = {
         "No source gives a vapour pressure for a component",
         "Give your own 'vapour_pressure' for this component.",
         ("smiles",),
+    ),
+    errors.FitRefusedError: ProblemType(
+        "fit-refused",
+        422,
+        "The equation cannot describe this liquid, or the data cannot fix its parameters",
+        "Take another equation, or a form with fewer parameters.",
     ),
     errors.ConvergenceError: ProblemType(
         "not-converged",

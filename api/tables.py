@@ -55,7 +55,7 @@ def molecules_csv(answer: MoleculesResponse) -> str:
     rows: list[list[Cell]] = []
     for index, result in enumerate(answer.results):
         if result.problem is not None:
-            rows.append([index, None, None, None, False, None, None, None, None])
+            rows.append([index, *[None] * 3, False, *[None] * 4, result.problem.detail])
         for method, assignment in result.assignments.items():
             start: list[Cell] = [
                 index,
@@ -64,11 +64,14 @@ def molecules_csv(answer: MoleculesResponse) -> str:
                 method,
                 assignment.complete,
             ]
+            why = assignment.explanation
             rows += [
-                [*start, group.number, group.subgroup, group.main_group, group.count]
+                [*start, group.number, group.subgroup, group.main_group, group.count, why]
                 for group in assignment.groups
-            ] or [[*start, None, None, None, None]]
-    header = "molecule,canonical_smiles,name,method,complete,number,subgroup,main_group,count"
+            ] or [[*start, *[None] * 4, why]]
+    header = (
+        "molecule,canonical_smiles,name,method,complete,number,subgroup,main_group,count,problem"
+    )
     return csv_text(header.split(","), rows)
 
 

@@ -57,10 +57,23 @@ class OutOfRangeError(InvalidInputError):
     ) -> None:
         super().__init__(
             f"The '{name}' must lie between {lower:g} and {upper:g}. Got {value!r} instead.",
-            cure=f"Give a '{name}' between {lower:g} and {upper:g}; the unit stands in the name.",
+            cure=f"Give a '{name}' between {lower:g} and {upper:g}{_unit_hint(name, value)}.",
             field=field or name,
         )
         self.name, self.value, self.lower, self.upper = name, value, lower, upper
+
+
+def _unit_hint(name: str, value: float) -> str:
+    """The unit that is asked for, and the value in it where it looks like another unit's."""
+    if name.endswith("_K"):
+        meant = f"; {value:g} °C is {value + 273.15:g} K" if -150.0 <= value <= 100.0 else ""
+        return f", in kelvin{meant}"
+    if name.endswith("_kPa"):
+        meant = f"; {value:g} Pa is {value / 1000.0:g} kPa" if 1e5 < value < 1e8 else ""
+        return f", in kilopascal{meant}"
+    if "fraction" in name:
+        return "; fractions of one, not per cent" if value > 1.0 else ""
+    return ""
 
 
 class FractionSumError(InvalidInputError):

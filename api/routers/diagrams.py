@@ -52,7 +52,7 @@ def predict_diagram(
     settings: SettingsDependency,
 ) -> Response:
     """Points inside a liquid-liquid gap have `stable` false; `x1` there is the overall liquid."""
-    check_length("components", len(request.components), 2)
+    check_length("components", len(request.components), settings.max_components)
     check_length("points", request.points, settings.max_grid_points)
     answer = prediction.diagram(
         request.kind,

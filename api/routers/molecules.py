@@ -1,5 +1,6 @@
 """Molecules: which they are, and which groups they split into."""
 
+from collections.abc import Sequence
 from typing import Annotated
 
 from fastapi import APIRouter, Body, Depends
@@ -13,7 +14,9 @@ from api.negotiation import MediaType, accepts
 from api.responses import CSV_ALSO, answer_as, picture_as
 from api.schemas.molecule import DepictionRequest, MoleculesRequest, MoleculesResponse
 from api.tables import molecules_csv
-from groups.prediction import assign_groups
+from groups.errors import UnknownMethodError
+from groups.prediction import ALL_METHODS, assign_groups
+from groups.structure.assignment import Assignment
 from groups.structure.depiction import depict
 from groups.structure.molecule import Molecule
 
@@ -44,13 +47,13 @@ def describe_molecules(
 ) -> Response:
     """Every heavy atom and every hydrogen lands in exactly one group, or `complete` is false.
 
-    A molecule that no method describes (a salt, a metal, ...) comes back null with its `problem`;
-    if that is every molecule of the request, the request is refused.
+    A molecule that cannot be taken (a salt, a metal, an unknown name, unreadable SMILES) comes back
+    null with its `problem`; if that is every molecule of the request, the request is refused.
     """
     check_length("molecules", len(request.molecules), settings.max_molecules)
     batch = batch_of([(f"/molecules/{k}", m) for k, m in enumerate(request.molecules)])
     molecules = [molecule for molecule in batch if isinstance(molecule, Molecule)]
-    assignments = iter(assign_groups(molecules, list(dict.fromkeys(request.methods))))
+    assignments = iter(_assignments(molecules, request.methods))
     if not molecules:
         refuse([refused for refused in batch if isinstance(refused, Refused)])
     results = [
@@ -60,6 +63,19 @@ def describe_molecules(
         for item in batch
     ]
     return answer_as(media, MoleculesResponse(results=results), molecules_csv)
+
+
+def _assignments(
+    molecules: Sequence[Molecule], methods: Sequence[str]
+) -> tuple[dict[str, Assignment], ...]:
+    """By each method asked for; one that has no groups is named by its place."""
+    try:
+        return assign_groups(molecules, list(dict.fromkeys(methods)))
+    except UnknownMethodError as error:
+        error.field = f"methods[{methods.index(error.method)}]"
+        if error.method in ALL_METHODS:
+            error.cure = f"Take '{error.method}' out; it has no groups of its own."
+        raise
 
 
 @router.post(

@@ -65,9 +65,7 @@ class InfiniteDilutionResult(StrictModel):
     method: str | None
     methods_used: list[MethodUse]
     confidence: Confidence
-    problem: Problem | None = Field(
-        default=None, description="Set where no method can describe the pair."
-    )
+    problem: Problem | None = Field(default=None, description="Set where the pair cannot be taken.")
 
 
 class InfiniteDilutionResponse(StrictModel):

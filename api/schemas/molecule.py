@@ -22,7 +22,7 @@ MAX_SMILES_LENGTH = 5_000  # as groups.structure takes at most
 class MoleculeInput(StrictModel):
     """A molecule by exactly one of SMILES, name or CAS number; a plain text is SMILES."""
 
-    smiles: Annotated[str, Field(min_length=1, max_length=MAX_SMILES_LENGTH)] | None = None
+    smiles: Annotated[str, Field(max_length=MAX_SMILES_LENGTH)] | None = None
     name: Annotated[str, Field(min_length=1, max_length=300)] | None = None
     cas: Annotated[str, Field(min_length=1, max_length=20)] | None = None
     vapour_pressure: VapourPressureInput | None = None
@@ -129,7 +129,7 @@ class GroupAssignment(StrictModel):
 
 
 class MoleculeResult(StrictModel):
-    """One molecule and its groups by method; null, with `problem`, where no method describes it."""
+    """One molecule and its groups by method; null, with `problem`, where it cannot be taken."""
 
     canonical_smiles: str | None
     name: str | None

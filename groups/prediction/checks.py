@@ -24,9 +24,10 @@ SUM_TOLERANCE = 1e-6
 def check_components(molecules: Sequence[Molecule], *, least: int = 1, most: int = 20) -> None:
     """Refuse too few or too many components and any given twice."""
     if not least <= len(molecules) <= most:
+        allowed = f"{least} to {most}" if least < most else f"exactly {least}"
         raise ShapeError(
-            f"There must be {least} to {most} components. Got {len(molecules)} instead.",
-            cure=f"Give a list of {least} to {most} different molecules.",
+            f"There must be {allowed} components. Got {len(molecules)} instead.",
+            cure=f"Give a list of {allowed} different molecules.",
             field="components",
         )
     first_seen: dict[str, int] = {}

@@ -116,10 +116,11 @@ def _automatic(
     candidates: Mapping[str, Candidate],
 ) -> tuple[Candidate, str]:
     if not candidates:
-        raise _incomplete(molecules, covers["unifac-dortmund"], "unifac-dortmund or another table")
+        raise _incomplete_everywhere(molecules, covers)
     order = preference(list(candidates.values()), on_missing)
     if not order:
-        raise _missing(next(iter(candidates.values())))
+        nearest = min(candidates.values(), key=lambda one: len(_gaps(one, on_missing)))
+        raise _missing(nearest, on_missing, "No table has every parameter. ")
     return order[0], why_taken(order[0], list(candidates.values()))
 
 
@@ -128,13 +129,13 @@ def _asked_for(
 ) -> tuple[Candidate, str, tuple[Reason, ...]]:
     """The table asked for, or the completed one that stands in for it."""
     asked = candidates[method]
-    gaps = asked.missing + (asked.completed if on_missing == "refuse" else ())
+    gaps = _gaps(asked, on_missing)
     if not gaps:
         return asked, "asked for", ()
     stand_ins = COMPLETED_METHODS if method != "unifac" else COMPLETED_METHODS[::-1]
     usable = [m for m in stand_ins if m in candidates and not candidates[m].missing]
     if on_missing == "refuse" or not usable:
-        raise _missing(asked)
+        raise _missing(asked, on_missing)
     why = (
         f"{method} was asked for and lacks {len(asked.missing)} group "
         f"pair{'s' if len(asked.missing) > 1 else ''}; a completed table stands in"
@@ -147,26 +148,57 @@ def _asked_for(
 
 
 def _incomplete(
-    molecules: tuple[Molecule, ...], assignments: tuple[Assignment, ...], named: str
+    molecules: tuple[Molecule, ...], assignments: tuple[Assignment, ...], method: str
 ) -> IncompleteAssignmentError:
+    """The first molecule that the table asked for does not cover."""
     index = next(k for k, one in enumerate(assignments) if not one.complete)
-    bad = assignments[index]
+    smiles = molecules[index].canonical_smiles
+    return _uncovered(
+        index, f"{smiles} cannot be split into the groups of {method}.", smiles, assignments[index]
+    )
+
+
+def _incomplete_everywhere(
+    molecules: tuple[Molecule, ...], covers: Mapping[str, tuple[Assignment, ...]]
+) -> IncompleteAssignmentError:
+    """A molecule that no table covers; without one, the first that the common table does not."""
+    bare = [k for k in range(len(molecules)) if not any(a[k].complete for a in covers.values())]
+    named = covers["unifac-dortmund"]
+    index = bare[0] if bare else next(k for k, one in enumerate(named) if not one.complete)
+    smiles = molecules[index].canonical_smiles
+    text = (
+        f"No table has groups for all of {smiles}."
+        if bare
+        else f"No one table has groups for every component; only some tables cover {smiles}."
+    )
+    return _uncovered(index, text, smiles, named[index])
+
+
+def _uncovered(
+    index: int, message: str, smiles: str, assignment: Assignment
+) -> IncompleteAssignmentError:
     error = IncompleteAssignmentError(
-        f"{molecules[index].canonical_smiles} cannot be split into the groups of {named}. "
-        f"{bad.explanation}",
-        smiles=molecules[index].canonical_smiles,
-        method=bad.method,
-        atoms=bad.unassigned_atoms,
+        f"{message} {assignment.explanation}",
+        smiles=smiles,
+        method=assignment.method,
+        atoms=assignment.unassigned_atoms,
     )
     error.field = f"components[{index}]"
     return error
 
 
-def _missing(one: Candidate) -> MissingParameterError:
-    gaps = one.missing or one.completed
+def _gaps(one: Candidate, on_missing: OnMissing) -> tuple[tuple[int, int], ...]:
+    """Pairs without parameter, or without a fitted one where estimates are refused."""
+    return one.missing + (one.completed if on_missing == "refuse" else ())
+
+
+def _missing(one: Candidate, on_missing: OnMissing, before: str = "") -> MissingParameterError:
+    gaps = _gaps(one, on_missing)
     named = ", ".join(reason.subject for reason in missing_reasons(table(one.method), gaps))
-    return MissingParameterError(
-        f"The table of {one.method} has no published parameter for {named}.",
+    error = MissingParameterError(
+        f"{before}The table of {one.method} has no published parameter for {named}.",
         method=one.method,
         pairs=gaps,
     )
+    error.field = "on_missing" if on_missing == "refuse" else "method"
+    return error

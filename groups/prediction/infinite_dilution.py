@@ -10,7 +10,12 @@ from groups.activity.choice import OnMissing
 from groups.confidence import Reason, graded
 from groups.confidence.agreement_rules import agreement_reasons
 from groups.confidence.parameter_rules import temperature_reasons
-from groups.errors import MissingParameterError, MixwrightError, PredictionError
+from groups.errors import (
+    MissingParameterError,
+    MixwrightError,
+    OutOfRangeError,
+    PredictionError,
+)
 from groups.parameters import table
 from groups.prediction.answers import InfiniteDilutionAnswer, MethodUse
 from groups.prediction.checks import check_components, check_temperatures
@@ -71,7 +76,8 @@ def _check(pairs: Sequence[DilutePair]) -> None:
             check_components([solute, solvent], least=2, most=2)
             check_temperatures(temperature_K)
         except MixwrightError as error:
-            error.field = f"pairs[{index}]"
+            inside = ".temperature_K" if isinstance(error, OutOfRangeError) else ""
+            error.field = f"pairs[{index}]{inside}"
             raise
 
 

@@ -377,7 +377,7 @@ INVOLATILE = "C(C(C(C(C(CO)O)O)O)O)O"
         (
             "/v1/diagrams",
             DIAGRAM | {"components": ["CCO", "O", "CO"]},
-            "too-many-items",
+            "lengths-do-not-fit",
             "/components",
         ),
         ("/v1/azeotropes", ETHANOL_WATER, "invalid-input", "/temperature_K"),

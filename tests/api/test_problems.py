@@ -46,7 +46,7 @@ def test_numbers_that_are_none_are_refused(service, literal, place, field):
         (changed(components=["CCO", 7]), "invalid-request", "/components/1"),
         (changed(components=["CCO", None]), "invalid-request", "/components/1"),
         (changed(components=["CCO", {}]), "invalid-request", "/components/1"),
-        (changed(components=["CCO", ""]), "invalid-request", "/components/1"),
+        (changed(components=["CCO", ""]), "empty-molecule", "/components/1"),
         (changed(components=["CCO", "C" * 5001]), "invalid-request", "/components/1"),
         (
             changed(components=["CCO", {"smiles": "O", "name": "water"}]),
@@ -129,14 +129,44 @@ def test_place_of_a_mistake_in_smiles_is_said(service):
 
 
 def test_all_bad_molecules_are_named_together(service):
-    body = {"molecules": ["CCO", "C(C", {"name": "unobtainium ether"}, "C1CC"]}
-    problem = assert_problem(service.post("/v1/molecules", body), "unreadable-smiles")
+    body = changed(components=["CCO", "C(C", {"name": "unobtainium ether"}, "C1CC"])
+    problem = assert_problem(service.post(ACTIVITY, body), "unreadable-smiles")
     assert [error["field"] for error in problem["errors"]] == [
-        "/molecules/1",
-        "/molecules/2/name",
-        "/molecules/3",
+        "/components/1",
+        "/components/2/name",
+        "/components/3",
     ]
     assert all(error["cure"] for error in problem["errors"])
+
+
+@pytest.mark.parametrize(
+    ("molecule", "slug", "field"),
+    [
+        ("C(C", "unreadable-smiles", "/molecules/1"),
+        ("", "empty-molecule", "/molecules/1"),
+        ({"name": "unobtainium ether"}, "unknown-name", "/molecules/1/name"),
+        ({"cas": "64-17-6"}, "unknown-name", "/molecules/1/cas"),
+    ],
+)
+def test_a_molecule_that_cannot_be_read_costs_a_batch_only_its_own_place(
+    service, molecule, slug, field
+):
+    body = {"molecules": ["CCO", molecule, "O"], "methods": ["unifac"]}
+    response = service.post("/v1/molecules", body)
+    assert response.status_code == 200
+    first, second, third = response.json()["results"]
+    assert (first["canonical_smiles"], third["canonical_smiles"]) == ("CCO", "O")
+    assert second["canonical_smiles"] is None
+    assert second["problem"]["type"] == f"/problems/{slug}"
+    assert second["problem"]["field"] == field
+    alone = body | {"molecules": [molecule]}
+    assert_problem(service.post("/v1/molecules", alone), slug, field.replace("1", "0"))
+
+
+def test_a_method_without_groups_is_named_by_its_place(service):
+    body = {"molecules": ["CCO"], "methods": ["unifac", "ideal"]}
+    problem = assert_problem(service.post("/v1/molecules", body), "unknown-method", "/methods/1")
+    assert "ideal" in problem["cure"]
 
 
 @pytest.mark.parametrize("accept", ["application/json", "text/csv"])
@@ -179,6 +209,31 @@ def test_a_pair_that_no_method_describes_costs_only_its_own_place(service, accep
         assert second["ln_gamma_inf"] is not None
 
 
+def test_a_pair_that_cannot_be_read_costs_only_its_own_place(service):
+    pairs = [
+        {"solute": "CCO", "solvent": "C(C", "temperature_K": 300.0},
+        {"solute": "CCO", "solvent": "O", "temperature_K": 300.0},
+    ]
+    first, second = service.post("/v1/infinite-dilution", {"pairs": pairs}).json()["results"]
+    assert first["ln_gamma_inf"] is None
+    assert first["problem"]["type"] == "/problems/unreadable-smiles"
+    assert second["ln_gamma_inf"] is not None
+
+
+@pytest.mark.parametrize(
+    ("change", "field", "hint"),
+    [
+        ({"temperature_K": 78.0}, "/temperature_K", "78 °C is 351.15 K"),
+        ({"temperature_K": None, "pressure_kPa": 101325.0}, "/pressure_kPa", "is 101.325 kPa"),
+        ({"mole_fractions": [50.0, 50.0]}, "/mole_fractions/0", "not per cent"),
+    ],
+)
+def test_a_number_in_another_unit_is_told_in_the_right_one(service, change, field, hint):
+    body = {"components": ["CCO", "O"], "mole_fractions": [0.5, 0.5], "temperature_K": 300.0}
+    problem = assert_problem(service.post("/v1/bubble-point", body | change), "out-of-range", field)
+    assert hint in problem["cure"]
+
+
 def test_a_pair_of_one_molecule_costs_only_its_own_place(service):
     same = {"solute": "CCO", "solvent": {"name": "ethanol"}, "temperature_K": 300.0}
     other = {"solute": "CCO", "solvent": "O", "temperature_K": 300.0}
@@ -198,7 +253,7 @@ def test_a_bad_number_keeps_its_place_beside_a_pair_left_out(service):
     problem = assert_problem(
         service.post("/v1/infinite-dilution", {"pairs": pairs}), "out-of-range"
     )
-    assert problem["field"].startswith("/pairs/1")
+    assert problem["field"] == "/pairs/1/temperature_K"
 
 
 def test_all_bad_fields_are_named_together(service):
