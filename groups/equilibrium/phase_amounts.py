@@ -21,7 +21,7 @@ from groups.equilibrium.states import safe_log
 #: Largest difference of ln fugacity between phases at the end.
 TOLERANCE = 1e-11
 MAX_ITERATIONS = 90
-SMALLEST_CURVATURE = 1e-7
+SMALLEST_CURVATURE = 1e-10
 #: The longest step keeps this part of every amount.
 KEPT = 0.1
 #: Part of a component in one phase below which it follows by substitution, by at most exp(LARGEST).
@@ -29,6 +29,10 @@ TRACE = 1e-9
 LARGEST = 2.0
 #: A phase with less than this of the feed is gone.
 GONE = 1e-12
+#: A phase that has shrunk below this, to a hundredth of its start and far from equilibrium, is gone
+#: too: it would take many steps to grow again, and the test of stability brings it back faster.
+DWINDLED = 1e-7
+FAR = 1e-3
 #: Liquids whose ln x differ by less than this everywhere are one.
 SAME = 1e-5
 #: Amounts below this are too small to take part in the test of equal fugacities.
@@ -84,6 +88,7 @@ class _Search:
         m = len(start)
         self.present = problem.feed > 0.0
         self.trial, self.best = start.copy(), start.copy()
+        self.start_totals = start.sum(axis=2)
         self.best_ln_f = np.zeros_like(start)
         self.step = np.zeros_like(start)
         self.gibbs, self.residual = np.full(m, np.inf), np.full(m, np.inf)
@@ -105,11 +110,19 @@ class _Search:
         kept = rows[better]
         self.best[kept], self.best_ln_f[kept] = n[better], ln_f[better]
         self.gibbs[kept], self.residual[kept] = gibbs[better], worst[better]
-        self.lost[kept] = _lost(n[better], self.n_liquids, self.present[kept])
+        lost = _lost(n[better], self.n_liquids, self.present[kept])
+        self.lost[kept] = np.where(lost < 0, self._dwindled(kept, worst[better]), lost)
         self.settled[kept] = (worst[better] <= TOLERANCE) & (self.lost[kept] < 0)
         size = np.abs(self.step[rows] / np.where(self.best[rows] > 0.0, self.best[rows], 1.0))
         stuck = self.retreat[rows] & (size.max(axis=(1, 2)) < 1e-13)
         return np.asarray(rows[~(self.settled[rows] | (self.lost[rows] >= 0) | stuck)])
+
+    def _dwindled(self, rows: IntArray, worst: FloatArray) -> IntArray:
+        """Index of a phase that has all but vanished while the others have not settled, else -1."""
+        totals = self.best[rows].sum(axis=2)
+        small = (totals < DWINDLED) & (totals < 0.01 * self.start_totals[rows])
+        gone = small.any(axis=1) & (worst > FAR)
+        return np.asarray(np.where(gone, totals.argmin(axis=1), -1), dtype=np.int64)
 
     def advance(self, rows: IntArray) -> None:
         """New trial amounts: half the last step where it did not help, else a fresh one."""
