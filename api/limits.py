@@ -5,6 +5,7 @@ import logging
 
 from starlette.datastructures import Headers
 from starlette.exceptions import HTTPException
+from starlette.routing import Match
 from starlette.types import ASGIApp, Message, Receive, Scope, Send
 
 from api.problem_types import REQUEST_TYPES
@@ -27,7 +28,7 @@ class BodyGate:
         if scope["type"] != "http" or scope["method"] not in {"POST", "PUT", "PATCH"}:
             await self.app(scope, receive, send)
             return
-        refusal = self._refusal(Headers(scope=scope))
+        refusal = self._refusal(Headers(scope=scope)) if _has_route(scope) else None
         if refusal is not None:
             await refusal(scope, receive, send)
             return
@@ -66,6 +67,11 @@ class BodyGate:
 
     def _too_large(self) -> str:
         return f"The body is larger than {self.max_bytes} bytes, the most this service takes."
+
+
+def _has_route(scope: Scope) -> bool:
+    """Whether the address takes the verb; where it does not, that is the better answer."""
+    return any(route.matches(scope)[0] is Match.FULL for route in scope["app"].routes)
 
 
 class TimeLimit:

@@ -9,6 +9,7 @@ from groups.activity import ln_gamma_infinite_pairs
 from groups.activity.choice import OnMissing
 from groups.confidence import Reason, graded
 from groups.confidence.agreement_rules import agreement_reasons
+from groups.confidence.chemistry_rules import gas_reasons
 from groups.confidence.parameter_rules import temperature_reasons
 from groups.errors import (
     MissingParameterError,
@@ -130,6 +131,7 @@ def _answered(
     spreads = {other: abs(float(numbers[other]) - ln_gamma) for other in choice.others}
     reasons = [
         *mixture_reasons((solute, solvent), choice),
+        *gas_reasons(solute, temperature_K),
         *temperature_reasons(table(taken), temperature_K, temperature_K),
         *agreement_reasons(taken, spreads),
     ]

@@ -6,6 +6,7 @@ import numpy as np
 
 from groups.activity import activity_model
 from groups.confidence import Reason
+from groups.confidence.chemistry_rules import chemistry_reasons
 from groups.confidence.parameter_rules import completed_reasons, suspect_reasons
 from groups.confidence.structure_rules import (
     ambiguity_reasons,
@@ -41,6 +42,7 @@ def mixture_reasons(molecules: Sequence[Molecule], choice: Choice) -> tuple[Reas
         *choice.reasons,
         *completed_reasons(groups, taken.main_numbers),
         *suspect_reasons(groups, taken.main_numbers),
+        *chemistry_reasons(molecules),
         *polyol_reasons(molecules),
         *water_reasons(molecules),
         *polar_reasons(molecules),

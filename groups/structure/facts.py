@@ -14,6 +14,8 @@ from groups.structure.functional import (
 )
 from groups.structure.molecule import Molecule
 
+_CARBON = 6
+
 
 @dataclass(frozen=True, slots=True)
 class MoleculeFacts:
@@ -44,9 +46,11 @@ def molecule_facts(molecule: Molecule) -> MoleculeFacts:
     `groups.structure.functional`.
     """
     mol = molecule.mol
+    # Groups are parts of an organic molecule: oxygen or sulfur dioxide has none to set apart.
+    organic = any(atom.GetAtomicNum() == _CARBON for atom in mol.GetAtoms())
     return MoleculeFacts(
-        polar_groups(mol),
-        bool(neighbouring_polar_groups(mol)),
+        polar_groups(mol) if organic else (),
+        organic and bool(neighbouring_polar_groups(mol)),
         is_polyol(mol),
         is_hydrophobe(mol),
         associates_in_vapour(mol),

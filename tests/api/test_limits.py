@@ -89,3 +89,17 @@ def test_a_request_over_the_time_limit_gets_a_problem():
 def test_a_request_within_the_time_limit_is_answered():
     response = _slow_service(30.0, threading.Event()).get("/fast")
     assert (response.status_code, response.json()) == (200, "in time")
+
+
+@pytest.mark.parametrize(
+    ("verb", "path", "slug"),
+    [
+        ("PUT", "/v1/health", "verb-not-allowed"),
+        ("POST", "/v1/ready", "verb-not-allowed"),
+        ("PUT", "/v1/molecules", "verb-not-allowed"),
+        ("POST", "/v1/nowhere", "not-found"),
+        ("POST", "/v1/molecules", "unsupported-media-type"),
+    ],
+)
+def test_the_address_and_the_verb_come_before_the_media_type(service, verb, path, slug):
+    assert_problem(service.call(verb, path), slug)
