@@ -1,0 +1,260 @@
+"""The two-liquid regions of a ternary at one temperature: tie lines, binodal, plait points.
+
+A region is entered from a miscibility gap of one of the three binaries, or from a splitting liquid
+inside. From there tie lines are followed: the feed of the next one lies a small step beside the
+middle of the last, at right angles to it, so the region is swept however it bends. It ends in a
+plait point, or at the gap of another binary. The tie lines asked for are then solved anew, evenly
+spaced, and held against trial liquids.
+"""
+
+from dataclasses import dataclass
+
+import numpy as np
+
+from groups.arrays import FloatArray
+from groups.equilibrium.binary_split import binary_splits
+from groups.equilibrium.conditions import checked_temperature
+from groups.equilibrium.flash import flash_states
+from groups.equilibrium.liquid_trials import lowest_trials
+from groups.equilibrium.phase_amounts import settled_amounts
+from groups.equilibrium.phase_problem import PhaseProblem
+from groups.equilibrium.plait_point import plait_point
+from groups.equilibrium.stability import ZERO_DISTANCE
+from groups.equilibrium.subset import SubsetLiquid
+from groups.equilibrium.system import LiquidModel
+from groups.errors import OutOfRangeError, ShapeError
+
+#: Step between the middles of neighbouring tie lines while a region is followed, and its least.
+STEP = 0.04
+SMALLEST_STEP = 2e-4
+MOST_STEPS = 300
+#: A tie line shorter than this is followed no further: the plait point is near.
+SHORT = 0.02
+#: Tangent-plane distance below which a plait point is no stable one.
+FLAT_DISTANCE = 1e-6
+#: A mole fraction below this in the middle of a tie line: the edge of the triangle is reached.
+EDGE = 1e-4
+MOST_TIE_LINES = 1000
+#: Parts along an edge of the lattice on which regions that touch no edge are looked for.
+LATTICE = 12
+
+
+@dataclass(frozen=True, slots=True)
+class TwoLiquidRegion:
+    """One region of a ternary where two liquids coexist.
+
+    Attributes
+    ----------
+    first, second : array of shape (k, 3)
+        Ends of the tie lines, in order along the region; the binodal runs through them and the
+        plait points.
+    whole : bool
+        False where some of the tie lines asked for are left out, because a region of three liquids
+        lies across them.
+    plait_points : tuple of arrays of shape (3,)
+        None, one or two.
+    """
+
+    first: FloatArray
+    second: FloatArray
+    whole: bool
+    plait_points: tuple[FloatArray, ...]
+
+
+@dataclass(frozen=True, slots=True)
+class TernaryBinodal:
+    """All two-liquid regions of a ternary, and triangles of three liquids, each of shape (3, 3)."""
+
+    temperature_K: float
+    regions: tuple[TwoLiquidRegion, ...]
+    triangles: tuple[FloatArray, ...]
+
+
+@dataclass(slots=True)
+class _Swept:
+    """Tie lines in order, each (2, 3), and whether the region closed in a plait point."""
+
+    lines: list[FloatArray]
+    closed: bool
+
+
+def ternary_binodal(
+    liquid: LiquidModel, temperature_K: float, tie_lines: int = 30
+) -> TernaryBinodal:
+    """Tie lines, binodal and plait points of a ternary.
+
+    Parameters
+    ----------
+    liquid : LiquidModel
+        Of three components.
+    temperature_K : float
+        In K, 40 to 2000.
+    tie_lines : int
+        Of each region, 2 to 1000, evenly spaced.
+
+    Returns
+    -------
+    TernaryBinodal
+        Without regions where the liquid is stable throughout.
+
+    Raises
+    ------
+    OutOfRangeError, ShapeError
+
+    Source
+    ------
+    Prausnitz, Lichtenthaler & de Azevedo (1999), section 6.14; the plait point by the criteria of
+    Gibbs as in Heidemann & Khalil, AIChE J. 26 (1980) 769.
+    """
+    if liquid.n_components != 3:
+        raise ShapeError(
+            f"A ternary binodal needs three components. Got {liquid.n_components} instead.",
+            cure="Use the liquid flash for more components.",
+            field="components",
+        )
+    if not 2 <= tie_lines <= MOST_TIE_LINES:
+        raise OutOfRangeError("tie_lines", tie_lines, 2, MOST_TIE_LINES)
+    T = float(checked_temperature(temperature_K)[0])
+    lattice = _lattice_flash(liquid, T)
+    swept: list[_Swept] = []
+    for start, inward in _edge_gaps(liquid, T):
+        if not any(_on_line(start, region.lines[-1]) for region in swept):
+            region = _sweep(liquid, T, start, inward)
+            swept.append(region)
+    for start in lattice[0]:
+        if not any(_near(start, region) for region in swept):
+            swept.append(_island(liquid, T, start))
+    regions = [_finished(liquid, T, region, tie_lines) for region in swept if len(region.lines) > 1]
+    return TernaryBinodal(T, tuple(regions), tuple(lattice[1]))
+
+
+def _edge_gaps(liquid: LiquidModel, T: float) -> list[tuple[FloatArray, FloatArray]]:
+    """Tie lines (2, 3) on the edges of the triangle, and the corner each region opens towards."""
+    found = []
+    for i, j, other in ((0, 1, 2), (0, 2, 1), (1, 2, 0)):
+        for split in binary_splits(SubsetLiquid(liquid, (i, j)), T):
+            line = np.zeros((2, 3))
+            line[:, [i, j]] = split.first, split.second
+            found.append((line, np.eye(3)[other]))
+    return found
+
+
+def _lattice_flash(liquid: LiquidModel, T: float) -> tuple[list[FloatArray], list[FloatArray]]:
+    """Tie lines and triangles of a lattice of feeds inside."""
+    cells = [(i, j) for i in range(1, LATTICE) for j in range(1, LATTICE - i)]
+    feeds = np.array([[i, j, LATTICE - i - j] for i, j in cells]) / LATTICE
+    found = flash_states(PhaseProblem.of_liquid(liquid, np.full(len(feeds), T), feeds))
+    count = np.isfinite(found.liquids[:, :, 0]).sum(axis=1)
+    lines = [found.liquids[k, :2] for k in np.flatnonzero(found.converged & (count == 2))]
+    triangles: list[FloatArray] = []
+    for k in np.flatnonzero(found.converged & (count == 3)):
+        corners = found.liquids[k]
+        if not any(np.abs(corners - old).max() < 1e-6 for old in triangles):
+            triangles.append(corners)
+    return lines, triangles
+
+
+def _sweep(liquid: LiquidModel, T: float, start: FloatArray, inward: FloatArray) -> _Swept:
+    """Follow tie lines from one to a plait point or to another edge."""
+    lines, step = [start], STEP
+    ahead = inward - start.mean(axis=0)
+    for _ in range(MOST_STEPS):
+        last = lines[-1]
+        across = last[1] - last[0]
+        length = float(np.abs(across).max())
+        ahead = _beside(across, ahead)
+        # Not further than a share of the length: the region narrows towards a plait point.
+        feed = last.mean(axis=0) + min(step, 0.5 * length) * ahead
+        new = _tie_line(liquid, T, last, feed) if (feed > 0.0).all() else None
+        if new is None:
+            step *= 0.5
+            if step < SMALLEST_STEP:
+                return _Swept(lines, closed=bool((last.mean(axis=0) > 10.0 * EDGE).all()))
+            continue
+        lines.append(new)
+        step = min(STEP, 1.5 * step)
+        if np.abs(new[1] - new[0]).max() < SHORT:
+            return _Swept(lines, closed=True)
+        if new.mean(axis=0).min() < EDGE:
+            return _Swept(lines, closed=False)
+    return _Swept(lines, closed=False)
+
+
+def _island(liquid: LiquidModel, T: float, start: FloatArray) -> _Swept:
+    """A region that touches no edge: swept from within to both sides."""
+    across = start[1] - start[0]
+    side = np.cross(across, np.ones(3))
+    one, other = (_sweep(liquid, T, start, start.mean(axis=0) + s * side) for s in (1.0, -1.0))
+    return _Swept(other.lines[:0:-1] + one.lines, closed=one.closed and other.closed)
+
+
+def _beside(across: FloatArray, ahead: FloatArray) -> FloatArray:
+    """Unit direction in the plane of the triangle, at right angles to a tie line, ahead."""
+    direction = np.cross(across, np.ones(3))
+    direction *= 1.0 if direction @ ahead >= 0.0 else -1.0
+    return np.asarray(direction / np.abs(direction).max())
+
+
+def _tie_line(
+    liquid: LiquidModel, T: float, last: FloatArray, feed: FloatArray
+) -> FloatArray | None:
+    """The tie line (2, 3) through a feed, beginning from a neighbouring one."""
+    share = 0.5 * np.maximum(last, 1e-8)
+    start = share * (feed / share.sum(axis=0))
+    problem = PhaseProblem.of_liquid(liquid, np.array([T]), feed[None])
+    found = settled_amounts(problem, start[None], 2)
+    if not found.settled[0]:
+        return None
+    x = found.amounts[0] / found.amounts[0].sum(axis=1, keepdims=True)
+    # A jump to another gap is no neighbour.
+    return np.asarray(x) if np.abs(x - last).max() < 0.3 else None
+
+
+def _on_line(line: FloatArray, other: FloatArray) -> bool:
+    return bool(np.abs(line - other).max() < 0.02 or np.abs(line - other[::-1]).max() < 0.02)
+
+
+def _near(line: FloatArray, region: _Swept) -> bool:
+    """Whether the middle of a tie line lies close to a region that has been swept."""
+    middle = line.mean(axis=0)
+    for other in region.lines:
+        across = other[1] - other[0]
+        share = np.clip((middle - other[0]) @ across / max(float(across @ across), 1e-12), 0.0, 1.0)
+        if np.abs(other[0] + share * across - middle).max() < 1.5 * STEP:
+            return True
+    return False
+
+
+def _finished(liquid: LiquidModel, T: float, region: _Swept, count: int) -> TwoLiquidRegion:
+    """Evenly spaced tie lines, tested for stability, and the plait points."""
+    lines = np.array(region.lines)
+    middles = lines.mean(axis=1)
+    along = np.concatenate([[0.0], np.cumsum(np.abs(np.diff(middles, axis=0)).max(axis=1))])
+    wanted = np.linspace(0.0, along[-1], count)
+    near = np.abs(along[None] - wanted[:, None]).argmin(axis=1)
+    feeds = np.stack([np.interp(wanted, along, middles[:, i]) for i in range(3)], axis=1)
+    feeds /= feeds.sum(axis=1, keepdims=True)
+    share = 0.5 * np.where(feeds[:, None] > 0.0, np.maximum(lines[near], 1e-8), 0.0)
+    start = share * (feeds / np.where(feeds > 0.0, share.sum(axis=1), 1.0))[:, None]
+    problem = PhaseProblem.of_liquid(liquid, np.full(count, T), feeds)
+    found = settled_amounts(problem, start, 2)
+    x = found.amounts / found.amounts.sum(axis=2, keepdims=True)
+    good = found.settled
+    mean = (found.amounts * found.ln_fugacity).sum(axis=1) / np.where(feeds > 0.0, feeds, 1.0)
+    plane = np.where(feeds > 0.0, mean, -np.inf)[good]
+    stable = lowest_trials(liquid, problem.temperature_K[good], plane).distance > -ZERO_DISTANCE
+    x = x[good][stable]
+    ends = [lines[-1]] if region.closed else []
+    if region.closed and np.abs(lines[0][1] - lines[0][0]).max() < SHORT:
+        ends.append(lines[0])
+    plaits = [plait_point(liquid, T, end[0], end[1]) for end in ends]
+    true = tuple(p for p in plaits if p is not None and _lies_lowest(liquid, T, p))
+    return TwoLiquidRegion(x[:, 0], x[:, 1], len(x) == count, true)
+
+
+def _lies_lowest(liquid: LiquidModel, T: float, x: FloatArray) -> bool:
+    """Whether no liquid lies below the tangent plane at a plait point."""
+    at = np.array([T])
+    plane = np.log(x)[None] + liquid.ln_gamma(at, x[None])
+    # At a plait point the distance is flat to the fourth order, and its place has an error.
+    return bool(lowest_trials(liquid, at, plane).distance[0] > -FLAT_DISTANCE)
