@@ -56,14 +56,17 @@ def second_virial(
     """
     inverse = critical_temperature_K / temperature_K
     f0, f1 = _FORMS[correlation](inverse)
-    polar = polar_a * inverse**6 - polar_b * inverse**8
+    sixth = (inverse * inverse * inverse) ** 2  # products: a power of an array is ten times slower
+    polar = (polar_a - polar_b * inverse * inverse) * sixth
     scale = GAS_CONSTANT_KPA_CM3 * critical_temperature_K / critical_pressure_kPa
     return np.asarray(scale * (f0 + acentric_factor * f1 + polar))
 
 
 def _tsonopoulos(s: FloatArray) -> tuple[FloatArray, FloatArray]:
-    f0 = 0.1445 - 0.330 * s - 0.1385 * s**2 - 0.0121 * s**3 - 0.000607 * s**8
-    return f0, 0.0637 + 0.331 * s**2 - 0.423 * s**3 - 0.008 * s**8
+    s2 = s * s
+    s3, s8 = s2 * s, (s2 * s2) ** 2
+    f0 = 0.1445 - 0.330 * s - 0.1385 * s2 - 0.0121 * s3 - 0.000607 * s8
+    return f0, 0.0637 + 0.331 * s2 - 0.423 * s3 - 0.008 * s8
 
 
 def _pitzer_curl(s: FloatArray) -> tuple[FloatArray, FloatArray]:

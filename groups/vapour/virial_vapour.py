@@ -31,6 +31,23 @@ from groups.vapour.second_virial import GAS_CONSTANT_KPA_CM3
 #: Largest |B P / RT| that is used, for a pure saturated vapour or in a mixture: beyond it the
 #: equation has no vapour root, and the value is held so that a search cannot run away.
 LARGEST_TERM = 0.5
+#: Sets of temperatures whose coefficients are kept.
+KEPT = 4
+
+
+@dataclass(frozen=True, slots=True)
+class _AtTemperature:
+    """What depends on temperature alone, of n temperatures.
+
+    B_ij (n, nc, nc) in cm3/mol, ln K_i (n, nc) in 1/kPa, ln phi_i of the saturated vapours, the
+    pressures they stand at in kPa and the liquid volumes over RT in 1/kPa, each (n, nc).
+    """
+
+    B: FloatArray
+    ln_constants: FloatArray
+    ln_saturated: FloatArray
+    saturation_kPa: FloatArray
+    liquid: FloatArray
 
 
 @dataclass(frozen=True, slots=True)
@@ -59,6 +76,9 @@ class VirialVapour:
     saturation: tuple[SaturationLine, ...]
     liquid_volumes: tuple[LiquidVolume | None, ...]
     ideal: bool = field(default=False, init=False)
+    _recent: dict[bytes, _AtTemperature] = field(
+        default_factory=dict, init=False, repr=False, compare=False
+    )
 
     @property
     def associating(self) -> BoolArray:
@@ -79,13 +99,13 @@ class VirialVapour:
     ) -> FloatArray:
         """ln phi_i of the vapour, in the shape of `vapour` (n, n_components)."""
         reduced = pressure_kPa / (GAS_CONSTANT_KPA_CM3 * temperature_K)
-        B_ij = self.second_virials(temperature_K)
-        By = np.einsum("nij,nj->ni", B_ij, vapour)
+        at = self._at(temperature_K)
+        By = np.einsum("nij,nj->ni", at.B, vapour)
         B = (vapour * By).sum(axis=1)
         physical = (2.0 * By - B[:, None]) * reduced[:, None]
         if not self.associating.any():
             return np.asarray(physical)
-        dimers = dimer_equilibrium(self._ln_constants(temperature_K), pressure_kPa, vapour)
+        dimers = dimer_equilibrium(at.ln_constants, pressure_kPa, vapour)
         return np.asarray(physical + dimers.ln_monomer)
 
     def compressibility(
@@ -93,11 +113,11 @@ class VirialVapour:
     ) -> FloatArray:
         """Z = P V / (n R T) on apparent moles, of shape (n,)."""
         reduced = pressure_kPa / (GAS_CONSTANT_KPA_CM3 * temperature_K)
-        B = np.einsum("ni,nij,nj->n", vapour, self.second_virials(temperature_K), vapour)
+        at = self._at(temperature_K)
+        B = (np.einsum("nij,nj->ni", at.B, vapour) * vapour).sum(axis=1)
         true = np.ones(len(vapour))
         if self.associating.any():
-            ln_constants = self._ln_constants(temperature_K)
-            true = dimer_equilibrium(ln_constants, pressure_kPa, vapour).true_moles
+            true = dimer_equilibrium(at.ln_constants, pressure_kPa, vapour).true_moles
         return np.asarray(true + B * reduced)
 
     def ln_saturated(self, temperature_K: FloatArray) -> FloatArray:
@@ -105,25 +125,12 @@ class VirialVapour:
 
         Above its critical pressure a component has no saturated vapour; the value is held there.
         """
-        P = np.minimum(self._saturation_kPa(temperature_K), self._highest_kPa)
-        B = np.einsum("nii->ni", self.second_virials(temperature_K))
-        term = B * P / (GAS_CONSTANT_KPA_CM3 * temperature_K)[:, None]
-        ln_phi = np.clip(term, -LARGEST_TERM, LARGEST_TERM)
-        K = self._ln_constants(temperature_K)
-        for i in np.flatnonzero(self.associating):
-            alone = dimer_equilibrium(K[:, [i]], P[:, i], np.ones((len(P), 1)))
-            ln_phi[:, i] += alone.ln_monomer[:, 0]
-        return np.asarray(ln_phi)
+        return self._at(temperature_K).ln_saturated
 
     def ln_poynting(self, temperature_K: FloatArray, pressure_kPa: FloatArray) -> FloatArray:
         """ln of the Poynting factor of each pure liquid, of shape (n, n_components)."""
-        P = np.minimum(self._saturation_kPa(temperature_K), self._highest_kPa)
-        volume = np.zeros_like(P)
-        for i, liquid in enumerate(self.liquid_volumes):
-            if liquid is not None:
-                volume[:, i] = liquid.cm3_mol(temperature_K)
-        RT = GAS_CONSTANT_KPA_CM3 * temperature_K[:, None]
-        return np.asarray(volume * (pressure_kPa[:, None] - P) / RT)
+        at = self._at(temperature_K)
+        return np.asarray(at.liquid * (pressure_kPa[:, None] - at.saturation_kPa))
 
     def ln_correction(
         self, temperature_K: FloatArray, pressure_kPa: FloatArray, vapour: FloatArray
@@ -156,13 +163,35 @@ class VirialVapour:
 
     def _largest_pressure(self, temperature_K: FloatArray, vapour: FloatArray) -> FloatArray:
         """Pressure at which |B| P / RT of the mixture reaches LARGEST_TERM."""
-        B = np.einsum("ni,nij,nj->n", vapour, self.second_virials(temperature_K), vapour)
+        B = (np.einsum("nij,nj->ni", self._at(temperature_K).B, vapour) * vapour).sum(axis=1)
         size = np.maximum(np.abs(B), 1e-300)
         return np.asarray(LARGEST_TERM * GAS_CONSTANT_KPA_CM3 * temperature_K / size)
 
-    @property
-    def _highest_kPa(self) -> FloatArray:
-        return np.where(self.known, self.critical_pressure_kPa, np.inf)
+    def _at(self, temperature_K: FloatArray) -> _AtTemperature:
+        """The part that depends on temperature alone, kept because solvers ask for it again."""
+        key = temperature_K.tobytes()
+        found = self._recent.get(key)
+        if found is None:
+            found = self._evaluated(temperature_K)
+            if len(self._recent) >= KEPT:
+                self._recent.clear()
+            self._recent[key] = found
+        return found
+
+    def _evaluated(self, T: FloatArray) -> _AtTemperature:
+        B, K, RT = self.second_virials(T), self._ln_constants(T), GAS_CONSTANT_KPA_CM3 * T[:, None]
+        highest = np.where(self.known, self.critical_pressure_kPa, np.inf)
+        P = np.minimum(self._saturation_kPa(T), highest)
+        term = np.einsum("nii->ni", B) * P / RT
+        ln_phi = np.clip(term, -LARGEST_TERM, LARGEST_TERM)
+        for acid in np.flatnonzero(self.associating):
+            alone = dimer_equilibrium(K[:, [acid]], P[:, acid], np.ones((len(P), 1)))
+            ln_phi[:, acid] += alone.ln_monomer[:, 0]
+        liquid = np.zeros_like(P)
+        for i, volume in enumerate(self.liquid_volumes):
+            if volume is not None:
+                liquid[:, i] = volume.cm3_mol(T)
+        return _AtTemperature(B, K, ln_phi, P, liquid / RT)
 
     def _saturation_kPa(self, temperature_K: FloatArray) -> FloatArray:
         columns = [line.ln_kPa(temperature_K) for line in self.saturation]
