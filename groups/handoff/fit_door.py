@@ -2,14 +2,16 @@
 
 from collections.abc import Sequence
 from dataclasses import dataclass
-from itertools import combinations
 
 import numpy as np
 
-from groups.activity import ActivityModel, IdealModel, activity_model
+from groups.activity import GroupContributionModel, WeightedModel, activity_model
 from groups.activity.choice import OnMissing
 from groups.arrays import FloatArray
 from groups.confidence import Confidence, graded
+from groups.confidence.calibration import TableWeight
+from groups.equilibrium import LiquidModel
+from groups.equilibrium.subset import SubsetLiquid
 from groups.errors import InvalidInputError, OutOfRangeError
 from groups.handoff.correlations import FORMS
 from groups.handoff.correlations.build import equation_of
@@ -31,7 +33,6 @@ from groups.handoff.fits.formulation import ALPHA_BOUNDS
 from groups.handoff.fits.mixture import PairSigma
 from groups.handoff.fits.target import COMPOSITIONS, SIGMA_LN_GAMMA, TEMPERATURES
 from groups.handoff.sheets import ParameterSet, parameter_set
-from groups.prediction.answers import MethodUse
 from groups.prediction.boiling_mixture import BoilingMixture, boiling_mixture
 from groups.prediction.checks import check_components, check_pressures
 from groups.prediction.component import Component
@@ -55,7 +56,7 @@ class FitAnswer:
     components : tuple of Molecule
     method : str
         The table whose prediction was fitted.
-    methods_used : tuple of MethodUse
+    methods_used : tuple of TableWeight
     temperature_range_K : tuple of float
     pressure_kPa : float or None
         At which azeotropes were compared.
@@ -69,7 +70,7 @@ class FitAnswer:
 
     components: tuple[Molecule, ...]
     method: str
-    methods_used: tuple[MethodUse, ...]
+    methods_used: tuple[TableWeight, ...]
     temperature_range_K: tuple[float, float]
     pressure_kPa: float | None
     fit: MixtureFit
@@ -152,7 +153,6 @@ def fit(
     span = temperature_range_K or _boiling_range(boiling, pressure_kPa)
     T, x1 = fit_grid(span, temperatures, compositions)
     own = _sizes(model, mixture.molecules, wilson_volumes=wilson_volumes)
-    binaries = _binaries(mixture)
     lines = None if boiling is None else boiling.lines
     found = fit_mixture(
         mixture.model,
@@ -163,7 +163,7 @@ def fit(
         form,
         alpha=alpha,
         constants=own.constants,
-        pair_liquid=lambda i, j: binaries[i, j],
+        pair_liquid=lambda i, j: _pair_model(mixture.model, mixture.molecules, (i, j)),
         boiling=None
         if lines is None or pressure_kPa is None
         else lambda i, j: Boiling((lines[i], lines[j]), pressure_kPa),
@@ -255,15 +255,17 @@ def _sizes(model: str, molecules: Sequence[Molecule], *, wilson_volumes: bool) -
     return _Sizes(PairConstants(), None, None)
 
 
-def _binaries(mixture: Liquid) -> dict[tuple[int, int], ActivityModel]:
-    """Each pair's own small model by the same table: the same numbers as the mixture's, sooner."""
-    pairs = list(combinations(range(len(mixture.molecules)), 2))
-    if len(pairs) == 1:
-        return {(0, 1): mixture.model}
-    if mixture.method == "ideal":
-        return dict.fromkeys(pairs, IdealModel(2))
-    counts = [assign(molecule, mixture.method).counts for molecule in mixture.molecules]
-    return {(i, j): activity_model([counts[i], counts[j]], mixture.method) for i, j in pairs}
+def _pair_model(
+    model: LiquidModel, molecules: Sequence[Molecule], pair: tuple[int, int]
+) -> LiquidModel:
+    """A pair's own small model by the same tables: the mixture's numbers, sooner."""
+    if isinstance(model, WeightedModel):
+        parts = [_pair_model(part, molecules, pair) for part in model.models]
+        return WeightedModel(tuple(parts), model.weights)  # type: ignore[arg-type]
+    if isinstance(model, GroupContributionModel):
+        counts = [assign(molecules[k], model.method).counts for k in pair]
+        return activity_model(counts, model.method)
+    return SubsetLiquid(model, pair)
 
 
 def _named(molecule: Molecule) -> Molecule:

@@ -113,13 +113,14 @@ def point_deviations(
     found: list[PointDeviation] = []
     if lines is not None and len(points.vapour_liquid.number):
         found += _boiling(points, System(model, lines, vapour or IdealVapour()))
-    d = points.dilute
+    d = points.activities
     if len(d.number):
-        x1 = d.solute.astype(np.float64)  # component 1 dilute is x1 = 0
-        ln_gamma = model.ln_gamma(d.temperature_K, np.stack([x1, 1.0 - x1], axis=-1))
+        ln_gamma = model.ln_gamma(d.temperature_K, np.stack([d.x1, 1.0 - d.x1], axis=-1))
         own = ln_gamma[np.arange(len(d.number)), d.solute]
-        where = (d.number, d.temperature_K, x1)
-        found += _listed("ln_gamma_infinite", "1", *where, d.ln_gamma, own)
+        infinite = np.where(d.solute == 0, d.x1 == 0.0, d.x1 == 1.0)
+        for name, kept in (("ln_gamma_infinite", infinite), ("ln_gamma", ~infinite)):
+            where = (d.number[kept], d.temperature_K[kept], d.x1[kept])
+            found += _listed(name, "1", *where, d.ln_gamma[kept], own[kept])
     h = points.enthalpies
     if len(h.number):
         x = np.stack([h.x1, 1.0 - h.x1], axis=-1)

@@ -16,6 +16,10 @@ DEFAULT_U_TEMPERATURE_K = 0.05
 DEFAULT_U_PRESSURE = 0.005  # relative
 DEFAULT_U_X = 0.002
 DEFAULT_U_Y = 0.005
+#: Within this distance of a pure end the uncertainty of a fraction falls in proportion to it, that
+#: of y not below this share.
+END = 0.05
+LEAST_SHARE = 0.1
 DEFAULT_U_LN_GAMMA = 0.05
 DEFAULT_U_SOLUBILITY = 0.05  # relative, of the smaller fraction
 DEFAULT_U_ENTHALPY = 0.02  # relative, and at least 5 J/mol
@@ -55,11 +59,15 @@ class VapourLiquidPoints:
 
 
 @dataclass(frozen=True, slots=True)
-class DilutePoints:
-    """ln gamma at infinite dilution; `solute` is 0 or 1; arrays of shape (n,)."""
+class ActivityPoints:
+    """ln gamma of one component; `solute` is 0 or 1; arrays of shape (n,).
+
+    At infinite dilution `x1` is 0 for component 1 and 1 for component 2.
+    """
 
     number: IntArray
     temperature_K: FloatArray
+    x1: FloatArray
     solute: IntArray
     ln_gamma: FloatArray
     u_ln_gamma: FloatArray
@@ -96,25 +104,25 @@ class Measurements:
     """Everything measured of one binary; kinds that were not measured have no points."""
 
     vapour_liquid: VapourLiquidPoints
-    dilute: DilutePoints
+    activities: ActivityPoints
     solubilities: SolubilityPoints
     enthalpies: EnthalpyPoints
 
     @property
     def n_points(self) -> int:
         """Number of points of all kinds."""
-        kinds = (self.vapour_liquid, self.dilute, self.solubilities, self.enthalpies)
+        kinds = (self.vapour_liquid, self.activities, self.solubilities, self.enthalpies)
         return sum(len(kind.number) for kind in kinds)
 
     @property
     def temperatures_K(self) -> FloatArray:
         """Temperatures of all points together, of shape (n_points,)."""
-        kinds = (self.vapour_liquid, self.dilute, self.solubilities, self.enthalpies)
+        kinds = (self.vapour_liquid, self.activities, self.solubilities, self.enthalpies)
         return np.concatenate([kind.temperature_K for kind in kinds])
 
     def swapped(self) -> "Measurements":
         """The same numbers as if the two components had been named the other way round."""
-        v, d, s, h = self.vapour_liquid, self.dilute, self.solubilities, self.enthalpies
+        v, d, s, h = self.vapour_liquid, self.activities, self.solubilities, self.enthalpies
         return Measurements(
             VapourLiquidPoints(
                 v.number,
@@ -127,7 +135,9 @@ class Measurements:
                 v.u_x1,
                 v.u_y1,
             ),
-            DilutePoints(d.number, d.temperature_K, 1 - d.solute, d.ln_gamma, d.u_ln_gamma),
+            ActivityPoints(
+                d.number, d.temperature_K, 1.0 - d.x1, 1 - d.solute, d.ln_gamma, d.u_ln_gamma
+            ),
             SolubilityPoints(
                 s.number, s.temperature_K, 1.0 - s.x1_rich, 1.0 - s.x1_poor, s.u_ln[:, ::-1]
             ),

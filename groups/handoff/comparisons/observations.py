@@ -4,7 +4,7 @@ Every residual is explicit in ln gamma at a measured state, so no boiling point 
 
     boiling pressure   [ln P(T, x) - ln P measured] / sigma, P = sum_i x_i gamma_i Psat_i
     vapour             [y1(T, x) - y1 measured] / sigma
-    infinite dilution  [ln gamma - ln gamma measured] / sigma
+    activity           [ln gamma - ln gamma measured] / sigma
     two liquids        [ln(x_i gamma_i) poor - rich] / sigma, i = 1, 2
     excess enthalpy    [hE(T, x) - hE measured] / sigma
 
@@ -28,7 +28,7 @@ from groups.equilibrium.system import SaturationLine
 from groups.handoff.comparisons.measurements import Measurements
 
 Quantity = str
-QUANTITIES = ("pressure", "vapour", "ln_gamma_infinite", "two_liquids", "excess_enthalpy")
+QUANTITIES = ("pressure", "vapour", "ln_gamma", "two_liquids", "excess_enthalpy")
 """What a residual is of; its index is `Observations.quantity`."""
 
 LnGamma = Callable[[FloatArray, FloatArray], FloatArray]
@@ -44,7 +44,7 @@ class Observations:
     Attributes
     ----------
     temperature_K, fractions : FloatArray of shape (n,) and (n, 2)
-        States at which ln gamma is needed: boiling points, dilute ends, poor and rich liquids.
+        States at which ln gamma is needed: boiling points, activities, poor and rich liquids.
     number, quantity, x1 : arrays of shape (N,)
         Of each residual: the user's point, an index of `QUANTITIES`, and the mole fraction by
         which it belongs to a region.
@@ -62,9 +62,9 @@ class Observations:
     sigma_ln_pressure: FloatArray
     y1: FloatArray
     sigma_y1: FloatArray
-    dilute: int
+    activities: int
     solute: IntArray
-    ln_gamma_infinite: FloatArray
+    ln_gamma_measured: FloatArray
     sigma_ln_gamma: FloatArray
     liquids: int
     sigma_ln_activity: FloatArray
@@ -84,17 +84,17 @@ class Observations:
 
     def residuals(self, ln_gamma: FloatArray, enthalpy: FloatArray) -> FloatArray:
         """Weighted residuals (N,) from ln gamma (n, 2) at the states and hE (h,) in J/mol."""
-        b, d = self.boiling, self.boiling + self.dilute
+        b, d = self.boiling, self.boiling + self.activities
         ln_P, y1 = self.boil(ln_gamma[:b])
         some = self.with_vapour
-        at_ends = ln_gamma[b:d][np.arange(self.dilute), self.solute]
+        at_ends = ln_gamma[b:d][np.arange(self.activities), self.solute]
         ln_a = ln_gamma[d:] + np.log(np.maximum(self.fractions[d:], _TINY))
         poor, rich = ln_a[: self.liquids], ln_a[self.liquids :]
         return np.concatenate(
             [
                 (ln_P - self.ln_pressure) / self.sigma_ln_pressure,
                 (y1[some] - self.y1[some]) / self.sigma_y1[some],
-                (at_ends - self.ln_gamma_infinite) / self.sigma_ln_gamma,
+                (at_ends - self.ln_gamma_measured) / self.sigma_ln_gamma,
                 ((poor - rich) / self.sigma_ln_activity).reshape(-1),
                 (enthalpy - self.enthalpy_J_mol) / self.sigma_enthalpy,
             ]
@@ -104,13 +104,13 @@ class Observations:
         self, ln_gamma: FloatArray, slopes: FloatArray, enthalpy_slopes: FloatArray
     ) -> FloatArray:
         """d residuals / dp (N, P) from d ln gamma / dp (n, 2, P) and d hE / dp (h, P)."""
-        b, d = self.boiling, self.boiling + self.dilute
+        b, d = self.boiling, self.boiling + self.activities
         _, y1 = self.boil(ln_gamma[:b])
         y = np.stack([y1, 1.0 - y1], axis=-1)
         some = self.with_vapour
         pressure = (y[:, :, None] * slopes[:b]).sum(axis=1) / self.sigma_ln_pressure[:, None]
         twisted = (slopes[:b, 0] - slopes[:b, 1]) * (y[:, 0] * y[:, 1])[:, None]
-        at_ends = slopes[b:d][np.arange(self.dilute), self.solute]
+        at_ends = slopes[b:d][np.arange(self.activities), self.solute]
         poor, rich = slopes[d : d + self.liquids], slopes[d + self.liquids :]
         between = (poor - rich) / self.sigma_ln_activity[:, :, None]
         return np.concatenate(
@@ -160,12 +160,11 @@ def observations(
     -------
     Observations
     """
-    v, d, s, h = points.vapour_liquid, points.dilute, points.solubilities, points.enthalpies
+    v, d, s, h = points.vapour_liquid, points.activities, points.solubilities, points.enthalpies
     both = np.flatnonzero(np.isfinite(s.x1_poor) & np.isfinite(s.x1_rich))
     poor = _pair(s.x1_poor[both])
     rich = _pair(s.x1_rich[both])
     some = np.flatnonzero(np.isfinite(v.y1)).astype(np.int64)
-    ends = np.stack([d.solute, 1 - d.solute], axis=-1).astype(np.float64)
     middle = 0.5 * (s.x1_poor[both] + s.x1_rich[both])
     ln_sat, sigma_P, sigma_y = _boiling_weights(points, lines, reference, vapour or IdealVapour())
     counts = (len(v.number), len(some), len(d.number), 2 * len(both), len(h.number))
@@ -173,10 +172,10 @@ def observations(
         np.concatenate(
             [v.temperature_K, d.temperature_K, s.temperature_K[both], s.temperature_K[both]]
         ),
-        np.concatenate([v.fractions, ends, poor, rich]),
+        np.concatenate([v.fractions, _pair(d.x1), poor, rich]),
         np.concatenate([v.number, v.number[some], d.number, s.number[both].repeat(2), h.number]),
         np.repeat(np.arange(len(QUANTITIES)), counts),
-        np.concatenate([v.x1, v.x1[some], ends[:, 0], middle.repeat(2), h.x1]),
+        np.concatenate([v.x1, v.x1[some], d.x1, middle.repeat(2), h.x1]),
         len(v.number),
         some,
         ln_sat,

@@ -1,10 +1,11 @@
 """From rows as a user has them to measurements: columns, units, ranges, and what cannot be true.
 
 Columns (any subset): `temperature`, `pressure`, `x1`, `y1` (boiling states); `gamma_inf_1`,
-`gamma_inf_2` (component 1 dilute in 2, and the other way); `x1_poor`, `x1_rich` (two liquids);
-`excess_enthalpy` with `x1`. A unit may stand in the column's name (`temperature_C`,
-`pressure_mmHg`, `excess_enthalpy_kJ_mol`, `x1_mass`, `y1_mole_percent`) or in `units`.
-Uncertainties: `u_temperature`, `u_pressure`, `u_x1`, `u_y1`, `u_gamma_inf` (relative),
+`gamma_inf_2` (component 1 dilute in 2, and the other way); `gamma_1`, `gamma_2` with `x1`;
+`x1_poor`, `x1_rich` (two liquids); `excess_enthalpy` with `x1`.
+A unit may stand in the column's name (`temperature_C`, `pressure_mmHg`, `excess_enthalpy_kJ_mol`,
+`x1_mass`, `y1_mole_percent`) or in `units`.
+Uncertainties: `u_temperature`, `u_pressure`, `u_x1`, `u_y1`, `u_gamma` (relative),
 `u_excess_enthalpy`, in the unit of their quantity. A blank or missing cell was not measured.
 """
 
@@ -20,7 +21,7 @@ from groups.errors import MeasurementError, TooFewPointsError
 from groups.handoff.comparisons import measurements as own
 from groups.handoff.comparisons import units as unit_of
 from groups.handoff.comparisons.measurements import (
-    DilutePoints,
+    ActivityPoints,
     EnthalpyPoints,
     Measurements,
     SolubilityPoints,
@@ -37,7 +38,7 @@ _FRACTION_SUFFIX = {
     "mole": "mole fraction",
 }
 _FRACTIONS = ("x1", "y1", "x1_poor", "x1_rich")
-_PLAIN = ("gamma_inf_1", "gamma_inf_2", "u_x1", "u_y1", "u_gamma_inf")
+_PLAIN = ("gamma_inf_1", "gamma_inf_2", "gamma_1", "gamma_2", "u_x1", "u_y1", "u_gamma")
 _WITH_UNIT = {
     "temperature": tuple(unit_of.TEMPERATURE_UNITS),
     "pressure": tuple(unit_of.PRESSURE_UNITS),
@@ -132,7 +133,7 @@ def read_records(
         )
     table = _Table.of(records, units or Units(), molar_masses)
     found = Measurements(
-        _vapour_liquid(table), _dilute(table), _solubilities(table), _enthalpies(table)
+        _vapour_liquid(table), _activities(table), _solubilities(table), _enthalpies(table)
     )
     used = {int(n) for kind in _kinds(found) for n in kind}
     idle = [k for k in range(len(records)) if k not in used]
@@ -142,14 +143,15 @@ def read_records(
             f"point {idle[0]}.",
             points=idle,
             cure="A point needs a temperature and: pressure with x1; or gamma_inf_1 or "
-            "gamma_inf_2; or x1_poor or x1_rich; or excess_enthalpy with x1.",
+            "gamma_inf_2 (or gamma_1 or gamma_2 with x1); or x1_poor or x1_rich; or "
+            "excess_enthalpy with x1.",
             field=f"points[{idle[0]}]",
         )
     return found
 
 
 def _kinds(found: Measurements) -> tuple[IntArray, ...]:
-    kinds = (found.vapour_liquid, found.dilute, found.solubilities, found.enthalpies)
+    kinds = (found.vapour_liquid, found.activities, found.solubilities, found.enthalpies)
     return tuple(kind.number for kind in kinds)
 
 
@@ -227,8 +229,9 @@ def _meaning(name: str) -> tuple[str, str | None]:
             return quantity, _FRACTION_SUFFIX[suffix]
     raise MeasurementError(
         f"The column '{name}' is not known.",
-        cure="Known: temperature, pressure, x1, y1, gamma_inf_1, gamma_inf_2, x1_poor, x1_rich, "
-        "excess_enthalpy and u_ of each; a unit may follow the name, as in temperature_C.",
+        cure="Known: temperature, pressure, x1, y1, gamma_inf_1, gamma_inf_2, gamma_1, gamma_2, "
+        "x1_poor, x1_rich, excess_enthalpy, and u_temperature, u_pressure, u_x1, u_y1, u_gamma, "
+        "u_excess_enthalpy; a unit may follow the name, as in temperature_C.",
         field=f"points[0].{name}",
     )
 
@@ -355,21 +358,30 @@ def _vapour_liquid(table: _Table) -> VapourLiquidPoints:
         y[k],
         _or(table.get("u_temperature")[k], own.DEFAULT_U_TEMPERATURE_K),
         _or(table.get("u_pressure")[k], own.DEFAULT_U_PRESSURE * P[k]),
-        _or(table.get("u_x1")[k], own.DEFAULT_U_X),
-        _or(table.get("u_y1")[k], own.DEFAULT_U_Y),
+        _or(table.get("u_x1")[k], own.DEFAULT_U_X * _inside(x[k])),
+        _or(table.get("u_y1")[k], own.DEFAULT_U_Y * np.maximum(_inside(y[k]), own.LEAST_SHARE)),
     )
 
 
-def _dilute(table: _Table) -> DilutePoints:
-    T = table.get("temperature")
-    u = _or(table.get("u_gamma_inf"), own.DEFAULT_U_LN_GAMMA)
+def _inside(fraction: FloatArray) -> FloatArray:
+    """1 within the diagram, falling to 0 at its ends: a pure component is known to be one."""
+    return np.minimum(1.0, np.minimum(fraction, 1.0 - fraction) / own.END)
+
+
+def _activities(table: _Table) -> ActivityPoints:
+    T, x = table.get("temperature"), table.get("x1")
+    u = _or(table.get("u_gamma"), own.DEFAULT_U_LN_GAMMA)
     parts = []
     for solute in (0, 1):
-        gamma = table.get(f"gamma_inf_{solute + 1}")
-        k = np.flatnonzero(np.isfinite(T) & np.isfinite(gamma))
-        parts.append((k, T[k], np.full(len(k), solute), np.log(gamma[k]), u[k]))
-    number, T, solute_of, ln_gamma, u = (np.concatenate(p) for p in zip(*parts, strict=True))
-    return DilutePoints(number.astype(np.int64), T, solute_of.astype(np.int64), ln_gamma, u)
+        for name, at in (
+            (f"gamma_inf_{solute + 1}", np.full(table.n, float(solute))),
+            (f"gamma_{solute + 1}", x),
+        ):
+            gamma = table.get(name)
+            k = np.flatnonzero(np.isfinite(T) & np.isfinite(gamma) & np.isfinite(at))
+            parts.append((k, T[k], at[k], np.full(len(k), solute), np.log(gamma[k]), u[k]))
+    number, T, at, solutes, ln_gamma, u = (np.concatenate(p) for p in zip(*parts, strict=True))
+    return ActivityPoints(number.astype(np.int64), T, at, solutes.astype(np.int64), ln_gamma, u)
 
 
 def _solubilities(table: _Table) -> SolubilityPoints:

@@ -96,9 +96,15 @@ def _fitted_words(
     text = (
         f"Take {trial.name} fitted to these points: it misses points left out of the fit by "
         f"{fit.cross_validated_rms:.1f} standard deviations (AICc {fit.aicc:.1f}). "
-        f"It holds for {holds}.{beside}"
+        f"It holds for {holds}.{_scatter(fit.cross_validated_rms)}{beside}"
     )
     return Recommendation(trial.name, "fitted", regional, holds, text)
+
+
+def _scatter(rms: float) -> str:
+    if rms <= DESCRIBES:
+        return ""
+    return " That is far more than their stated uncertainty: look at the points first."
 
 
 def _predicted_words(
@@ -114,7 +120,8 @@ def _predicted_words(
         names = "; ".join(f"{region}: {name} ({rms:.1f})" for region, name, rms in regional)
         text = (
             f"No prediction describes these points within {DESCRIBES:.0f} standard deviations; the "
-            f"nearest is {best.name} ({best.weighted_rms:.1f}). By region: {names}. Also {why_no_fit}."
+            f"nearest is {best.name} ({best.weighted_rms:.1f}). By region: {names}. "
+            f"Also {why_no_fit}."
         )
         return Recommendation(None, None, regional, where, text)
     text = (

@@ -40,7 +40,7 @@ class PointFit:
     aicc : float
         Akaike's information criterion for small samples; lower is better, differences count.
     cross_validated_rms : float
-        The same for points left out of the fit; NaN with fewer than four points.
+        The same for points left out of the fit; NaN where too few are left to fit.
     folds : int
     residuals : FloatArray of shape (N,)
     """
@@ -88,6 +88,7 @@ def fit_points(
     *,
     alpha: float | None = 0.3,
     constants: PairConstants | None = None,
+    most_folds: int = MOST_FOLDS,
 ) -> PointFit:
     """Fit one correlative equation to measured points.
 
@@ -103,6 +104,8 @@ def fit_points(
     alpha : float or None
         Non-randomness of NRTL; None to fit it.
     constants : PairConstants, optional
+    most_folds : int
+        Of the cross-validation; 0 to go without.
 
     Returns
     -------
@@ -130,7 +133,7 @@ def fit_points(
     how, found = _best_form(name, forms, points, seen, alpha, constants)
     N, P = seen.n_residuals, how.n_parameters
     covariance = pair_covariance(how, found, independent=True)
-    rms, folds = _cross_validated(how, seen, found)
+    rms, folds = _cross_validated(how, seen, found, most_folds)
     return PointFit(
         name,
         how.form,
@@ -158,7 +161,7 @@ def _best_form(
     best: tuple[float, Formulation, Solution] | None = None
     for form in forms:
         how = formulation(name, form, _span(points), alpha=alpha, constants=constants)
-        if N <= how.n_parameters:
+        if how.n_parameters >= N:
             break
         found = solve(_PointResiduals(how, seen, np.arange(N)), _starts(how, points, seen))
         score = akaike(2.0 * found.cost, N, how.n_parameters)
@@ -261,15 +264,19 @@ def _margules_size(seen: Observations) -> float:
         excess = seen.ln_pressure - ideal
         total = float((weight**2).sum())
         return float((weight * excess).sum() / total) if total > 0.0 else 0.5
-    if seen.dilute:
-        return float(seen.ln_gamma_infinite.mean())
+    if seen.activities:
+        return float(seen.ln_gamma_measured.mean())
     return 2.5 if seen.liquids else 0.5
 
 
-def _cross_validated(how: Formulation, seen: Observations, found: Solution) -> tuple[float, int]:
+def _cross_validated(
+    how: Formulation, seen: Observations, found: Solution, most: int
+) -> tuple[float, int]:
     """Root mean square of the residuals of points left out, over folds in the order of x1."""
     numbers = np.unique(seen.number)
-    folds = min(MOST_FOLDS, len(numbers))
+    folds = min(most, len(numbers))
+    if folds < 2:
+        return float("nan"), 0
     first = np.array([seen.x1[seen.number == n][0] for n in numbers])
     order = numbers[np.argsort(first, kind="stable")]
     size = int(seen.number.max()) + 1

@@ -77,7 +77,7 @@ def fit_mixture(
     refused: list[RefusedPair] = []
     constants = constants or PairConstants()
     for (i, j), target in _targets(liquid, temperature_K, x1, sigma):
-        binary = pair_liquid(i, j) if pair_liquid else SubsetLiquid(liquid, (i, j))
+        binary = pair_liquid(i, j) if pair_liquid else _binary(liquid, i, j)
         try:
             fits.append(
                 fit_pair(
@@ -100,6 +100,10 @@ def fit_mixture(
         whole = assembled(fits, n, constants)
     triples = () if whole is None else _triples(liquid, whole, temperature_K)
     return MixtureFit(tuple(fits), tuple(refused), whole, triples)
+
+
+def _binary(liquid: LiquidModel, i: int, j: int) -> LiquidModel:
+    return liquid if liquid.n_components == 2 else SubsetLiquid(liquid, (i, j))
 
 
 def _targets(
