@@ -12,8 +12,6 @@ from groups.vapour.psrk.saturation_search import SaturationProblem
 from groups.vapour.psrk.tangent_plane import NOTHING, tangent_plane
 
 HALVINGS = 10
-#: Grid points are taken this many at a time, so that memory stays bounded.
-CHUNK = 4000
 
 
 def scanned_by_stability(problem: SaturationProblem) -> tuple[FloatArray, FloatArray, BoolArray]:
@@ -52,10 +50,6 @@ def scanned_by_stability(problem: SaturationProblem) -> tuple[FloatArray, FloatA
 def _judged(
     problem: SaturationProblem, rows: IntArray, s: FloatArray
 ) -> tuple[BoolArray, FloatArray]:
-    stable, trial = np.ones(len(s), dtype=bool), np.zeros((len(s), problem.z.shape[1]))
-    for start in range(0, len(s), CHUNK):
-        part = slice(start, start + CHUNK)
-        T, P = problem.conditions(rows[part], s[part])
-        judged = tangent_plane(problem.model, T, P, problem.z[rows[part]])
-        stable[part], trial[part] = judged.stable, judged.trial
-    return stable, trial
+    T, P = problem.conditions(rows, s)
+    judged = tangent_plane(problem.model, T, P, problem.z[rows])
+    return judged.stable, judged.trial

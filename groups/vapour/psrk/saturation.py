@@ -31,8 +31,10 @@ from groups.vapour.psrk.saturation_search import (
     scanned,
     trial_fractions,
 )
-from groups.vapour.psrk.states import EosStates, verified_points, with_rows
+from groups.vapour.psrk.states import EosStates, joined, verified_points, with_rows
 
+#: Points taken at a time: the scan holds the whole grid of each.
+BATCH = 1000
 NOT_FOUND = (
     "no {kind} {sought} was found: the mixture may have none at these conditions (beyond its "
     "critical point)"
@@ -159,6 +161,11 @@ def psrk_dew_temperature(
 
 def _points(problem: SaturationProblem) -> EosStates:
     n = len(problem.z)
+    if n > BATCH:
+        rows = [slice(start, start + BATCH) for start in range(0, n, BATCH)]
+        return joined(
+            [_points(replace(problem, fixed=problem.fixed[k], z=problem.z[k])) for k in rows]
+        )
     s, u, found = np.zeros(n), np.zeros_like(problem.z), np.zeros(n, dtype=bool)
     if n:
         by_plane = problem.patient and problem.kind == "dew"

@@ -1,5 +1,6 @@
 """States of two phases by the equation of state, verified before anyone sees them."""
 
+from collections.abc import Sequence
 from dataclasses import dataclass, fields
 
 import numpy as np
@@ -135,6 +136,12 @@ def verified_points(
         residual,
         texts,
     )
+
+
+def joined(parts: Sequence[EosStates]) -> EosStates:
+    """The states of several batches, one after the other."""
+    columns = {name: np.concatenate([getattr(p, name) for p in parts]) for name in ARRAYS}
+    return EosStates(**columns, failure=tuple(text for part in parts for text in part.failure))
 
 
 def with_rows(states: EosStates, rows: IntArray, better: EosStates, lost: str) -> EosStates:

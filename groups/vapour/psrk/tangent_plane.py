@@ -24,6 +24,8 @@ MARGIN = 1e-7
 #: Trials closer than this to the phase itself are the phase itself.
 SAME = 1e-5
 SMALLEST_CURVATURE = 0.02
+#: Phases judged at a time, so that memory stays bounded.
+BATCH = 4000
 #: ln of what stands for no amount at all.
 NOTHING = -690.0
 
@@ -80,7 +82,18 @@ def tangent_plane(
     ------
     See the head of this module.
     """
-    z = fractions
+    n = len(fractions)
+    parts = [
+        _judged(model, temperature_K[k], pressure_kPa[k], fractions[k])
+        for k in (slice(start, start + BATCH) for start in range(0, max(n, 1), BATCH))
+    ]
+    stable, trial, distance = (np.concatenate(column) for column in zip(*parts, strict=True))
+    return EosStability(stable, trial, distance)
+
+
+def _judged(
+    model: PsrkModel, temperature_K: FloatArray, pressure_kPa: FloatArray, z: FloatArray
+) -> tuple[BoolArray, FloatArray, FloatArray]:
     itself = phase(model, temperature_K, pressure_kPa, z, "stable")
     d = np.maximum(safe_log(z), NOTHING) + itself.ln_phi
     starts = _starts(model, temperature_K, pressure_kPa, z, itself.ln_phi)
@@ -96,7 +109,7 @@ def tangent_plane(
     lowest = height[best, rows]
     unstable = lowest < -MARGIN
     trial = np.where(unstable[:, None], w.reshape(s, n, nc)[best, rows], z)
-    return EosStability(~unstable, trial, np.where(np.isfinite(lowest), lowest, 0.0))
+    return ~unstable, trial, np.where(np.isfinite(lowest), lowest, 0.0)
 
 
 def _starts(

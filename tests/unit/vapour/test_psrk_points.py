@@ -112,3 +112,21 @@ def test_solubility_at_little_pressure_is_that_of_henry():
         gas_solubility(found, 0, 298.15, 1000.0, [0.5, 0.5])
     boiling = gas_solubility(found, 0, 298.15, 5.0, [0.0, 1.0])
     assert not boiling.converged[0] and "boils" in (boiling.failure[0] or "")
+
+
+def test_many_points_at_once_are_those_of_one_at_a_time():
+    found = model("CCO", "O")
+    x1 = np.linspace(0.0, 1.0, 1300)
+    x = np.stack([x1, 1.0 - x1], axis=1)
+    many = psrk_bubble_temperature(found, 101.325, x)
+    assert many.converged.all() and len(many.failure) == 1300
+    for k in (0, 999, 1000, 1299):
+        one = psrk_bubble_temperature(found, 101.325, x[k])
+        # Both stop within 1e-11 of their equations; neighbours may share a different start.
+        assert many.temperature_K[k] == pytest.approx(one.temperature_K[0], abs=1e-8)
+
+
+def test_no_points_give_no_states():
+    found = model("CCO", "O")
+    assert psrk_bubble_pressure(found, [], np.zeros((0, 2))).failure == ()
+    assert psrk_flash(found, [], [], np.zeros((0, 2))).phase == ()
