@@ -2,24 +2,17 @@
 
 from math import exp, log
 
-from groups.confidence.confidence import Grade, Reason
+from groups.confidence.confidence import Reason
 
-# Differences in ln gamma between published tables, and the grade they leave. The measured error
-# of ln gamma-infinity in each band stands in the README (made by tests/bench).
-AGREE = 0.10
+# Difference in ln gamma beyond which tables are said to disagree: three times the scatter of
+# repeated measurements.
 DISAGREE = 0.30
-DISAGREE_STRONGLY = 0.70
-
-
-def disagreement_cap(spread_ln_gamma: float) -> Grade:
-    """The best grade that a spread between tables leaves."""
-    if spread_ln_gamma <= AGREE:
-        return "high"
-    return "moderate" if spread_ln_gamma <= DISAGREE_STRONGLY else "low"
 
 
 def agreement_reasons(method: str, spreads: dict[str, float]) -> list[Reason]:
     """What other published tables say of the same number.
+
+    The interval already grows with the disagreement, so these reasons cap no grade.
 
     Parameters
     ----------
@@ -28,13 +21,13 @@ def agreement_reasons(method: str, spreads: dict[str, float]) -> list[Reason]:
     spreads : dict of str to float
         Other tables and their largest absolute difference in ln gamma from it.
     """
+    own = "the weighted choice" if method == "auto" else method
     if not spreads:
         return [
             Reason(
                 "no_second_table",
-                f"No other published table describes this mixture, so nothing checks {method}.",
+                f"No other published table describes this mixture, so nothing checks {own}.",
                 method,
-                "moderate",
             )
         ]
     farthest = max(spreads, key=lambda other: spreads[other])
@@ -44,18 +37,16 @@ def agreement_reasons(method: str, spreads: dict[str, float]) -> list[Reason]:
         return [
             Reason(
                 "tables_agree",
-                f"Published tables agree with {method} within {spread:.2f} in ln gamma ({named}).",
+                f"Published tables agree with {own} within {spread:.2f} in ln gamma ({named}).",
                 method,
-                disagreement_cap(spread),
             )
         ]
     return [
         Reason(
             "tables_disagree",
-            f"Published tables disagree: {farthest} differs from {method} by {spread:.2f} in "
+            f"Published tables disagree: {farthest} differs from {own} by {spread:.2f} in "
             f"ln gamma, {_factor(spread)} in gamma ({named}).",
             f"{method} / {farthest}",
-            disagreement_cap(spread),
         )
     ]
 

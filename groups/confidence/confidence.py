@@ -66,18 +66,56 @@ def worst_grade(grades: Iterable[Grade]) -> Grade:
     return max(grades, key=GRADES.index, default="high")
 
 
-def graded(reasons: Iterable[Reason], evidence: Iterable[Evidence] = ()) -> Confidence:
-    """Confidence from reasons alone: the grade is the lowest cap among them.
+def graded(
+    reasons: Iterable[Reason],
+    evidence: Iterable[Evidence] = (),
+    *,
+    interval: Interval | None = None,
+    half_width_ln: float | None = None,
+) -> Confidence:
+    """Confidence of a number: the grade of its interval, capped by the reasons that bind.
 
     Parameters
     ----------
     reasons : iterable of Reason
         Duplicates are dropped, the gravest come first.
     evidence : iterable of Evidence
+    interval : Interval, optional
+        The 90 % interval, in the unit of the number it stands beside.
+    half_width_ln : float, optional
+        Half-width in ln units that decides the grade; that of the interval where not given.
 
     Returns
     -------
     Confidence
     """
     unique = sorted(dict.fromkeys(reasons), key=lambda r: -GRADES.index(r.cap))
-    return Confidence(worst_grade(r.cap for r in unique), tuple(unique), None, tuple(evidence))
+    if half_width_ln is None and interval is not None:
+        half_width_ln = (interval.upper - interval.lower) / 2.0
+    grades = [reason.cap for reason in unique]
+    if half_width_ln is not None:
+        grades.append(grade_of_half_width(half_width_ln))
+    return Confidence(worst_grade(grades), tuple(unique), interval, tuple(evidence))
+
+
+# Half-width of the 90 % interval of ln gamma (or ln K) up to which each grade is given: a factor
+# 1.35 and 1.8. Anything wider is "low"; "none" is left for numbers that could not be had.
+THRESHOLDS: tuple[tuple[Grade, float], ...] = (("high", 0.30), ("moderate", 0.60))
+
+
+def grade_of_half_width(half_width_ln: float) -> Grade:
+    """The grade of a number whose logarithm is known to within a half-width.
+
+    Parameters
+    ----------
+    half_width_ln : float
+        Half the width of the 90 % interval in ln units.
+
+    Returns
+    -------
+    Grade
+        "none" where the width is not a number.
+    """
+    if half_width_ln != half_width_ln:
+        return "none"
+    return next((grade for grade, most in THRESHOLDS if half_width_ln <= most), "low")

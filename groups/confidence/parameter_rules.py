@@ -3,13 +3,8 @@
 from collections.abc import Iterable, Sequence
 from itertools import combinations
 
-from groups.confidence.confidence import Grade, Reason
+from groups.confidence.confidence import Reason
 from groups.parameters import MethodTable
-
-# Common practice, no source: a few kelvin beyond the range cost nothing (room temperature lies
-# 2 K below the range of one table); far beyond it the psi(T) form is a guess.
-JUST_OUTSIDE_K = 5.0
-FAR_OUTSIDE_K = 50.0
 
 
 def pair_name(table: MethodTable, pair: tuple[int, int]) -> str:
@@ -56,7 +51,6 @@ def suspect_reasons(table: MethodTable, main_numbers: Sequence[int]) -> list[Rea
             f"The parameter of {table.method} for {pair_name(table, pair)} failed the audit: "
             f"{table.suspects[pair]}.",
             pair_name(table, pair),
-            "low",
         )
         for pair in combinations(sorted(main_numbers), 2)
         if pair in table.suspects
@@ -81,15 +75,8 @@ def temperature_reasons(table: MethodTable, lowest_K: float, highest_K: float) -
             f"{outside:.0f} K {side} the range of {table.method} "
             f"({lower:.0f} to {upper:.0f} K){trend}.",
             _range(lowest_K, highest_K),
-            _outside_cap(outside),
         )
     ]
-
-
-def _outside_cap(outside_K: float) -> Grade:
-    if outside_K <= JUST_OUTSIDE_K:
-        return "high"
-    return "low" if outside_K > FAR_OUTSIDE_K else "moderate"
 
 
 def _range(lowest_K: float, highest_K: float) -> str:

@@ -1,4 +1,8 @@
-"""Reasons that come from the molecules themselves, whatever the table."""
+"""Reasons that come from the molecules themselves, whatever the table.
+
+The calibrated interval is wider for such molecules as far as measurements show it, so these
+reasons cap no grade: they say why the interval is as wide as it is.
+"""
 
 from collections import Counter
 from collections.abc import Mapping, Sequence
@@ -30,7 +34,6 @@ def polar_reasons(molecules: Sequence[Molecule]) -> list[Reason]:
                     "and change one another (induction, internal hydrogen bonds), which group "
                     "methods do not see.",
                     label(molecule),
-                    "moderate",
                 )
             )
         elif len(polar) > 1:
@@ -40,7 +43,6 @@ def polar_reasons(molecules: Sequence[Molecule]) -> list[Reason]:
                     f"{label(molecule)} carries {len(polar)} polar groups; most parameters were "
                     "fitted to molecules with one.",
                     label(molecule),
-                    "moderate",
                 )
             )
     return reasons
@@ -60,7 +62,6 @@ def polyol_reasons(molecules: Sequence[Molecule]) -> list[Reason]:
             f"{label(molecule)} is a polyol; with every published table such mixtures, above all "
             "with water, can be off by a quarter to two thirds in pressure.",
             label(molecule),
-            "low",
         )
         for molecule in molecules
         if molecule_facts(molecule).is_polyol
@@ -76,7 +77,6 @@ def size_reasons(molecules: Sequence[Molecule]) -> list[Reason]:
             "atoms; the combinatorial part is uncertain there and the original form overstates "
             "the negative deviation.",
             label(molecule),
-            "moderate",
         )
         for molecule in molecules
         if molecule_facts(molecule).longest_chain > LONG_CHAIN_ATOMS
@@ -91,7 +91,6 @@ def size_reasons(molecules: Sequence[Molecule]) -> list[Reason]:
                 f"{label(big)} is {largest / smallest:.0f} times the size of {label(small)}; "
                 "free-volume effects that no group method holds become felt.",
                 f"{label(big)} / {label(small)}",
-                "moderate",
             )
         )
     return reasons
@@ -105,10 +104,9 @@ def water_reasons(molecules: Sequence[Molecule]) -> list[Reason]:
         Reason(
             "hydrophobe_in_water",
             f"{label(molecule)} and water barely dissolve in each other, and a dilute activity "
-            "coefficient there is the hardest number for a group method. "
+            f"coefficient there is the hardest number for a group method. "
             f"{_error_in_water(molecule)}",
             label(molecule),
-            "low",
         )
         for molecule in molecules
         if molecule_facts(molecule).is_hydrophobe
@@ -138,7 +136,6 @@ def isomer_reasons(
             f"{label(first)} and {label(second)} consist of the same groups; the method sees no "
             "difference between them but their vapour pressures.",
             f"{label(first)} / {label(second)}",
-            "moderate",
         )
         for (first, a), (second, b) in combinations(zip(molecules, assignments, strict=True), 2)
         if a.counts == b.counts
@@ -162,7 +159,6 @@ def ambiguity_reasons(
             f"{label(molecule)} can be split into groups in another, equally good way, which "
             f"changes ln gamma by {changes_ln_gamma[molecule.canonical_smiles]:.2f}.",
             label(molecule),
-            "moderate",
         )
         for molecule in molecules
         if changes_ln_gamma.get(molecule.canonical_smiles, 0.0) > 0.1

@@ -7,7 +7,6 @@ from groups.prediction.answers import (
     DiagramAnswer,
     InfiniteDilutionAnswer,
     LiquidSplitAnswer,
-    MethodUse,
     PhasePointAnswer,
 )
 from groups.prediction.assignments import assign_groups
@@ -29,7 +28,6 @@ __all__ = [
     "DiagramAnswer",
     "InfiniteDilutionAnswer",
     "LiquidSplitAnswer",
-    "MethodUse",
     "PhasePointAnswer",
     "activity_coefficients",
     "assign_groups",

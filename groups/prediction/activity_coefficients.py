@@ -11,9 +11,12 @@ from groups.arrays import FloatArray
 from groups.confidence import Confidence, graded
 from groups.errors import ShapeError
 from groups.prediction.answers import ActivityAnswer
+from groups.prediction.bands import LEVEL, Band, Drawn, drawn_around
 from groups.prediction.checks import check_components, check_fractions, check_temperatures
 from groups.prediction.component import Component
 from groups.prediction.liquid import Liquid, liquid
+
+BLOCK_POINTS = 512  # keeps the drawn numbers of one block within a few megabytes
 
 
 def activity_coefficients(
@@ -57,18 +60,25 @@ def activity_coefficients(
     temperatures = _one_a_point(check_temperatures(temperature_K), len(fractions))
     mixture = liquid(molecules, method, on_missing)
     combinatorial, residual = mixture.model.ln_gamma_parts(temperatures, fractions)
+    ln_gamma = combinatorial + residual
+    gibbs = excess_gibbs(mixture.model, temperatures, fractions)
+    ln_gamma_band, gibbs_band = _bands(
+        mixture, on_missing, temperatures, fractions, ln_gamma, gibbs
+    )
     return ActivityAnswer(
         tuple(molecules),
         mixture.method,
         mixture.methods_used,
         temperatures,
         fractions,
-        combinatorial + residual,
+        ln_gamma,
         combinatorial,
         residual,
-        excess_gibbs(mixture.model, temperatures, fractions),
+        gibbs,
         excess_enthalpy(mixture.model, temperatures, fractions),
-        _confidences(mixture, temperatures, fractions),
+        ln_gamma_band,
+        gibbs_band,
+        _confidences(mixture, temperatures, fractions, ln_gamma_band),
     )
 
 
@@ -83,8 +93,56 @@ def _one_a_point(temperatures: FloatArray, n_points: int) -> FloatArray:
     return np.broadcast_to(temperatures, (n_points,)).copy()
 
 
+def _bands(
+    mixture: Liquid,
+    on_missing: OnMissing,
+    temperatures: FloatArray,
+    fractions: FloatArray,
+    ln_gamma: FloatArray,
+    gibbs: FloatArray,
+) -> tuple[Band, Band] | tuple[None, None]:
+    """Intervals of ln gamma and gE/RT; none for an ideal solution that was asked for."""
+    if not mixture.compared:
+        return None, None
+    drawn = drawn_around(mixture.molecules, on_missing, float(np.median(temperatures)))
+    if drawn is None:
+        return None, None
+    centre = drawn.models.base.ln_gamma(temperatures, fractions)
+    lower, upper = _addition_ends(drawn, fractions)
+    energy = np.sum(fractions * centre, axis=-1)
+    gibbs_lower, gibbs_upper = _addition_ends(drawn, fractions, weigh=True)
+    return (
+        Band(np.minimum(centre + lower, ln_gamma), np.maximum(centre + upper, ln_gamma)),
+        Band(np.minimum(energy + gibbs_lower, gibbs), np.maximum(energy + gibbs_upper, gibbs)),
+    )
+
+
+def _addition_ends(
+    drawn: Drawn, fractions: FloatArray, *, weigh: bool = False
+) -> tuple[FloatArray, FloatArray]:
+    """Quantiles of the drawn errors of ln gamma, or of gE/RT, a block of points at a time."""
+    tail = (1.0 - LEVEL) / 2.0
+    ends = []
+    for start in range(0, len(fractions), BLOCK_POINTS):
+        block = fractions[start : start + BLOCK_POINTS]
+        errors = drawn.models.errors(block)
+        values = np.sum(block * errors, axis=-1) if weigh else errors
+        ends.append(np.quantile(values, [tail, 1.0 - tail], axis=0))
+    both = np.concatenate(ends, axis=1)
+    return both[0], both[1]
+
+
 def _confidences(
-    mixture: Liquid, temperatures: FloatArray, fractions: FloatArray
+    mixture: Liquid, temperatures: FloatArray, fractions: FloatArray, ln_gamma: Band | None
 ) -> tuple[Confidence, ...]:
-    """One confidence a point."""
-    return tuple(graded(reasons) for reasons in mixture.reasons_by_point(temperatures, fractions))
+    """One confidence a point; the widest ln gamma decides the grade."""
+    reasons = mixture.reasons_by_point(temperatures, fractions)
+    widths = (
+        [None] * len(reasons)
+        if ln_gamma is None
+        else [float(width) for width in ln_gamma.half_width.max(axis=-1)]
+    )
+    return tuple(
+        graded(why, mixture.evidence, half_width_ln=width)
+        for why, width in zip(reasons, widths, strict=True)
+    )

@@ -10,18 +10,13 @@ import numpy as np
 
 from groups.arrays import FloatArray
 from groups.confidence import Confidence
+from groups.confidence.calibration import TableWeight
 from groups.equilibrium import Azeotrope, Diagram
+from groups.prediction.bands import Band
+from groups.prediction.boiling_bands import BoilingBands
+from groups.prediction.chances import AzeotropeChance, SplitChance
 from groups.pure import VapourPressure
 from groups.structure.molecule import Molecule
-
-
-@dataclass(frozen=True, slots=True)
-class MethodUse:
-    """One table behind an answer: its identifier, its weight (0..1) and why it was taken."""
-
-    method: str
-    weight: float
-    why: str
 
 
 @dataclass(frozen=True, slots=True)
@@ -30,7 +25,7 @@ class ActivityAnswer:
 
     components: tuple[Molecule, ...]
     method: str
-    methods_used: tuple[MethodUse, ...]
+    methods_used: tuple[TableWeight, ...]
     temperature_K: FloatArray  # (n_points,)
     mole_fractions: FloatArray  # (n_points, n_components)
     ln_gamma: FloatArray  # (n_points, n_components)
@@ -38,6 +33,8 @@ class ActivityAnswer:
     ln_gamma_residual: FloatArray  # (n_points, n_components)
     excess_gibbs_RT: FloatArray  # (n_points,), dimensionless
     excess_enthalpy_J_mol: FloatArray  # (n_points,)
+    ln_gamma_band: Band | None  # of ln_gamma
+    excess_gibbs_band: Band | None  # of excess_gibbs_RT
     confidence: tuple[Confidence, ...]  # one a point
 
     @property
@@ -56,7 +53,7 @@ class InfiniteDilutionAnswer:
     temperature_K: float
     ln_gamma_inf: float
     method: str | None
-    methods_used: tuple[MethodUse, ...]
+    methods_used: tuple[TableWeight, ...]
     confidence: Confidence
 
 
@@ -66,7 +63,7 @@ class PhasePointAnswer:
 
     components: tuple[Molecule, ...]
     method: str
-    methods_used: tuple[MethodUse, ...]
+    methods_used: tuple[TableWeight, ...]
     temperature_K: float
     pressure_kPa: float
     vapour_fraction: float  # 0 at a bubble point, 1 at a dew point
@@ -78,6 +75,7 @@ class PhasePointAnswer:
     liquid_stable: bool | None
     failure: str | None
     vapour_pressures: tuple[VapourPressure, ...]
+    bands: BoilingBands | None  # of one point; None for a flash or without calibration
     confidence: Confidence
 
 
@@ -87,11 +85,12 @@ class LiquidSplitAnswer:
 
     components: tuple[Molecule, ...]
     method: str
-    methods_used: tuple[MethodUse, ...]
+    methods_used: tuple[TableWeight, ...]
     temperature_K: float
     splits: bool
     phases: tuple[FloatArray, ...]  # compositions (n_components,) of the coexisting liquids
     ln_gamma: tuple[FloatArray, ...]
+    chance: SplitChance | None  # of a binary
     confidence: Confidence
 
 
@@ -101,10 +100,11 @@ class AzeotropeAnswer:
 
     components: tuple[Molecule, ...]
     method: str
-    methods_used: tuple[MethodUse, ...]
+    methods_used: tuple[TableWeight, ...]
     pressure_kPa: float | None
     temperature_K: float | None
     azeotropes: tuple[Azeotrope, ...]
+    chances: tuple[AzeotropeChance, ...]  # one for each pair of components
     vapour_pressures: tuple[VapourPressure, ...]
     confidence: Confidence
 
@@ -115,7 +115,9 @@ class DiagramAnswer:
 
     components: tuple[Molecule, ...]
     method: str
-    methods_used: tuple[MethodUse, ...]
+    methods_used: tuple[TableWeight, ...]
     diagram: Diagram
+    bands: BoilingBands | None
+    azeotrope_chance: AzeotropeChance | None
     vapour_pressures: tuple[VapourPressure, ...]
     confidence: Confidence

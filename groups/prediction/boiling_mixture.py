@@ -16,6 +16,7 @@ from groups.confidence.vapour_rules import (
 )
 from groups.equilibrium import System
 from groups.errors import MixwrightError
+from groups.prediction.bands import Drawn, drawn_around
 from groups.prediction.component import Component
 from groups.prediction.liquid import Liquid, liquid
 from groups.pure import VapourPressure, vapour_pressure
@@ -28,6 +29,23 @@ class BoilingMixture:
     liquid: Liquid
     lines: tuple[VapourPressure, ...]
     system: System
+    on_missing: OnMissing
+
+    def drawn(self, temperature_K: float) -> Drawn | None:
+        """Liquids and vapour pressures drawn around the mixture; None without calibration.
+
+        Parameters
+        ----------
+        temperature_K : float
+            Where the widths are taken.
+
+        Returns
+        -------
+        Drawn or None
+        """
+        if self.liquid.method == "ideal" and len(self.liquid.molecules) > 1:
+            return None
+        return drawn_around(self.liquid.molecules, self.on_missing, temperature_K, self.lines)
 
     def reasons(
         self, temperature_K: FloatArray, pressure_kPa: FloatArray, mole_fractions: FloatArray
@@ -92,7 +110,7 @@ def boiling_mixture(
         boiling = [line.boiling_temperature(pressure_kPa) for line in _lines(components, None)]
         span = (min(boiling), max(boiling))
     lines = _lines(components, span)
-    return BoilingMixture(mixture, lines, System(mixture.model, lines))
+    return BoilingMixture(mixture, lines, System(mixture.model, lines), on_missing)
 
 
 def _lines(

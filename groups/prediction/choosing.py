@@ -9,10 +9,9 @@ from groups.activity.choice import (
     Candidate,
     OnMissing,
     candidate,
-    preference,
-    why_taken,
 )
 from groups.confidence import Reason
+from groups.confidence.calibration import TableWeight, mixture_weights
 from groups.confidence.parameter_rules import missing_reasons
 from groups.errors import IncompleteAssignmentError, MissingParameterError, UnknownMethodError
 from groups.parameters import METHODS, table
@@ -33,21 +32,27 @@ COMPARED_METHODS = (
 
 @dataclass(frozen=True, slots=True)
 class Choice:
-    """The table taken for a mixture, why, and the others that describe it too.
+    """The tables taken for a mixture, why, and the others that describe it too.
 
-    `assignments` holds, for every table that covers all molecules, one assignment a molecule.
-    `reasons` are those that the way to the choice leaves behind.
+    `method` is "auto" or the table taken; `weights` holds one table, or several for "auto", the
+    heaviest first. `assignments` holds, for every table that covers all molecules, one assignment
+    a molecule. `reasons` are those that the way to the choice leaves behind.
     """
 
-    taken: Candidate
-    why: str
+    method: str
+    weights: tuple[TableWeight, ...]
     candidates: Mapping[str, Candidate]
     assignments: Mapping[str, tuple[Assignment, ...]]
     reasons: tuple[Reason, ...]
 
     @property
-    def others(self) -> tuple[str, ...]:
-        """Published tables, beside the one taken, with every parameter and none suspect.
+    def heaviest(self) -> Candidate:
+        """The table taken, or the one of the largest weight."""
+        return self.candidates[self.weights[0].method]
+
+    @property
+    def compared(self) -> tuple[str, ...]:
+        """Published tables with every parameter and none suspect, beside a single one taken.
 
         A suspect parameter says nothing of another table's number: it would only raise an alarm
         at the table that has the better one.
@@ -55,11 +60,16 @@ class Choice:
         return tuple(
             method
             for method in COMPARED_METHODS
-            if method != self.taken.method
+            if method != self.method
             and method in self.candidates
             and not self.candidates[method].missing
             and not self.candidates[method].suspect
         )
+
+    @property
+    def tables(self) -> tuple[str, ...]:
+        """Every table that is taken or compared, each once."""
+        return tuple(dict.fromkeys([*(one.method for one in self.weights), *self.compared]))
 
     def counts(self, method: str) -> list[Mapping[int, int]]:
         """Subgroup counts of the molecules by one table's groups."""
@@ -97,41 +107,55 @@ def choose(molecules: Sequence[Molecule], method: str, on_missing: OnMissing) ->
 
 @lru_cache(maxsize=4096)
 def _choose(molecules: tuple[Molecule, ...], method: str, on_missing: OnMissing) -> Choice:
-    covers = {m: tuple(assign(molecule, m) for molecule in molecules) for m in METHODS}
-    complete = {m: a for m, a in covers.items() if all(one.complete for one in a)}
-    candidates = {m: candidate(m, [one.counts for one in a]) for m, a in complete.items()}
+    complete, candidates = _described(molecules)
     if method == "auto":
-        taken, why = _automatic(molecules, on_missing, covers, candidates)
-        return Choice(taken, why, candidates, complete, ())
+        weights = _automatic(molecules, on_missing, candidates)
+        return Choice("auto", weights, candidates, complete, ())
     if method not in candidates:
-        raise _incomplete(molecules, covers[method], method)
+        raise _incomplete(molecules, method)
     taken, why, extra = _asked_for(method, on_missing, candidates)
-    return Choice(taken, why, candidates, complete, extra)
+    return Choice(taken, (TableWeight(taken, 1.0, why),), candidates, complete, extra)
+
+
+def weighted_choice(molecules: tuple[Molecule, ...], weights: tuple[TableWeight, ...]) -> Choice:
+    """The choice that `auto` makes, from weights already known.
+
+    Parameters
+    ----------
+    molecules : tuple of Molecule
+    weights : tuple of TableWeight
+        The heaviest first, summing to one.
+
+    Returns
+    -------
+    Choice
+    """
+    complete, candidates = _described(molecules)
+    return Choice("auto", weights, candidates, complete, ())
 
 
 def _automatic(
     molecules: tuple[Molecule, ...],
     on_missing: OnMissing,
-    covers: Mapping[str, tuple[Assignment, ...]],
     candidates: Mapping[str, Candidate],
-) -> tuple[Candidate, str]:
+) -> tuple[TableWeight, ...]:
     if not candidates:
-        raise _incomplete_everywhere(molecules, covers)
-    order = preference(list(candidates.values()), on_missing)
-    if not order:
+        raise _incomplete_everywhere(molecules)
+    weights = mixture_weights(molecules, on_missing)
+    if not weights:
         nearest = min(candidates.values(), key=lambda one: len(_gaps(one, on_missing)))
         raise _missing(nearest, on_missing, "No table has every parameter. ")
-    return order[0], why_taken(order[0], list(candidates.values()))
+    return weights
 
 
 def _asked_for(
     method: str, on_missing: OnMissing, candidates: Mapping[str, Candidate]
-) -> tuple[Candidate, str, tuple[Reason, ...]]:
+) -> tuple[str, str, tuple[Reason, ...]]:
     """The table asked for, or the completed one that stands in for it."""
     asked = candidates[method]
     gaps = _gaps(asked, on_missing)
     if not gaps:
-        return asked, "asked for", ()
+        return method, "asked for", ()
     stand_ins = COMPLETED_METHODS if method != "unifac" else COMPLETED_METHODS[::-1]
     usable = [m for m in stand_ins if m in candidates and not candidates[m].missing]
     if on_missing == "refuse" or not usable:
@@ -144,26 +168,36 @@ def _asked_for(
         Reason("method_replaced", f"{reason.message} {usable[0]} stands in.", reason.subject, "low")
         for reason in missing_reasons(table(method), asked.missing)
     )
-    return candidates[usable[0]], why, extra
+    return usable[0], why, extra
 
 
-def _incomplete(
-    molecules: tuple[Molecule, ...], assignments: tuple[Assignment, ...], method: str
-) -> IncompleteAssignmentError:
+@lru_cache(maxsize=16_384)
+def _described(
+    molecules: tuple[Molecule, ...],
+) -> tuple[Mapping[str, tuple[Assignment, ...]], Mapping[str, Candidate]]:
+    """Assignments and parameters of every table that covers all the molecules."""
+    complete = {}
+    for method in METHODS:
+        assignments = tuple(assign(molecule, method) for molecule in molecules)
+        if all(one.complete for one in assignments):
+            complete[method] = assignments
+    return complete, {m: candidate(m, [one.counts for one in a]) for m, a in complete.items()}
+
+
+def _incomplete(molecules: tuple[Molecule, ...], method: str) -> IncompleteAssignmentError:
     """The first molecule that the table asked for does not cover."""
-    index = next(k for k, one in enumerate(assignments) if not one.complete)
+    assignments = [assign(molecule, method) for molecule in molecules]
+    index = next((k for k, one in enumerate(assignments) if not one.complete), 0)
     smiles = molecules[index].canonical_smiles
-    return _uncovered(
-        index, f"{smiles} cannot be split into the groups of {method}.", smiles, assignments[index]
-    )
+    text = f"{smiles} cannot be split into the groups of {method}."
+    return _uncovered(index, text, smiles, assignments[index])
 
 
-def _incomplete_everywhere(
-    molecules: tuple[Molecule, ...], covers: Mapping[str, tuple[Assignment, ...]]
-) -> IncompleteAssignmentError:
+def _incomplete_everywhere(molecules: tuple[Molecule, ...]) -> IncompleteAssignmentError:
     """A molecule that no table covers; without one, the first that the common table does not."""
-    bare = [k for k in range(len(molecules)) if not any(a[k].complete for a in covers.values())]
-    named = covers["unifac-dortmund"]
+    covers = [[assign(molecule, method) for method in METHODS] for molecule in molecules]
+    bare = [k for k, row in enumerate(covers) if not any(one.complete for one in row)]
+    named = [row[METHODS.index("unifac-dortmund")] for row in covers]
     index = bare[0] if bare else next(k for k, one in enumerate(named) if not one.complete)
     smiles = molecules[index].canonical_smiles
     text = (

@@ -6,12 +6,15 @@ from typing import Literal, get_args
 import numpy as np
 
 from groups.activity.choice import OnMissing
+from groups.arrays import FloatArray
 from groups.confidence import Reason, graded
 from groups.equilibrium import Diagram
 from groups.equilibrium import diagram as solve_diagram
 from groups.errors import InvalidInputError, OutOfRangeError
 from groups.prediction.answers import DiagramAnswer
-from groups.prediction.boiling_mixture import boiling_mixture
+from groups.prediction.boiling_bands import BoilingBands, KnownStates, bubble_bands
+from groups.prediction.boiling_mixture import BoilingMixture, boiling_mixture
+from groups.prediction.chances import AzeotropeChance, azeotrope_chance
 from groups.prediction.checks import check_components, check_pressures, check_temperatures
 from groups.prediction.component import Component
 
@@ -72,14 +75,50 @@ def diagram(
     )
     fractions = np.column_stack([drawn.x1, 1.0 - drawn.x1])
     reasons = mixture.reasons(drawn.temperature_K, drawn.pressure_kPa, fractions)
+    bands, chance = _uncertainty(mixture, drawn, fractions, temperature_K, pressure_kPa)
+    width = None if bands is None else float(np.nanmax(bands.ln_k_half_width))
     return DiagramAnswer(
         mixture.liquid.molecules,
         mixture.liquid.method,
         mixture.liquid.methods_used,
         drawn,
+        bands,
+        chance,
         mixture.lines,
-        graded([*reasons, *_diagram_reasons(drawn)]),
+        graded([*reasons, *_diagram_reasons(drawn)], mixture.liquid.evidence, half_width_ln=width),
     )
+
+
+def _uncertainty(
+    mixture: BoilingMixture,
+    found: Diagram,
+    fractions: FloatArray,
+    temperature_K: float | None,
+    pressure_kPa: float | None,
+) -> tuple[BoilingBands, AzeotropeChance] | tuple[None, None]:
+    """Intervals along both curves and the chance of an azeotrope."""
+    known = np.flatnonzero([text is None for text in found.failure])
+    if not known.size:
+        return None, None
+    drawn = mixture.drawn(float(np.median(found.temperature_K[known])))
+    if drawn is None:
+        return None, None
+    vapour = np.column_stack([found.y1, 1.0 - found.y1])
+    ratio = np.column_stack([found.relative_volatility, np.ones(len(found.x1))])
+    states = KnownStates(
+        found.temperature_K[known],
+        found.pressure_kPa[known],
+        fractions[known],
+        vapour[known],
+        found.gamma[known],
+        ratio[known],
+        pressure_kPa is not None,
+    )
+    bands = bubble_bands(drawn, mixture.system, states).spread(known, len(found.x1))
+    chance = azeotrope_chance(
+        drawn, mixture.system, (0, 1), temperature_K=temperature_K, pressure_kPa=pressure_kPa
+    )
+    return bands, chance
 
 
 def _check_condition(

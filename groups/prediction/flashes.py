@@ -7,10 +7,12 @@ from numpy.typing import ArrayLike
 
 from groups.activity.choice import OnMissing
 from groups.arrays import FloatArray
-from groups.confidence import Reason, graded
+from groups.confidence import Confidence, Interval, Reason, graded
 from groups.equilibrium import Flash
 from groups.equilibrium import flash as solve_flash
+from groups.equilibrium.phase_fraction import phase_fraction
 from groups.prediction.answers import PhasePointAnswer
+from groups.prediction.bands import band
 from groups.prediction.boiling_mixture import BoilingMixture, boiling_mixture
 from groups.prediction.checks import (
     check_components,
@@ -89,7 +91,29 @@ def _answer(mixture: BoilingMixture, found: Flash, feed: FloatArray) -> PhasePoi
         bool(found.liquid_stable[0]) if found.phase[0] in ("liquid", "two-phase") else None,
         found.failure[0],
         mixture.lines,
-        graded([*reasons, *_flash_reasons(found)]),
+        None,
+        _confidence([*reasons, *_flash_reasons(found)], mixture, found, feed),
+    )
+
+
+def _confidence(
+    reasons: list[Reason], mixture: BoilingMixture, found: Flash, feed: FloatArray
+) -> Confidence:
+    """The interval is that of the vapour fraction; the widest ln K grades."""
+    drawn = mixture.drawn(float(found.temperature_K[0]))
+    if drawn is None or found.phase[0] != "two-phase":
+        return graded(reasons, mixture.liquid.evidence)
+    T, x = found.temperature_K, found.liquid
+    ln_k = drawn.models.ln_gamma(T, x) + mixture.system.ln_saturation(T)
+    ln_k = (ln_k + drawn.shift[:, None, :])[:, 0] - np.log(found.pressure_kPa)
+    fraction, _ = phase_fraction(np.broadcast_to(feed, ln_k.shape), ln_k)
+    ends = band(fraction, found.vapour_fraction[0])
+    own = np.log(found.vapour[0]) - np.log(found.liquid[0])
+    return graded(
+        reasons,
+        mixture.liquid.evidence,
+        interval=Interval(float(ends.lower), float(ends.upper)),
+        half_width_ln=float(band(ln_k, own).half_width.max()),
     )
 
 

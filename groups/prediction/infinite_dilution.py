@@ -7,8 +7,15 @@ import numpy as np
 
 from groups.activity import ln_gamma_infinite_pairs
 from groups.activity.choice import OnMissing
-from groups.confidence import Reason, graded
+from groups.arrays import FloatArray
+from groups.confidence import Interval, Reason, graded
 from groups.confidence.agreement_rules import agreement_reasons
+from groups.confidence.calibration import (
+    TABLES,
+    dilute_answers,
+    ln_gamma_interval,
+    pair_weights,
+)
 from groups.confidence.chemistry_rules import gas_reasons
 from groups.confidence.parameter_rules import temperature_reasons
 from groups.errors import (
@@ -18,11 +25,12 @@ from groups.errors import (
     PredictionError,
 )
 from groups.parameters import table
-from groups.prediction.answers import InfiniteDilutionAnswer, MethodUse
+from groups.prediction.answers import InfiniteDilutionAnswer
+from groups.prediction.bands import LEVEL
 from groups.prediction.checks import check_components, check_temperatures
-from groups.prediction.choosing import Choice, choose
+from groups.prediction.choosing import Choice, choose, weighted_choice
 from groups.prediction.liquid import liquid
-from groups.prediction.mixture_reasons import mixture_reasons
+from groups.prediction.mixture_reasons import choice_evidence, mixture_reasons
 from groups.structure.molecule import Molecule
 
 DilutePair = tuple[Molecule, Molecule, float]
@@ -32,6 +40,7 @@ def infinite_dilution(
     pairs: Sequence[DilutePair],
     method: str = "auto",
     on_missing: OnMissing = "estimate",
+    level: float = LEVEL,
 ) -> tuple[InfiniteDilutionAnswer, ...]:
     """ln gamma at infinite dilution of each solute in each solvent.
 
@@ -42,6 +51,8 @@ def infinite_dilution(
     method : str
         An identifier of `ALL_METHODS`.
     on_missing : {"refuse", "estimate"}
+    level : float
+        Probability of the intervals, 0.01 to 0.99.
 
     Returns
     -------
@@ -61,14 +72,48 @@ def infinite_dilution(
     _check(pairs)
     if method == "ideal":
         return tuple(_ideal(pair) for pair in pairs)
+    if method == "auto":
+        return _by_auto(pairs, on_missing, level)
     choices = [_choice_or_refusal(pair, method, on_missing) for pair in pairs]
     numbers = _numbers_by_method(pairs, choices)
+    _, lower, upper = ln_gamma_interval(pairs, level)
     return tuple(
         _refused(pair, method, choice)
         if isinstance(choice, PredictionError)
-        else _answered(pair, choice, {m: column[k] for m, column in numbers.items()})
+        else _answered(
+            pair,
+            choice,
+            {m: float(column[k]) for m, column in numbers.items()},
+            (float(lower[k]), float(upper[k])),
+        )
         for k, (pair, choice) in enumerate(zip(pairs, choices, strict=True))
     )
+
+
+def _by_auto(
+    pairs: Sequence[DilutePair], on_missing: OnMissing, level: float
+) -> tuple[InfiniteDilutionAnswer, ...]:
+    """All pairs in whole arrays; only the reasons are gathered pair by pair."""
+    found = dilute_answers(pairs, on_missing)
+    lower, upper = found.interval(level)
+    weights = pair_weights(found)
+    answers = []
+    for k, pair in enumerate(pairs):
+        if weights[k]:
+            choice = weighted_choice(pair[:2], weights[k])
+            numbers = dict(zip(TABLES, map(float, found.tables.ln_gamma[k]), strict=True))
+            ends = (float(lower[k]), float(upper[k]))
+            answers.append(_answered(pair, choice, numbers, ends))
+        else:
+            answers.append(_refused(pair, "auto", _refusal(pair, on_missing)))
+    return tuple(answers)
+
+
+def _refusal(pair: DilutePair, on_missing: OnMissing) -> PredictionError:
+    """Why no table gives a number for the pair."""
+    refusal = _choice_or_refusal(pair, "auto", on_missing)
+    assert isinstance(refusal, PredictionError)
+    return refusal
 
 
 def _check(pairs: Sequence[DilutePair]) -> None:
@@ -93,12 +138,12 @@ def _choice_or_refusal(
 
 def _numbers_by_method(
     pairs: Sequence[DilutePair], choices: Sequence[Choice | PredictionError]
-) -> dict[str, np.ndarray]:
+) -> dict[str, FloatArray]:
     """ln gamma-infinity by every table that describes the pair; each table is asked once."""
     rows: dict[str, list[int]] = defaultdict(list)
     for index, choice in enumerate(choices):
         if isinstance(choice, Choice):
-            for method in (choice.taken.method, *choice.others):
+            for method in choice.tables:
                 rows[method].append(index)
     numbers = {}
     for method, indices in rows.items():
@@ -123,26 +168,30 @@ def _counts(
 
 
 def _answered(
-    pair: DilutePair, choice: Choice, numbers: Mapping[str, float]
+    pair: DilutePair,
+    choice: Choice,
+    numbers: Mapping[str, float],
+    calibrated: tuple[float, float],
 ) -> InfiniteDilutionAnswer:
     solute, solvent, temperature_K = pair
-    taken = choice.taken.method
-    ln_gamma = float(numbers[taken])
-    spreads = {other: abs(float(numbers[other]) - ln_gamma) for other in choice.others}
+    ln_gamma = sum(one.weight * numbers[one.method] for one in choice.weights)
+    spreads = {other: abs(numbers[other] - ln_gamma) for other in choice.compared}
+    heaviest = choice.heaviest
     reasons = [
         *mixture_reasons((solute, solvent), choice),
         *gas_reasons(solute, temperature_K),
-        *temperature_reasons(table(taken), temperature_K, temperature_K),
-        *agreement_reasons(taken, spreads),
+        *temperature_reasons(table(heaviest.method), temperature_K, temperature_K),
+        *agreement_reasons(choice.method, spreads),
     ]
+    interval = Interval(min(calibrated[0], ln_gamma), max(calibrated[1], ln_gamma))
     return InfiniteDilutionAnswer(
         solute,
         solvent,
         temperature_K,
         ln_gamma,
-        taken,
-        (MethodUse(taken, 1.0, choice.why),),
-        graded(reasons),
+        choice.method,
+        choice.weights,
+        graded(reasons, choice_evidence(choice), interval=interval),
     )
 
 

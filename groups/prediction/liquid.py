@@ -6,17 +6,17 @@ from functools import lru_cache
 
 import numpy as np
 
-from groups.activity import ActivityModel, IdealModel, activity_model
+from groups.activity import ActivityModel, IdealModel, WeightedModel, activity_model
 from groups.activity.choice import OnMissing
 from groups.arrays import FloatArray
-from groups.confidence import Reason
+from groups.confidence import Evidence, Reason
 from groups.confidence.agreement_rules import agreement_reasons
+from groups.confidence.calibration import TableWeight
 from groups.confidence.parameter_rules import temperature_reasons
 from groups.errors import UnknownMethodError
 from groups.parameters import table
-from groups.prediction.answers import MethodUse
 from groups.prediction.choosing import ALL_METHODS, choose
-from groups.prediction.mixture_reasons import mixture_reasons
+from groups.prediction.mixture_reasons import choice_evidence, mixture_reasons
 from groups.structure.molecule import Molecule
 
 
@@ -24,16 +24,19 @@ from groups.structure.molecule import Molecule
 class Liquid:
     """A mixture and the model taken for it.
 
-    `others` holds the other published tables that describe the same mixture, for comparison;
-    `fixed_reasons` depend on neither temperature nor composition.
+    `heaviest` is the table taken, or the one of the largest weight; `others` holds the published
+    tables that describe the same mixture, for comparison; `fixed_reasons` depend on neither
+    temperature nor composition.
     """
 
     molecules: tuple[Molecule, ...]
     method: str
     model: ActivityModel
-    methods_used: tuple[MethodUse, ...]
+    methods_used: tuple[TableWeight, ...]
+    heaviest: str
     others: Mapping[str, ActivityModel]
     fixed_reasons: tuple[Reason, ...]
+    evidence: tuple[Evidence, ...]
 
     def reasons(self, temperature_K: FloatArray, mole_fractions: FloatArray) -> list[Reason]:
         """Reasons to doubt the activity coefficients, over all the points together.
@@ -84,7 +87,7 @@ class Liquid:
     def _at(self, lowest_K: float, highest_K: float, spreads: dict[str, float]) -> list[Reason]:
         return [
             *self.fixed_reasons,
-            *temperature_reasons(table(self.method), lowest_K, highest_K),
+            *temperature_reasons(table(self.heaviest), lowest_K, highest_K),
             *agreement_reasons(self.method, spreads),
         ]
 
@@ -133,23 +136,31 @@ def _liquid(molecules: tuple[Molecule, ...], method: str, on_missing: OnMissing)
     if method == "ideal" or len(molecules) == 1:
         return _ideal(molecules, method)
     choice = choose(molecules, method, on_missing)
-    taken = choice.taken.method
+    models = {m: activity_model(choice.counts(m), m) for m in choice.tables}
+    weights = {one.method: one.weight for one in choice.weights}
+    taken = (
+        models[choice.method]
+        if len(weights) == 1 and choice.method in models
+        else WeightedModel(tuple(models[m] for m in weights), tuple(weights.values()))
+    )
     return Liquid(
         molecules,
+        choice.method,
         taken,
-        activity_model(choice.counts(taken), taken),
-        (MethodUse(taken, 1.0, choice.why),),
-        {other: activity_model(choice.counts(other), other) for other in choice.others},
+        choice.weights,
+        choice.heaviest.method,
+        {m: models[m] for m in choice.compared},
         mixture_reasons(molecules, choice),
+        choice_evidence(choice),
     )
 
 
 def _ideal(molecules: tuple[Molecule, ...], method: str) -> Liquid:
     model = IdealModel(len(molecules))
     if len(molecules) == 1:
-        use = MethodUse("ideal", 1.0, "a single component has no activity coefficient but one")
-        return Liquid(molecules, "ideal", model, (use,), {}, ())
-    use = MethodUse("ideal", 1.0, "asked for: every activity coefficient is one (Raoult's law)")
+        use = TableWeight("ideal", 1.0, "a single component has no activity coefficient but one")
+        return Liquid(molecules, "ideal", model, (use,), "ideal", {}, (), ())
+    use = TableWeight("ideal", 1.0, "asked for: every activity coefficient is one (Raoult's law)")
     reason = Reason(
         "ideal_solution_assumed",
         "An ideal solution was asked for. It is the yardstick, not a prediction: it holds for "
@@ -157,4 +168,4 @@ def _ideal(molecules: tuple[Molecule, ...], method: str) -> Liquid:
         "all components",
         "low",
     )
-    return Liquid(molecules, method, model, (use,), {}, (reason,))
+    return Liquid(molecules, method, model, (use,), "ideal", {}, (reason,), ())

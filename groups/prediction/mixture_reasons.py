@@ -1,11 +1,14 @@
 """Reasons to doubt a mixture that depend on neither temperature nor composition."""
 
 from collections.abc import Mapping, Sequence
+from functools import lru_cache
+from itertools import combinations
 
 import numpy as np
 
 from groups.activity import activity_model
-from groups.confidence import Reason
+from groups.confidence import Evidence, Reason
+from groups.confidence.calibration import evidence
 from groups.confidence.chemistry_rules import chemistry_reasons
 from groups.confidence.parameter_rules import completed_reasons, suspect_reasons
 from groups.confidence.structure_rules import (
@@ -22,10 +25,14 @@ from groups.prediction.choosing import Choice
 from groups.structure.molecule import Molecule
 
 REFERENCE_TEMPERATURE_K = 298.15
+MOST_COMPLETED_WEIGHT = 0.5
+MOST_EVIDENCE = 8
 
 
 def mixture_reasons(molecules: Sequence[Molecule], choice: Choice) -> tuple[Reason, ...]:
-    """Reasons from the table taken and from the molecules, whatever the conditions.
+    """Reasons from the tables taken and from the molecules, whatever the conditions.
+
+    Parameters completed without data are told where more than half of the weight rests on them.
 
     Parameters
     ----------
@@ -36,20 +43,57 @@ def mixture_reasons(molecules: Sequence[Molecule], choice: Choice) -> tuple[Reas
     -------
     tuple of Reason
     """
-    taken = choice.taken
-    groups = table(taken.method)
+    heaviest = choice.heaviest
     return (
         *choice.reasons,
-        *completed_reasons(groups, taken.main_numbers),
-        *suspect_reasons(groups, taken.main_numbers),
+        *_completed(choice),
+        *suspect_reasons(table(heaviest.method), heaviest.main_numbers),
         *chemistry_reasons(molecules),
         *polyol_reasons(molecules),
         *water_reasons(molecules),
         *polar_reasons(molecules),
         *size_reasons(molecules),
-        *isomer_reasons(molecules, choice.assignments[taken.method]),
+        *isomer_reasons(molecules, choice.assignments[heaviest.method]),
         *ambiguity_reasons(molecules, _changes_by_alternatives(molecules, choice)),
     )
+
+
+def choice_evidence(choice: Choice) -> tuple[Evidence, ...]:
+    """Open measurements behind the group pairs of the heaviest table, the thinnest first.
+
+    Parameters
+    ----------
+    choice : Choice
+
+    Returns
+    -------
+    tuple of Evidence
+        At most `MOST_EVIDENCE`.
+    """
+    method = choice.heaviest.method
+    mains = [
+        tuple(sorted({group.main_number for group in assignment.groups}))
+        for assignment in choice.assignments[method]
+    ]
+    return _evidence(method, tuple(mains))
+
+
+@lru_cache(maxsize=8192)
+def _evidence(method: str, mains: tuple[tuple[int, ...], ...]) -> tuple[Evidence, ...]:
+    found = [
+        one for first, second in combinations(mains, 2) for one in evidence(method, first, second)
+    ]
+    unique = dict.fromkeys(sorted(found, key=lambda one: one.measurements))
+    return tuple(unique)[:MOST_EVIDENCE]
+
+
+def _completed(choice: Choice) -> list[Reason]:
+    """Completed pairs of the heaviest table that has any, if such tables carry the answer."""
+    holding = [one for one in choice.weights if choice.candidates[one.method].completed]
+    if sum(one.weight for one in holding) <= MOST_COMPLETED_WEIGHT:
+        return []
+    first = choice.candidates[holding[0].method]
+    return completed_reasons(table(first.method), first.main_numbers)
 
 
 def _changes_by_alternatives(molecules: Sequence[Molecule], choice: Choice) -> dict[str, float]:
@@ -57,7 +101,7 @@ def _changes_by_alternatives(molecules: Sequence[Molecule], choice: Choice) -> d
 
     Taken at equal fractions and at infinite dilution of each component, at 298.15 K.
     """
-    method = choice.taken.method
+    method = choice.heaviest.method
     counts = choice.counts(method)
     changes: dict[str, float] = {}
     for index, assignment in enumerate(choice.assignments[method]):

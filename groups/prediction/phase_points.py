@@ -7,7 +7,7 @@ from numpy.typing import ArrayLike
 
 from groups.activity.choice import OnMissing
 from groups.arrays import FloatArray
-from groups.confidence import Reason, graded
+from groups.confidence import Confidence, Interval, Reason, graded
 from groups.equilibrium import (
     States,
     bubble_pressure,
@@ -17,6 +17,12 @@ from groups.equilibrium import (
     stability,
 )
 from groups.prediction.answers import PhasePointAnswer
+from groups.prediction.boiling_bands import (
+    BoilingBands,
+    KnownStates,
+    bubble_bands,
+    dew_bands,
+)
 from groups.prediction.boiling_mixture import BoilingMixture, boiling_mixture
 from groups.prediction.checks import (
     check_components,
@@ -152,31 +158,23 @@ def _phase_point(
         states = at_temperature(mixture.system, np.array([temperature_K]), fractions)
     else:
         states = at_pressure(mixture.system, np.array([pressure_kPa]), fractions)
-    return phase_point_answer(mixture, states, vapour_fraction)
+    return _answer(mixture, states, vapour_fraction, pressure_fixed=pressure_kPa is not None)
 
 
-def phase_point_answer(
-    mixture: BoilingMixture, states: States, vapour_fraction: float
+def _answer(
+    mixture: BoilingMixture, states: States, vapour_fraction: float, *, pressure_fixed: bool
 ) -> PhasePointAnswer:
-    """The answer for the first of the states, with its reasons.
-
-    Parameters
-    ----------
-    mixture : BoilingMixture
-    states : States
-    vapour_fraction : float
-        Moles of vapour in a mole of mixture.
-
-    Returns
-    -------
-    PhasePointAnswer
-    """
+    """The answer for the first of the states, with its reasons and intervals."""
     T, P, x = states.temperature_K, states.pressure_kPa, states.liquid
     stable = _stable(mixture, T, x) if states.converged[0] else None
-    reasons = mixture.reasons(T, P, x)
-    reasons += _state_reasons(states.failure[0], stable)
+    reasons = mixture.reasons(T, P, x) + _state_reasons(states.failure[0], stable)
     saturation = np.exp(mixture.system.ln_saturation(T))[0]
     k_values = states.gamma[0] * saturation
+    ratio = k_values / k_values[-1]
+    bands = None
+    if states.converged[0]:
+        known = KnownStates(T, P, x, states.vapour, states.gamma, ratio[None], pressure_fixed)
+        bands = _bands(mixture, known, bubble=vapour_fraction == 0.0)
     return PhasePointAnswer(
         mixture.liquid.molecules,
         mixture.liquid.method,
@@ -188,11 +186,37 @@ def phase_point_answer(
         states.vapour[0],
         states.gamma[0],
         saturation,
-        k_values / k_values[-1],
+        ratio,
         stable,
         states.failure[0],
         mixture.lines,
-        graded(reasons),
+        bands,
+        _confidence(reasons, mixture, bands, pressure_fixed),
+    )
+
+
+def _bands(mixture: BoilingMixture, known: KnownStates, *, bubble: bool) -> BoilingBands | None:
+    drawn = mixture.drawn(float(known.temperature_K[0]))
+    if drawn is None:
+        return None
+    return (bubble_bands if bubble else dew_bands)(drawn, mixture.system, known)
+
+
+def _confidence(
+    reasons: list[Reason],
+    mixture: BoilingMixture,
+    bands: BoilingBands | None,
+    pressure_fixed: bool,
+) -> Confidence:
+    """The interval is that of the temperature or pressure sought; the widest ln K grades."""
+    if bands is None:
+        return graded(reasons, mixture.liquid.evidence)
+    sought = bands.temperature_K if pressure_fixed else bands.pressure_kPa
+    return graded(
+        reasons,
+        mixture.liquid.evidence,
+        interval=Interval(float(sought.lower[0]), float(sought.upper[0])),
+        half_width_ln=float(bands.ln_k_half_width[0]),
     )
 
 

@@ -1,6 +1,7 @@
 """Azeotropes and liquid splits of mixtures."""
 
 from collections.abc import Sequence
+from itertools import combinations
 
 import numpy as np
 from numpy.typing import ArrayLike
@@ -12,7 +13,14 @@ from groups.equilibrium import azeotropes as solve_azeotropes
 from groups.equilibrium import binary_split, stability
 from groups.errors import ShapeError
 from groups.prediction.answers import AzeotropeAnswer, LiquidSplitAnswer
+from groups.prediction.bands import drawn_around
 from groups.prediction.boiling_mixture import BoilingMixture, boiling_mixture
+from groups.prediction.chances import (
+    AzeotropeChance,
+    SplitChance,
+    azeotrope_chance,
+    split_chance,
+)
 from groups.prediction.checks import (
     check_components,
     check_fractions,
@@ -21,7 +29,7 @@ from groups.prediction.checks import (
     check_temperatures,
 )
 from groups.prediction.component import Component
-from groups.prediction.liquid import liquid
+from groups.prediction.liquid import Liquid, liquid
 
 # Common practice, no source: pure boiling points closer than this make an azeotrope a close call.
 CLOSE_BOILING_K = 3.0
@@ -80,8 +88,25 @@ def azeotropes(
         pressure_kPa,
         temperature_K,
         found,
+        _chances(mixture, pressure_kPa, temperature_K),
         mixture.lines,
-        graded(_azeotrope_reasons(mixture, pressure_kPa, temperature_K)),
+        graded(_azeotrope_reasons(mixture, pressure_kPa, temperature_K), mixture.liquid.evidence),
+    )
+
+
+def _chances(
+    mixture: BoilingMixture, pressure_kPa: float | None, temperature_K: float | None
+) -> tuple[AzeotropeChance, ...]:
+    """The chance of an azeotrope of every two components."""
+    boiling = [line.boiling_temperature(pressure_kPa or 101.325) for line in mixture.lines]
+    drawn = mixture.drawn(temperature_K or float(np.mean(boiling)))
+    if drawn is None:
+        return ()
+    return tuple(
+        azeotrope_chance(
+            drawn, mixture.system, pair, temperature_K=temperature_K, pressure_kPa=pressure_kPa
+        )
+        for pair in combinations(range(len(mixture.lines)), 2)
     )
 
 
@@ -190,8 +215,19 @@ def liquid_splits(
         splits,
         phases,
         ln_gamma,
-        graded([*reasons, *_split_reasons(mixture.method, splits)]),
+        _split_chance(mixture, on_missing, float(temperature[0])),
+        graded([*reasons, *_split_reasons(mixture.method, splits)], mixture.evidence),
     )
+
+
+def _split_chance(
+    mixture: Liquid, on_missing: OnMissing, temperature_K: float
+) -> SplitChance | None:
+    """The chance that a binary splits; None for more components or an ideal solution."""
+    if not mixture.compared or len(mixture.molecules) != 2:
+        return None
+    drawn = drawn_around(mixture.molecules, on_missing, temperature_K)
+    return None if drawn is None else split_chance(drawn, temperature_K)
 
 
 def _split_reasons(method: str, splits: bool) -> list[Reason]:

@@ -1,19 +1,13 @@
 """Measure every table on the open activity coefficients at infinite dilution.
 
-    python -m tests.bench.measure_gamma_infinity [--write]
+    python -m tests.bench.measure_gamma_infinity
 
 Prints, per method: molecules and rows covered, mean and median absolute error of ln
-gamma-infinity on its own rows and on the rows that all the general tables reach. With --write the
-ranking that `auto` uses is written to groups/activity/ranking.csv.
+gamma-infinity on its own rows and on the rows that the leading tables all reach.
 """
-
-import argparse
-import csv
-from pathlib import Path
 
 import numpy as np
 
-import groups.activity
 from groups.activity import ln_gamma_infinite_pairs
 from groups.arrays import FloatArray
 from groups.errors import UnsupportedStructureError
@@ -62,15 +56,11 @@ def readable(texts: list[str]) -> dict[str, Molecule]:
 
 
 def main() -> None:
-    """Print the table; write the ranking if asked."""
-    parser = argparse.ArgumentParser(description=__doc__)
-    parser.add_argument("--write", action="store_true", help="write the ranking that auto uses")
-    arguments = parser.parse_args()
+    """Print the table."""
     measured, predicted, covered, n_molecules = predictions()
     common = np.all([np.isfinite(predicted[m]) for m in COMMON], axis=0)
     print(f"{len(measured)} rows, {n_molecules} molecules; {common.sum()} rows in common")
     print("method | molecules % | rows % | MAE | median | MAE common | median common | n common")
-    ranking = []
     for method, column in predicted.items():
         known = np.isfinite(column)
         both = known & common
@@ -80,19 +70,6 @@ def main() -> None:
             f"{error[known].mean():.3f} | {np.median(error[known]):.3f} | "
             f"{error[both].mean():.3f} | {np.median(error[both]):.3f} | {both.sum()}"
         )
-        ranking.append((method, int(both.sum()), error[both].mean(), np.median(error[both])))
-    if arguments.write:
-        write_ranking(ranking)
-
-
-def write_ranking(rows: list[tuple[str, int, float, float]]) -> None:
-    """Write the ranking beside the code that reads it; statistics only, no measured value."""
-    path = Path(groups.activity.__path__[0]) / "ranking.csv"
-    with path.open("w", encoding="utf-8", newline="") as file:
-        writer = csv.writer(file, lineterminator="\n")
-        writer.writerow(["method", "measurements", "mean_absolute_error", "median_absolute_error"])
-        for method, number, mean, median in sorted(rows, key=lambda row: row[2]):
-            writer.writerow([method, number, f"{mean:.3f}", f"{median:.3f}"])
 
 
 if __name__ == "__main__":
