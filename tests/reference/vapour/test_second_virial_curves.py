@@ -1,7 +1,7 @@
 """The correlations of second virial coefficients against the open CRC curves, by class.
 
 The curves are `CRC Virial polynomials` of the open package `chemicals`,
-B = sum a_k (298.15 K / T - 1)^k in cm3/mol. Run as a program it prints the table of errors.
+B = sum a_k (298.15 K / T - 1)^k in cm3/mol. `measure_vapour.py` prints the table of errors.
 """
 
 import numpy as np
@@ -84,11 +84,3 @@ def test_the_equations_agree_with_an_independent_transcription():
                 np.array(T), np.array(500.0), np.array(4000.0), np.array(0.3), correlation=form
             )
             assert ours == pytest.approx(names[form](T, 500.0, 4e6, 0.3) * 1e6, rel=1e-9)
-
-
-if __name__ == "__main__":
-    for form in FORMS:
-        for polar in (False, True):
-            table = errors(form, polar)
-            shares = {name: f"{np.median(part):.1%}" for name, part in table.items()}
-            print(form, "with" if polar else "without", "polar terms:", shares)  # noqa: T201
