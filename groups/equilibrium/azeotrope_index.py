@@ -42,7 +42,7 @@ def balanced(system: System, condition: Condition, azeotropes: list[Azeotrope]) 
     total = 0
     for i in range(n):
         x, T, P = np.eye(n)[i], float(pure.temperature_K[i]), float(pure.pressure_kPa[i])
-        ratios = _escape(system, x, T, P, x)
+        ratios = escape(system, x, T, P, x)
         total += 2 * int(np.prod(np.sign(-ratios[np.arange(n) != i])))
     for azeotrope in azeotropes:
         total += 2 ** len(azeotrope.components) * _sign(system, azeotrope)
@@ -52,18 +52,18 @@ def balanced(system: System, condition: Condition, azeotropes: list[Azeotrope]) 
 def _sign(system: System, azeotrope: Azeotrope) -> int:
     """Sign of the determinant of the flow at an azeotrope."""
     present = azeotrope.mole_fractions > 0.0
-    inner = _derivatives(system, azeotrope)
+    inner = inner_derivatives(system, azeotrope)
     basis = steps_basis(int(present.sum()))
     values = np.linalg.eigvalsh(basis @ inner @ basis.T)
-    outward = _outward(system, azeotrope)[~present]
-    return int(np.prod(np.sign(-values)) * np.prod(np.sign(-outward)))
+    leaving = outward(system, azeotrope)[~present]
+    return int(np.prod(np.sign(-values)) * np.prod(np.sign(-leaving)))
 
 
-def _outward(system: System, azeotrope: Azeotrope) -> FloatArray:
+def outward(system: System, azeotrope: Azeotrope) -> FloatArray:
     """ln K of every component, K over both liquids together where there are two."""
     T, P = azeotrope.temperature_K, azeotrope.pressure_kPa
     vapour = azeotrope.mole_fractions
-    ln_k = [_escape(system, x, T, P, vapour) for x in azeotrope.liquids]
+    ln_k = [escape(system, x, T, P, vapour) for x in azeotrope.liquids]
     if len(ln_k) == 1:
         return ln_k[0]
     share = liquid_share(azeotrope)
@@ -80,7 +80,8 @@ def liquid_share(azeotrope: Azeotrope) -> float:
     return float(gap / (first[widest] - second[widest]))
 
 
-def _derivatives(system: System, azeotrope: Azeotrope) -> FloatArray:
+def inner_derivatives(system: System, azeotrope: Azeotrope) -> FloatArray:
+    """n d ln gamma_i/dn_j among the components present; of both liquids as one where it splits."""
     part = subset(system, azeotrope.components)
     kept = list(azeotrope.components)
     z = azeotrope.mole_fractions[kept]
@@ -94,7 +95,7 @@ def _derivatives(system: System, azeotrope: Azeotrope) -> FloatArray:
     return convex_derivatives(part, two)
 
 
-def _escape(system: System, x: FloatArray, T: float, P: float, vapour: FloatArray) -> FloatArray:
+def escape(system: System, x: FloatArray, T: float, P: float, vapour: FloatArray) -> FloatArray:
     """ln K of every component over a boiling liquid: positive where a trace of it leaves."""
     temperature, pressure = np.array([T]), np.array([P])
     ln_k = system.ln_volatility(temperature, x[None])[0] - np.log(P)

@@ -6,12 +6,14 @@ of compositions and from the azeotropes of their own edges. The signs of the aze
 pure components must balance (the topological index); where they do not, more starts are tried.
 """
 
+from dataclasses import dataclass
 from itertools import combinations
 
 import numpy as np
 
 from groups.arrays import FloatArray
 from groups.equilibrium.azeotrope import Azeotrope
+from groups.equilibrium.azeotrope_index import balanced
 from groups.equilibrium.binary_azeotropes import binary_azeotropes
 from groups.equilibrium.boiling_curve import Condition, boiling_curve
 from groups.equilibrium.conditions import checked_pressure, checked_temperature
@@ -22,6 +24,18 @@ from groups.errors import InvalidInputError
 
 #: Azeotropes of five components are not known; faces of more than this are not searched.
 MOST_COMPONENTS = 4
+
+
+@dataclass(frozen=True, slots=True)
+class AzeotropeSet:
+    """All azeotropes that were found, and whether they make a possible map.
+
+    `index_balanced` is False where the topological index of the whole mixture does not balance: an
+    azeotrope is missing, or one is tangent to a neighbour and cannot be told from it.
+    """
+
+    azeotropes: tuple[Azeotrope, ...]
+    index_balanced: bool
 
 
 def azeotropes(
@@ -59,24 +73,62 @@ def azeotropes(
     The conditions: Doherty & Malone, Conceptual Design of Distillation Systems (2001), chapter 5.
     The index: Zharov & Serafimov (1975); Doherty & Perkins, Chem. Eng. Sci. 34 (1979) 1401.
     """
-    if (pressure_kPa is None) == (temperature_K is None):
-        raise InvalidInputError(
-            "Azeotropes need a pressure or a temperature, and not both.",
-            cure="Give exactly one of 'pressure_kPa' and 'temperature_K'.",
-            field="pressure_kPa",
-        )
-    condition = (
-        Condition(pressure_kPa=float(checked_pressure(pressure_kPa)[0]))
-        if pressure_kPa is not None
-        else Condition(temperature_K=float(checked_temperature(temperature_K or 0.0)[0]))
-    )
+    return azeotrope_set(
+        system,
+        pressure_kPa=pressure_kPa,
+        temperature_K=temperature_K,
+        most_components=most_components,
+    ).azeotropes
+
+
+def azeotrope_set(
+    system: System,
+    *,
+    pressure_kPa: float | None = None,
+    temperature_K: float | None = None,
+    most_components: int = MOST_COMPONENTS,
+) -> AzeotropeSet:
+    """Every azeotrope of a mixture, and whether the topological index balances.
+
+    Parameters
+    ----------
+    system, pressure_kPa, temperature_K, most_components
+        As `azeotropes`.
+
+    Returns
+    -------
+    AzeotropeSet
+
+    Raises
+    ------
+    InvalidInputError
+        If not exactly one condition is given.
+    OutOfRangeError
+
+    Source
+    ------
+    As `azeotropes`.
+    """
+    condition = _condition(pressure_kPa, temperature_K)
     found: list[Azeotrope] = []
     n = system.n_components
     for size in range(2, min(n, most_components) + 1):
         for face in combinations(range(n), size):
             known = [a for a in found if set(a.components) < set(face)]
             found.extend(_of_face(system, condition, face, known))
-    return tuple(found)
+    return AzeotropeSet(tuple(found), balanced(system, condition, found))
+
+
+def _condition(pressure_kPa: float | None, temperature_K: float | None) -> Condition:
+    if (pressure_kPa is None) == (temperature_K is None):
+        raise InvalidInputError(
+            "Azeotropes need a pressure or a temperature, and not both.",
+            cure="Give exactly one of 'pressure_kPa' and 'temperature_K'.",
+            field="pressure_kPa",
+        )
+    if pressure_kPa is not None:
+        return Condition(pressure_kPa=float(checked_pressure(pressure_kPa)[0]))
+    return Condition(temperature_K=float(checked_temperature(temperature_K or 0.0)[0]))
 
 
 def _of_face(

@@ -24,8 +24,9 @@ from groups.equilibrium.conditions import (
 )
 from groups.equilibrium.flash_result import Flash, Phases, flash_result
 from groups.equilibrium.liquid_trials import nearly_ideal
+from groups.equilibrium.phase_amounts import settled_amounts
 from groups.equilibrium.phase_problem import PhaseProblem
-from groups.equilibrium.phase_search import MOST_LIQUIDS, PhaseStates, find_phases
+from groups.equilibrium.phase_search import MOST_LIQUIDS, find_phases
 from groups.equilibrium.stability import stability
 from groups.equilibrium.states import States, log_sum_exp, safe_log
 from groups.equilibrium.system import System
@@ -118,28 +119,45 @@ def _unstable(system: System, T: FloatArray, x: FloatArray) -> BoolArray:
 
 
 class _SplitBoiling:
-    """ln of the bubble pressure of the stable liquids less ln P, for `rising_root`."""
+    """ln of the bubble pressure of the stable liquids less ln P, for `rising_root`.
+
+    The liquids of one temperature are the start at the next; they are looked for from nothing only
+    at first and where one of them is lost.
+    """
 
     def __init__(self, system: System, ln_pressure: FloatArray, x: FloatArray) -> None:
         self.system, self.ln_pressure, self.x = system, ln_pressure, x
+        m, n = x.shape
+        self.amounts = np.zeros((m, MOST_LIQUIDS + 1, n))
+        self.liquids = np.zeros(m, dtype=np.int64)
 
     def __call__(self, T: FloatArray, index: IntArray) -> tuple[FloatArray, FloatArray]:
         problem = PhaseProblem.of_liquid(self.system.activity, T, self.x[index])
-        found = find_phases(problem)
+        todo = np.ones(len(index), dtype=bool)
+        two = np.flatnonzero(self.liquids[index] == 2)
+        if len(two):
+            start = self.amounts[index[two], :2]
+            found = settled_amounts(problem.rows(two), start, 2)
+            self.amounts[index[two], :2] = found.amounts
+            todo[two] = ~found.settled
+        rows = np.flatnonzero(todo)
+        if len(rows):
+            fresh = find_phases(problem.rows(rows))
+            self.amounts[index[rows]], self.liquids[index[rows]] = fresh.amounts, fresh.liquids
         P = np.exp(self.ln_pressure[index])
-        y, total = _vapour(self.system, problem, found, P)
+        y, total = _vapour(self.system, problem, self.amounts[index], P)
         slope = (y * self.system.ln_saturation_slope(T)).sum(axis=1)
         return total - self.ln_pressure[index], slope
 
 
 def _vapour(
-    system: System, problem: PhaseProblem, found: PhaseStates, P: FloatArray
+    system: System, problem: PhaseProblem, amounts: FloatArray, P: FloatArray
 ) -> tuple[FloatArray, FloatArray]:
     """First vapour over the stable liquids, and ln of its pressure in kPa."""
     T = problem.temperature_K
     # Activities are the same in all liquids; the one that holds most of a component tells them.
-    totals = found.amounts.sum(axis=2, keepdims=True)
-    x = found.amounts / np.where(totals > 0.0, totals, 1.0)
+    totals = amounts.sum(axis=2, keepdims=True)
+    x = amounts / np.where(totals > 0.0, totals, 1.0)
     m, _, n = x.shape
     place = x[:, :MOST_LIQUIDS].argmax(axis=1)
     filled = np.where(totals[:, :MOST_LIQUIDS] > 0.0, x[:, :MOST_LIQUIDS], x[:, :1])
@@ -182,7 +200,7 @@ def _boiling(
         found = find_phases(problem)
         split = Phases.of_amounts(found.amounts, found.liquids, found.vapour)
         liquids[rows], shares[rows] = split.liquids, split.liquid_fractions
-        vapour[rows], ln_total = _vapour(system, problem, found, pressure[rows])
+        vapour[rows], ln_total = _vapour(system, problem, found.amounts, pressure[rows])
         pressure[rows] = np.exp(ln_total)
         for k, row in enumerate(rows.tolist()):
             failure[row] = found.failure[k]
