@@ -1,8 +1,8 @@
 """Stability of a phase by the tangent plane to the Gibbs energy of the equation of state.
 
 A phase z is stable where no trial phase w has sum W_i > 1 at a stationary point
-ln W_i + ln phi_i(w) = ln z_i + ln phi_i(z). Searches start from a vapour, a liquid and every pure
-component; substitution first, then Newton's method in 2 sqrt(W).
+ln W_i + ln phi_i(w) = ln z_i + ln phi_i(z). Searches start from a vapour, a liquid, every pure
+component, their pairs and the mean; substitution first, then Newton's method in 2 sqrt(W).
 
 Source: M. L. Michelsen, Fluid Phase Equilib. 9 (1982) 1-19.
 """
@@ -13,17 +13,19 @@ import numpy as np
 
 from groups.arrays import BoolArray, FloatArray, IntArray
 from groups.equilibrium.states import safe_log
-from groups.vapour.psrk.model import PsrkModel, phase, slopes
+from groups.vapour.psrk.model import Phase, PsrkModel, phase, slopes
 
 SUBSTITUTIONS = 6
 MAX_ITERATIONS = 60
+#: Most pairs of components that searches start from.
+MAX_PAIRS = 28
 TOLERANCE = 1e-9
 #: A phase is unstable where a trial lies this far below its plane: above the error of TOLERANCE^2
 #: and of the phase itself, below anything that matters.
 MARGIN = 1e-7
 #: Trials closer than this to the phase itself are the phase itself.
 SAME = 1e-5
-SMALLEST_CURVATURE = 0.02
+SMALLEST_CURVATURE, LARGEST_STEP = 0.02, 4.0
 #: Phases judged at a time, so that memory stays bounded.
 BATCH = 4000
 #: ln of what stands for no amount at all.
@@ -121,8 +123,12 @@ def _starts(
     nc = z.shape[1]
     pure = np.where(np.eye(nc) > 0.0, 0.0, np.log(1e-3 / max(nc - 1, 1)))
     many = [ln_z + ln_k, ln_z - ln_k, ln_z + ln_phi]
-    absent = z <= 0.0
-    many += [np.where(absent, NOTHING, np.broadcast_to(row, z.shape)) for row in pure]
+    shapes = [*pure, np.zeros(nc)]
+    if nc > 2:  # liquids with strong attractions lie between the pure ones
+        first, second = np.triu_indices(nc, 1)
+        few = slice(MAX_PAIRS)
+        shapes += [*np.maximum(pure[first[few]], pure[second[few]])]
+    many += [np.where(z <= 0.0, NOTHING, np.broadcast_to(shape, z.shape)) for shape in shapes]
     stacked = np.stack(many)
     top = stacked.max(axis=2, keepdims=True)
     total = top + np.log(np.exp(stacked - top).sum(axis=2, keepdims=True))
@@ -130,46 +136,60 @@ def _starts(
 
 
 class _Search:
-    """Stationary points of the modified tangent-plane distance, one for each row."""
+    """Local minima of 1 + sum_i W_i (ln W_i + ln phi_i - d_i - 1), one for each row."""
 
     def __init__(self, model: PsrkModel, T: FloatArray, P: FloatArray, d: FloatArray) -> None:
         self.model, self.T, self.P, self.d = model, T, P, d
         self.found = np.zeros(len(T), dtype=bool)
+        self.step = np.zeros_like(d)
+        self.best = np.full(len(T), np.inf)
 
     def run(self, u: FloatArray) -> FloatArray:
         """ln W after the search; `found` tells where it is a stationary point."""
         u = u.copy()
         rows: IntArray = np.arange(len(u), dtype=np.int64)
         for iteration in range(MAX_ITERATIONS):
-            step, size = self._step(rows, u[rows], newton=iteration >= SUBSTITUTIONS)
-            u[rows] = np.clip(u[rows] + step, NOTHING - 60.0, 300.0)
-            done = size <= TOLERANCE
+            # `u` holds the best point; the step from it is halved where it did not lead down.
+            trial = np.clip(u[rows] + self.step[rows], NOTHING - 60.0, 300.0)
+            at, total, mismatch = self._evaluate(rows, trial)
+            value = 1.0 + (np.exp(trial) * (mismatch - 1.0)).sum(axis=1)
+            down = value <= self.best[rows] + 1e-12 * (1.0 + np.abs(value))
+            self.step[rows[~down]] *= 0.5
+            kept = rows[down]
+            u[kept], self.best[kept] = trial[down], value[down]
+            major = at.fractions > 1e-12
+            size = np.abs(np.where(major, mismatch, 0.0)).max(axis=1)
+            fresh = -mismatch
+            if iteration >= SUBSTITUTIONS:
+                fresh = self._newton(at, total, mismatch, major)
+            limit = np.where(major, np.abs(fresh), 0.0).max(axis=1)
+            fresh *= np.minimum(1.0, LARGEST_STEP / np.maximum(limit, 1e-300))[:, None]
+            self.step[kept] = fresh[down]
+            done = down & (size <= TOLERANCE)
             self.found[rows[done]] = True
-            rows = rows[~done]
+            stuck = ~down & (np.abs(self.step[rows]).max(axis=1) < 1e-14)
+            rows = rows[~(done | stuck)]
             if not len(rows):
                 break
         return u
 
-    def _step(
-        self, rows: IntArray, u: FloatArray, *, newton: bool
-    ) -> tuple[FloatArray, FloatArray]:
-        """The next change of ln W, and the size of the mismatch before it."""
+    def _evaluate(self, rows: IntArray, u: FloatArray) -> tuple[Phase, FloatArray, FloatArray]:
+        """The trial phase, sum W, and the mismatch of ln fugacity."""
         total = np.exp(u).sum(axis=1)
         w = np.exp(u) / total[:, None]
         at = phase(self.model, self.T[rows], self.P[rows], w, "stable")
-        mismatch = u + at.ln_phi - self.d[rows]
-        major = w > 1e-12
-        size = np.abs(np.where(major, mismatch, 0.0)).max(axis=1)
-        if not newton:
-            return -mismatch, size
-        root = np.exp(0.5 * u)
+        return at, total, u + at.ln_phi - self.d[rows]
+
+    def _newton(
+        self, at: Phase, total: FloatArray, mismatch: FloatArray, major: BoolArray
+    ) -> FloatArray:
+        """Newton's change of ln W, in 2 sqrt(W), with the curvature kept positive."""
+        root = np.sqrt(at.fractions * total[:, None])
         matrix = slopes(self.model, at).moles / total[:, None, None]
         matrix = matrix * root[:, :, None] * root[:, None, :]
-        matrix = np.where(major[:, :, None] & major[:, None, :], matrix, 0.0) + np.eye(u.shape[1])
-        values, vectors = np.linalg.eigh(matrix)
+        matrix = np.where(major[:, :, None] & major[:, None, :], matrix, 0.0)
+        values, vectors = np.linalg.eigh(matrix + np.eye(root.shape[1]))
         curvature = np.maximum(np.abs(values), SMALLEST_CURVATURE)
         rotated = np.einsum("mji,mj->mi", vectors, np.where(major, root * mismatch, 0.0))
         scaled = np.einsum("mij,mj->mi", vectors, rotated / curvature)
-        step = np.where(major, -scaled / np.where(major, root, 1.0), -mismatch)
-        limit = np.minimum(1.0, 3.0 / np.maximum(np.abs(step * major).max(axis=1), 1e-300))
-        return step * limit[:, None], size
+        return np.where(major, -scaled / np.where(major, root, 1.0), -mismatch)
