@@ -200,7 +200,7 @@ class _Still:
             half = _inside(x[rows] + 0.5 * STEP * first)
             step = self._direction(half, sense[rows])
             new = _inside(x[rows] + STEP * step)
-            lost = ~np.isfinite(new).all(axis=1)
+            lost = np.asarray(~np.isfinite(new).all(axis=1))
             x[rows] = np.where(lost[:, None], x[rows], new)
             arrived = self._arrived(x[rows], sense[rows])
             for k, row in enumerate(rows.tolist()):
