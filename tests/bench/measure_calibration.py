@@ -17,23 +17,17 @@ import numpy as np
 from matplotlib.backends.backend_agg import FigureCanvasAgg
 from matplotlib.figure import Figure
 
-from groups.arrays import BoolArray, FloatArray, IntArray
-from groups.confidence.calibration.crossval import (
-    Held,
-    cross_validate,
-    fit_calibration,
-)
-from groups.confidence.calibration.features import FEATURES
+from groups.arrays import BoolArray, IntArray
+from groups.confidence.calibration.crossval import Held, cross_validate
+from groups.confidence.calibration.features import TABLE_FEATURES
 from groups.confidence.calibration.grades import grade_of_half_width
 from groups.confidence.calibration.open_set import OpenSet, group_folds, read_open_set
-from groups.confidence.calibration.scale import half_width
 from groups.confidence.calibration.training import Training, training
 from groups.confidence.calibration.traits import traits
 from groups.confidence.confidence import GRADES
 from tests.bench.open_data import OPEN_DATA
 
 FOLDS = ("solvent or aqueous solute", "solvent", "solute")
-LEVELS = np.array([0.10, 0.20, 0.30, 0.40, 0.50, 0.60, 0.70, 0.80, 0.90, 0.95])
 
 
 @dataclass(frozen=True, slots=True)
@@ -42,8 +36,7 @@ class Prepared:
 
     data: OpenSet
     known: BoolArray  # (rows in data,)
-    features: FloatArray
-    error: FloatArray
+    rows: Training
 
     def folds(self, by: str, n_folds: int) -> IntArray:
         """Folds of the answered rows."""
@@ -59,22 +52,22 @@ class Prepared:
 def prepared() -> Prepared:
     """Read and predict the open set once."""
     data = read_open_set(OPEN_DATA / "gamma_infinity.csv")
-    made: Training = training(data)
-    return Prepared(data, made.known, made.features[made.known], made.error[made.known])
+    rows, known, _ = training(data)
+    return Prepared(data, known, rows)
 
 
 @cache
-def held(by: str, n_folds: int = 8) -> Held:
+def held(by: str, n_folds: int = 8, n_inner: int = 5) -> Held:
     """Out-of-fold intervals for one kind of fold."""
     ready = prepared()
-    inner = ready.folds("solvent or aqueous solute", 5)
-    return cross_validate(ready.features, ready.error, ready.folds(by, n_folds), inner)
+    inner = ready.folds("solvent or aqueous solute", n_inner)
+    return cross_validate(ready.rows, ready.folds(by, n_folds), inner)
 
 
 def row_groups() -> dict[str, BoolArray]:
     """The groups of rows in which the coverage is asked for."""
     ready = prepared()
-    column = dict(zip(FEATURES, ready.features.T, strict=True))
+    column = dict(zip(TABLE_FEATURES, ready.rows.features.T, strict=True))
     pairs = [pair for pair, known in zip(ready.data.pairs, ready.known, strict=True) if known]
     solvents = [traits(solvent) for _, solvent, _ in pairs]
     return {
@@ -96,35 +89,20 @@ def errors_by_grade(result: Held) -> dict[str, tuple[float, float]]:
     }
 
 
-def reliability(by: str = FOLDS[0]) -> FloatArray:
-    """Coverage out of fold at each of `LEVELS`."""
-    ready = prepared()
-    folds, inner = ready.folds(by, 8), ready.folds(FOLDS[0], 5)
-    inside = np.zeros((len(LEVELS), len(ready.error)), dtype=np.bool_)
-    for fold in np.unique(folds):
-        test = folds == fold
-        fitted = fit_calibration(ready.features[~test], ready.error[~test], inner[~test])
-        scaled = ready.error[test] / half_width(ready.features[test], fitted.coefficients)
-        for row, level in enumerate(LEVELS):
-            low, high = fitted.bounds(float(level))
-            inside[row, test] = (scaled >= low) & (scaled <= high)
-    share: FloatArray = inside.mean(axis=1)
-    return share
-
-
 def write_figures(folder: Path) -> None:
     """Reliability diagram and histogram of the widths."""
     folder.mkdir(parents=True, exist_ok=True)
     figure = Figure(figsize=(4.5, 4.5), layout="constrained")
+    result = held(FOLDS[0])
     axes = figure.add_subplot()
     axes.plot([0, 1], [0, 1], color="0.6", linewidth=1, label="perfect")
-    axes.plot(LEVELS, reliability(), "o-", color="#1f5fa8", label="solvents and solutes unseen")
+    share = result.inside.mean(axis=1)
+    axes.plot(result.levels, share, "o-", color="#1f5fa8", label="solvents and solutes unseen")
     axes.set(xlabel="stated probability", ylabel="share of measurements inside", aspect="equal")
     axes.legend(frameon=False)
     _save(figure, folder / "reliability")
     figure = Figure(figsize=(5.5, 3.5), layout="constrained")
     axes = figure.add_subplot()
-    result = held(FOLDS[0])
     axes.hist(np.minimum(result.half_width, 2.5), bins=50, color="#1f5fa8")
     constant = float(np.median(result.constant_upper - result.constant_lower)) / 2.0
     axes.axvline(constant, color="0.3", linestyle="--", label="one width for all")
@@ -145,11 +123,14 @@ def main() -> None:
     parser.add_argument("--figures", type=Path, help="folder for the diagrams")
     folder: Path | None = parser.parse_args().figures
     ready = prepared()
+    uncorrected = np.abs(ready.rows.error)
+    print(f"weighted tables alone: mean |error| {uncorrected.mean():.4f}")
     print(f"answered {100 * ready.answered:.1f} % of {ready.data.rows_in_file} rows")
     for by in FOLDS:
         result = held(by)
         size = np.abs(result.error)
         print(f"\nwhole groups: {by}")
+        print("  coverage by level", np.round(result.inside.mean(axis=1), 3))
         print(f"  mean |error| {size.mean():.4f}, median {np.median(size):.4f}")
         print(
             f"  coverage {result.coverage():.3f}, score ratio {result.score_ratio():.3f}, "

@@ -1,5 +1,7 @@
 """How far off a number may be: weights of `auto`, intervals, grades and evidence from open data."""
 
+from groups.confidence.calibration.addition import AddedExcess
+from groups.confidence.calibration.automatic import AutoModel, auto_model
 from groups.confidence.calibration.dilute import TABLES, DiluteTables, dilute_tables
 from groups.confidence.calibration.evidence import evidence
 from groups.confidence.calibration.grades import THRESHOLDS, grade_of_half_width
@@ -8,22 +10,25 @@ from groups.confidence.calibration.intervals import (
     dilute_answers,
     ln_gamma_interval,
 )
-from groups.confidence.calibration.mixture import TableWeight, mixture_weights
-from groups.confidence.calibration.samples import PerturbedModel, SampledModels, sample_models
+from groups.confidence.calibration.mixture import TableWeight, mixture_weights, pair_weights
+from groups.confidence.calibration.samples import SampledModels, sample_models
 
 __all__ = [
     "TABLES",
     "THRESHOLDS",
+    "AddedExcess",
+    "AutoModel",
     "DiluteAnswers",
     "DiluteTables",
-    "PerturbedModel",
     "SampledModels",
     "TableWeight",
+    "auto_model",
     "dilute_answers",
     "dilute_tables",
     "evidence",
     "grade_of_half_width",
     "ln_gamma_interval",
     "mixture_weights",
+    "pair_weights",
     "sample_models",
 ]

@@ -2,8 +2,9 @@
 
     python -m groups.confidence.calibration.build [path to gamma_infinity.csv]
 
-Writes evidence.csv, scale.csv, quantiles.csv and correlation.csv beside this module, and the date,
-the counts and the checksums into the record of each. Statistics only; no measured value.
+Writes evidence.csv, descriptors.csv, prototypes.csv, scale.csv, quantiles.csv and correlation.csv
+beside this module, and the date, the counts and the checksum into the record of each. No measured
+value is written.
 """
 
 import argparse
@@ -18,11 +19,14 @@ from pathlib import Path
 import numpy as np
 from scipy.stats import spearmanr
 
-from groups.arrays import FloatArray
-from groups.confidence.calibration.crossval import fit_calibration, out_of_fold_scale
+from groups.arrays import FloatArray, IntArray
+from groups.confidence.calibration.correction import Correction
+from groups.confidence.calibration.crossval import fit_calibration, unseen_errors, unseen_scale
+from groups.confidence.calibration.descriptors import DESCRIPTORS
 from groups.confidence.calibration.dilute import TABLES, DiluteTables
 from groups.confidence.calibration.evidence import cross_pairs
 from groups.confidence.calibration.features import FEATURES
+from groups.confidence.calibration.model import Calibration
 from groups.confidence.calibration.open_set import OpenSet, group_folds, read_open_set
 from groups.confidence.calibration.training import training
 from groups.structure.assignment import assign
@@ -43,47 +47,15 @@ def main(arguments: Sequence[str] | None = None) -> None:
     parser.add_argument("data", nargs="?", type=Path, default=DEFAULT_DATA)
     path: Path = parser.parse_args(arguments).data
     data = read_open_set(path)
-    made = training(data)
-    _write(
-        "evidence",
-        (
-            "method",
-            "i",
-            "j",
-            "group_i",
-            "group_j",
-            "measurements",
-            "systems",
-            "bias_ln_gamma",
-            "spread_ln_gamma",
-            "mean_absolute_error_ln_gamma",
-        ),
-        evidence_rows(data, made.tables),
-        "Open measurements behind each main-group pair between solute and solvent",
-        data,
-    )
-    features, error, known = made.features, made.error, made.known
+    rows, known, tables = training(data)
     folds = group_folds(data.pairs, "solvent or aqueous solute")[known]
-    fitted = fit_calibration(features[known], error[known], folds)
-    scaled = np.full(len(error), np.nan)
-    scaled[known] = error[known] / out_of_fold_scale(features[known], error[known], folds)
-    _write(
-        "scale",
-        ("feature", "coefficient"),
-        ((name, f"{value:.3f}") for name, value in zip(FEATURES, fitted.coefficients, strict=True)),
-        "Coefficients of the logarithm of the half-width of the 90 % interval of ln gamma",
-        data,
-    )
-    _write(
-        "quantiles",
-        ("probability", "scaled_error"),
-        (
-            (f"{p:.3f}", f"{q:.3f}")
-            for p, q in zip(fitted.probabilities, fitted.quantiles, strict=True)
-        ),
-        "Out-of-fold quantiles of (measured - predicted) / half-width scale",
-        data,
-    )
+    fitted, prototypes, _ = fit_calibration(rows, folds)
+    error, features = unseen_errors(rows, folds)
+    scaled = np.full(len(known), np.nan)
+    scaled[known] = error / unseen_scale(features, error, folds)
+    _write_evidence(data, tables)
+    _write_correction(data, fitted.correction, np.flatnonzero(known)[prototypes])
+    _write_widths(data, fitted)
     rho, n = direction_correlation(data, scaled)
     _write(
         "correlation",
@@ -93,8 +65,59 @@ def main(arguments: Sequence[str] | None = None) -> None:
         data,
     )
     sys.stdout.write(
-        f"{known.sum()} of {data.rows_in_file} rows; "
-        f"mean absolute error {np.abs(error[known]).mean():.4f}\n"
+        f"{known.sum()} of {data.rows_in_file} rows; mean absolute error "
+        f"{np.abs(rows.error).mean():.4f}, corrected and unseen {np.abs(error).mean():.4f}\n"
+    )
+
+
+def _write_evidence(data: OpenSet, tables: DiluteTables) -> None:
+    header = ("method", "i", "j", "group_i", "group_j", "measurements", "systems")
+    statistics = ("bias_ln_gamma", "spread_ln_gamma", "mean_absolute_error_ln_gamma")
+    _write(
+        "evidence",
+        header + statistics,
+        evidence_rows(data, tables),
+        "Open measurements behind each main-group pair between solute and solvent",
+        data,
+    )
+
+
+def _write_correction(data: OpenSet, correction: Correction, prototypes: IntArray) -> None:
+    places = zip(DESCRIPTORS, correction.centre, correction.spread, strict=True)
+    _write(
+        "descriptors",
+        ("descriptor", "centre", "spread"),
+        ((name, f"{centre:.4f}", f"{spread:.4f}") for name, centre, spread in places),
+        "Mean and spread of each descriptor of a pair over the systems of the open set",
+        data,
+    )
+    names = [tuple(one.canonical_smiles for one in data.pairs[int(k)][:2]) for k in prototypes]
+    kept = zip(names, correction.coefficients, correction.prototypes, strict=True)
+    _write(
+        "prototypes",
+        ("solute", "solvent", "coefficient", *DESCRIPTORS),
+        ((*pair, f"{b:.4f}", *(f"{z:.3f}" for z in place)) for pair, b, place in kept),
+        "Systems that the correction is measured from: coefficient, and descriptors to scale",
+        data,
+    )
+
+
+def _write_widths(data: OpenSet, fitted: Calibration) -> None:
+    named = zip(FEATURES, fitted.coefficients, strict=True)
+    _write(
+        "scale",
+        ("feature", "coefficient"),
+        ((name, f"{value:.3f}") for name, value in named),
+        "Coefficients of the logarithm of the half-width of the 90 % interval of ln gamma",
+        data,
+    )
+    steps = zip(fitted.probabilities, fitted.quantiles, strict=True)
+    _write(
+        "quantiles",
+        ("probability", "scaled_error"),
+        ((f"{p:.3f}", f"{q:.3f}") for p, q in steps),
+        "Out-of-fold quantiles of (measured - predicted) / half-width scale",
+        data,
     )
 
 

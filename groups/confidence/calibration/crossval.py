@@ -5,6 +5,7 @@ from dataclasses import dataclass
 import numpy as np
 
 from groups.arrays import BoolArray, FloatArray, IntArray
+from groups.confidence.calibration.features import with_correction
 from groups.confidence.calibration.model import Calibration
 from groups.confidence.calibration.scale import (
     NOMINAL_LEVEL,
@@ -12,12 +13,15 @@ from groups.confidence.calibration.scale import (
     half_width,
     interval_score,
 )
+from groups.confidence.calibration.training import Training
 
 # Steps of the tabulated distribution: fine in the tails, where intervals end.
 PROBABILITIES = np.array(
     [0.005, 0.01, 0.02, 0.03, 0.05, 0.07, 0.10, 0.15, 0.20, 0.25, 0.30, 0.35, 0.40, 0.45, 0.50]
 )
 PROBABILITIES = np.r_[PROBABILITIES, 1.0 - PROBABILITIES[-2::-1]]
+
+LEVELS = np.array([0.10, 0.20, 0.30, 0.40, 0.50, 0.60, 0.70, 0.80, 0.90, 0.95])
 
 
 @dataclass(frozen=True, slots=True)
@@ -32,6 +36,8 @@ class Held:
     upper: FloatArray
     constant_lower: FloatArray
     constant_upper: FloatArray
+    levels: FloatArray  # (n_levels,)
+    inside: BoolArray  # (n_levels, n_rows)
 
     def coverage(self, rows: BoolArray | None = None) -> float:
         """Share of rows whose error lies within the interval."""
@@ -55,35 +61,68 @@ class Held:
         return (self.upper - self.lower) / 2.0
 
 
-def fit_calibration(features: FloatArray, error: FloatArray, folds: IntArray) -> Calibration:
-    """Fit the width, then the quantiles of the scaled error out of fold (conformal).
+def fit_calibration(
+    rows: Training, folds: IntArray
+) -> tuple[Calibration, IntArray, tuple[float, float]]:
+    """Fit the correction, the width, and the quantiles of the scaled error.
+
+    Parameters
+    ----------
+    rows : Training
+    folds : IntArray of shape (n,)
+        Folds of whole groups. Width and quantiles see only errors of groups that the correction,
+        and the quantiles only those that the width, never saw: the conformal part.
+
+    Returns
+    -------
+    tuple of Calibration, IntArray and tuple of float
+        The calibration, with correlation 0 (that needs pairs measured in both directions); one
+        row of each prototype; the ends of the interval of one width for all.
+    """
+    error, features = unseen_errors(rows, folds)
+    scaled = error / unseen_scale(features, error, folds)
+    correction, prototypes = rows.correction()
+    fitted = Calibration(
+        correction,
+        fit_scale(features, error),
+        PROBABILITIES,
+        np.quantile(scaled, PROBABILITIES),
+        0.0,
+    )
+    tail = (1.0 - NOMINAL_LEVEL) / 2.0
+    low, high = np.quantile(error, [tail, 1.0 - tail])
+    return fitted, prototypes, (float(low), float(high))
+
+
+def unseen_errors(rows: Training, folds: IntArray) -> tuple[FloatArray, FloatArray]:
+    """Errors left by a correction that never saw the row's group, and the full features.
+
+    Parameters
+    ----------
+    rows : Training
+    folds : IntArray of shape (n,)
+
+    Returns
+    -------
+    tuple of FloatArray
+        Measured minus corrected ln gamma (n,); features (n, n_features).
+    """
+    added, nearest = np.empty(len(folds)), np.empty(len(folds))
+    for fold in np.unique(folds):
+        test = folds == fold
+        correction, _ = rows.take(~test).correction()
+        added[test], nearest[test] = correction.at(rows.descriptors[test])
+    return rows.error - added, with_correction(rows.features, added, nearest)
+
+
+def unseen_scale(features: FloatArray, error: FloatArray, folds: IntArray) -> FloatArray:
+    """Half-width scale of each row from a fit without its fold.
 
     Parameters
     ----------
     features : FloatArray of shape (n, n_features)
     error : FloatArray of shape (n,)
-        Measured minus predicted ln gamma, 1.
     folds : IntArray of shape (n,)
-        Folds of whole groups, so that the quantiles hold for groups never seen.
-
-    Returns
-    -------
-    Calibration
-        Its correlation is 0: that needs pairs measured in both directions.
-    """
-    scaled = error / out_of_fold_scale(features, error, folds)
-    return Calibration(
-        fit_scale(features, error), PROBABILITIES, np.quantile(scaled, PROBABILITIES), 0.0
-    )
-
-
-def out_of_fold_scale(features: FloatArray, error: FloatArray, folds: IntArray) -> FloatArray:
-    """Half-width scale of each row from a fit without its fold.
-
-    Parameters
-    ----------
-    features, error, folds
-        As for `fit_calibration`.
 
     Returns
     -------
@@ -97,28 +136,35 @@ def out_of_fold_scale(features: FloatArray, error: FloatArray, folds: IntArray) 
 
 
 def cross_validate(
-    features: FloatArray, error: FloatArray, folds: IntArray, inner: IntArray
+    rows: Training, folds: IntArray, inner: IntArray, levels: FloatArray = LEVELS
 ) -> Held:
     """Intervals of each outer fold from a calibration made wholly on the others.
 
     Parameters
     ----------
-    features, error
-        As for `fit_calibration`.
+    rows : Training
     folds, inner : IntArray of shape (n,)
-        Outer folds, and those within which the quantiles are found.
+        Outer folds, and those within which width and quantiles are found.
+    levels : FloatArray
+        Further levels at which the coverage is wanted.
 
     Returns
     -------
     Held
     """
-    ends = np.empty((4, len(error)))
-    tail = (1.0 - NOMINAL_LEVEL) / 2.0
+    ends, error = np.empty((4, len(folds))), np.empty(len(folds))
+    inside = np.zeros((len(levels), len(folds)), dtype=np.bool_)
     for fold in np.unique(folds):
         test, train = folds == fold, folds != fold
-        fitted = fit_calibration(features[train], error[train], inner[train])
-        scale = half_width(features[test], fitted.coefficients)
+        fitted, _, constant = fit_calibration(rows.take(train), inner[train])
+        added, nearest = fitted.correction.at(rows.descriptors[test])
+        error[test] = rows.error[test] - added
+        features = with_correction(rows.features[test], added, nearest)
+        scale = half_width(features, fitted.coefficients)
         low, high = fitted.bounds(NOMINAL_LEVEL)
         ends[0, test], ends[1, test] = low * scale, high * scale
-        ends[2:, test] = np.quantile(error[train], [tail, 1.0 - tail])[:, None]
-    return Held(error, *ends)
+        ends[2:, test] = np.array(constant)[:, None]
+        for row, level in enumerate(levels):
+            low, high = fitted.bounds(float(level))
+            inside[row, test] = (error[test] >= low * scale) & (error[test] <= high * scale)
+    return Held(error, ends[0], ends[1], ends[2], ends[3], levels, inside)

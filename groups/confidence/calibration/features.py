@@ -1,7 +1,7 @@
 """What the width of an interval depends on, as one row of numbers for each dilute pair.
 
-Everything here is symmetric in no particular way and needs no measurement: spread among the
-tables, what the tables lack, size and polarity of the molecules, distance from room temperature.
+Spread among the tables, what the tables lack, size and polarity of the molecules, distance from
+room temperature, and how far the pair is from the systems that the correction was learned from.
 """
 
 import numpy as np
@@ -11,7 +11,7 @@ from groups.confidence.calibration.dilute import REFERENCE_TEMPERATURE_K, TABLES
 from groups.confidence.calibration.traits import Traits, traits
 from groups.confidence.calibration.weights import LEADING, distances, weighted_ln_gamma
 
-FEATURES: tuple[str, ...] = (
+TABLE_FEATURES: tuple[str, ...] = (
     "constant",
     "ln_mean_difference",
     "ln_largest_difference",
@@ -36,6 +36,7 @@ FEATURES: tuple[str, ...] = (
     "ln_heavy_atoms_solute",
     "ln_heavy_atoms_solvent",
 )
+FEATURES: tuple[str, ...] = (*TABLE_FEATURES, "ln_distance_to_prototypes", "size_of_correction")
 SMALLEST_DIFFERENCE = 0.05  # tables closer than this agree as well as repeated measurements do
 LARGEST_DIFFERENCE = 3.0
 HOT_K = 373.15
@@ -56,7 +57,7 @@ def feature_matrix(tables: DiluteTables, weights: FloatArray) -> FloatArray:
     Returns
     -------
     FloatArray of shape (n_pairs, n_features)
-        In the order of `FEATURES`; finite also where no table gives a number.
+        In the order of `TABLE_FEATURES`; finite also where no table gives a number.
     """
     centre = weighted_ln_gamma(tables, weights)
     spread = _spread_features(tables, centre)
@@ -73,7 +74,27 @@ def feature_matrix(tables: DiluteTables, weights: FloatArray) -> FloatArray:
         "away_from_298_K": np.abs(T - REFERENCE_TEMPERATURE_K) / 100.0,
         "above_373_K": np.maximum(T - HOT_K, 0.0) / 50.0,
     }
-    return np.stack([columns[name] for name in FEATURES], axis=1)
+    return np.stack([columns[name] for name in TABLE_FEATURES], axis=1)
+
+
+def with_correction(
+    features: FloatArray, correction: FloatArray, nearest: FloatArray
+) -> FloatArray:
+    """The features with the two that the correction adds.
+
+    Parameters
+    ----------
+    features : FloatArray of shape (n, n_table_features)
+    correction, nearest : FloatArray of shape (n,)
+        From `Correction.at`.
+
+    Returns
+    -------
+    FloatArray of shape (n, n_features)
+        In the order of `FEATURES`.
+    """
+    extra = np.stack([np.log(SMALLEST_DIFFERENCE + nearest), np.abs(correction)], axis=1)
+    return np.concatenate([features, extra], axis=1)
 
 
 def _spread_features(tables: DiluteTables, centre: FloatArray) -> dict[str, FloatArray]:

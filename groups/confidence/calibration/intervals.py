@@ -7,8 +7,9 @@ import numpy as np
 
 from groups.activity.choice import OnMissing
 from groups.arrays import FloatArray
+from groups.confidence.calibration.descriptors import descriptor_matrix
 from groups.confidence.calibration.dilute import DilutePair, DiluteTables, dilute_tables
-from groups.confidence.calibration.features import feature_matrix
+from groups.confidence.calibration.features import feature_matrix, with_correction
 from groups.confidence.calibration.model import Calibration, calibration
 from groups.confidence.calibration.scale import half_width
 from groups.confidence.calibration.weights import table_weights, weighted_ln_gamma
@@ -18,12 +19,14 @@ from groups.confidence.calibration.weights import table_weights, weighted_ln_gam
 class DiluteAnswers:
     """What `auto` says of many dilute pairs; arrays of shape (n_pairs,) unless said otherwise.
 
-    NaN where no table gives a number. `scale` is the half-width that intervals are multiples of.
+    NaN where no table gives a number. `ln_gamma` is the weighted sum of the tables plus
+    `correction`; `scale` is the half-width that intervals are multiples of.
     """
 
     tables: DiluteTables
     weights: FloatArray  # (n_pairs, n_tables), columns as TABLES
     ln_gamma: FloatArray
+    correction: FloatArray
     scale: FloatArray
 
     def interval(self, level: float = 0.90) -> tuple[FloatArray, FloatArray]:
@@ -85,8 +88,11 @@ def answers_from(tables: DiluteTables, calibrated: Calibration) -> DiluteAnswers
     """
     weights = table_weights(tables)
     centre = weighted_ln_gamma(tables, weights)
-    scale = half_width(feature_matrix(tables, weights), calibrated.coefficients)
-    return DiluteAnswers(tables, weights, centre, np.where(np.isfinite(centre), scale, np.nan))
+    features = feature_matrix(tables, weights)
+    added, nearest = calibrated.correction.at(descriptor_matrix(tables, weights, features))
+    scale = half_width(with_correction(features, added, nearest), calibrated.coefficients)
+    nothing = np.where(np.isfinite(centre), 0.0, np.nan)
+    return DiluteAnswers(tables, weights, centre + added, added + nothing, scale + nothing)
 
 
 def ln_gamma_interval(

@@ -8,7 +8,9 @@ from itertools import combinations
 import numpy as np
 
 from groups.activity.choice import OnMissing, candidate
+from groups.arrays import BoolArray, FloatArray
 from groups.confidence.calibration.dilute import REFERENCE_TEMPERATURE_K, TABLES, dilute_tables
+from groups.confidence.calibration.intervals import DiluteAnswers
 from groups.confidence.calibration.weights import dispute, distances, weights_from
 from groups.structure.assignment import assign
 from groups.structure.molecule import Molecule
@@ -58,6 +60,30 @@ def _mixture_weights(
     suspect = np.asarray(tables.suspect.any(axis=0))
     disputed = np.mean(dispute(tables), keepdims=True)
     weights = weights_from(apart[None], disputed, usable[None], completed[None], suspect[None])[0]
+    return _named(weights, apart, completed, suspect)
+
+
+def pair_weights(answers: DiluteAnswers) -> list[tuple[TableWeight, ...]]:
+    """The tables behind each dilute pair of a batch, as `mixture_weights` gives them for one.
+
+    Parameters
+    ----------
+    answers : DiluteAnswers
+
+    Returns
+    -------
+    list of tuple of TableWeight, length n_pairs
+        The heaviest first; empty where no table gives a number.
+    """
+    tables = answers.tables
+    rows = zip(answers.weights, distances(tables), tables.completed, tables.suspect, strict=True)
+    return [_named(*row) for row in rows]
+
+
+def _named(
+    weights: FloatArray, apart: FloatArray, completed: BoolArray, suspect: BoolArray
+) -> tuple[TableWeight, ...]:
+    """The tables with a weight, by name, the heaviest first."""
     return tuple(
         TableWeight(
             TABLES[k],

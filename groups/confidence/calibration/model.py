@@ -1,4 +1,4 @@
-"""The shipped calibration: coefficients of the width and quantiles of the scaled error."""
+"""The shipped calibration: correction, coefficients of the width, quantiles of the error."""
 
 import csv
 from collections.abc import Mapping
@@ -9,6 +9,8 @@ from importlib.resources import files
 import numpy as np
 
 from groups.arrays import FloatArray
+from groups.confidence.calibration.correction import Correction
+from groups.confidence.calibration.descriptors import DESCRIPTORS
 from groups.confidence.calibration.features import FEATURES
 from groups.errors import DataError, OutOfRangeError
 
@@ -23,6 +25,7 @@ class Calibration:
     that is the conformal part. `correlation` ties the errors of both directions of one binary.
     """
 
+    correction: Correction
     coefficients: FloatArray  # (n_features,)
     probabilities: FloatArray  # (n_quantiles,), rising
     quantiles: FloatArray  # (n_quantiles,), rising
@@ -85,10 +88,25 @@ def calibration() -> Calibration:
         raise DataError("scale.csv and groups.confidence.calibration.features do not fit together.")
     steps = read_rows("quantiles.csv")
     return Calibration(
+        _correction(),
         np.array([scale[name] for name in FEATURES]),
         np.array([float(row["probability"]) for row in steps]),
         np.array([float(row["scaled_error"]) for row in steps]),
         float(read_rows("correlation.csv")[0]["correlation"]),
+    )
+
+
+def _correction() -> Correction:
+    """Prototypes with their descriptors, to scale."""
+    spread = {row["descriptor"]: row for row in read_rows("descriptors.csv")}
+    prototypes = read_rows("prototypes.csv")
+    if tuple(spread) != DESCRIPTORS:
+        raise DataError("descriptors.csv does not fit groups.confidence.calibration.descriptors.")
+    return Correction(
+        np.array([float(row["centre"]) for row in spread.values()]),
+        np.array([float(row["spread"]) for row in spread.values()]),
+        np.array([[float(row[name]) for name in DESCRIPTORS] for row in prototypes]),
+        np.array([float(row["coefficient"]) for row in prototypes]),
     )
 
 
