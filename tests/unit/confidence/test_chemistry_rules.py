@@ -3,6 +3,7 @@
 import pytest
 
 from groups.confidence.chemistry_rules import chemistry_reasons, gas_reasons
+from groups.confidence.structure_rules import size_reasons
 from groups.structure.identify import identified
 from groups.structure.molecule import molecule_from_smiles
 
