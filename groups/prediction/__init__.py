@@ -7,7 +7,9 @@ from groups.prediction.answers import (
     DiagramAnswer,
     InfiniteDilutionAnswer,
     LiquidSplitAnswer,
+    MeasurementPlan,
     PhasePointAnswer,
+    PlannedMeasurement,
 )
 from groups.prediction.assignments import assign_groups
 from groups.prediction.cautions import CAUTIONS
@@ -16,6 +18,7 @@ from groups.prediction.component import Component
 from groups.prediction.diagrams import diagram
 from groups.prediction.flashes import flash
 from groups.prediction.infinite_dilution import infinite_dilution
+from groups.prediction.measurement_plan import measurement_plan, ranking_plan
 from groups.prediction.phase_points import bubble_point, dew_point
 from groups.prediction.special_points import azeotropes, liquid_splits
 
@@ -28,7 +31,9 @@ __all__ = [
     "DiagramAnswer",
     "InfiniteDilutionAnswer",
     "LiquidSplitAnswer",
+    "MeasurementPlan",
     "PhasePointAnswer",
+    "PlannedMeasurement",
     "activity_coefficients",
     "assign_groups",
     "azeotropes",
@@ -38,4 +43,6 @@ __all__ = [
     "flash",
     "infinite_dilution",
     "liquid_splits",
+    "measurement_plan",
+    "ranking_plan",
 ]

@@ -4,7 +4,7 @@ Arrays run over points first, components last. A number that could not be had is
 matching `failure` (or the reasons of `confidence`) says why.
 """
 
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 
 import numpy as np
 
@@ -121,3 +121,29 @@ class DiagramAnswer:
     azeotrope_chance: AzeotropeChance | None
     vapour_pressures: tuple[VapourPressure, ...]
     confidence: Confidence
+
+
+@dataclass(frozen=True, slots=True)
+class PlannedMeasurement:
+    """One measurement worth making, and how wide the interval is expected to be after it."""
+
+    kind: str  # "gamma_infinity", "P-x point" or "boiling_point"
+    what: str
+    components: tuple[int, ...]
+    temperature_K: float
+    mole_fractions: tuple[float, ...] | None
+    expected_width: float = float("nan")
+
+    def after(self, width: float) -> "PlannedMeasurement":
+        """The same with the width expected once it and those before it are made."""
+        return replace(self, expected_width=width)
+
+
+@dataclass(frozen=True, slots=True)
+class MeasurementPlan:
+    """The few measurements that shrink the doubt about a question most, the best first."""
+
+    question: str
+    level: float
+    interval: tuple[float, float]  # as it stands now, in the unit of the question
+    measurements: tuple[PlannedMeasurement, ...]

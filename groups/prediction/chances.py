@@ -65,6 +65,31 @@ def azeotrope_chance(
     -------
     AzeotropeChance
     """
+    ln_alpha, level = drawn_ln_alpha(drawn, system, components, temperature_K, pressure_kPa)
+    return _found(components, ln_alpha, level, temperature_K, pressure_kPa)
+
+
+def drawn_ln_alpha(
+    drawn: Drawn,
+    system: System,
+    components: tuple[int, int],
+    temperature_K: float | None,
+    pressure_kPa: float | None,
+) -> tuple[FloatArray, FloatArray]:
+    """ln of the relative volatility along `GRID`, and ln P (kPa) or 1/T (1/K), for every draw.
+
+    Parameters
+    ----------
+    drawn : Drawn
+    system : System
+    components : tuple of int
+    temperature_K, pressure_kPa : float or None
+        Exactly one of them.
+
+    Returns
+    -------
+    tuple of FloatArray of shape (n_samples, n_grid)
+    """
     first, second = components
     liquid = np.zeros((len(GRID), system.n_components))
     liquid[:, first], liquid[:, second] = GRID, 1.0 - GRID
@@ -85,8 +110,28 @@ def azeotrope_chance(
     step = temperatures**2 * (1.0 / temperatures - inverse)
     ln_alpha = ln_volatility[..., first] - ln_volatility[..., second]
     ln_alpha = ln_alpha + (slopes[:, first] - slopes[:, second]) * step
-    level = ln_P if temperature_K is not None else inverse
-    return _found(components, ln_alpha, level, temperature_K, pressure_kPa)
+    return ln_alpha, ln_P if temperature_K is not None else inverse
+
+
+def nearest_to_azeotrope(ln_alpha: FloatArray) -> FloatArray:
+    """x1 where each draw has its azeotrope, or comes nearest to one.
+
+    Parameters
+    ----------
+    ln_alpha : FloatArray of shape (n_samples, n_grid)
+        Along `GRID`.
+
+    Returns
+    -------
+    FloatArray of shape (n_samples,)
+    """
+    crossing: BoolArray = np.signbit(ln_alpha[:, 1:]) != np.signbit(ln_alpha[:, :-1])
+    nearest: FloatArray = GRID[np.abs(ln_alpha).argmin(axis=1)]
+    rows = np.flatnonzero(crossing.any(axis=1))
+    k = crossing.argmax(axis=1)[rows]
+    left, right = ln_alpha[rows, k], ln_alpha[rows, k + 1]
+    nearest[rows] = GRID[k] + left / (left - right) * (GRID[k + 1] - GRID[k])
+    return nearest
 
 
 def _boiling(system: System, liquid: FloatArray, pressure_kPa: float) -> FloatArray:

@@ -205,7 +205,12 @@ def _incomplete_everywhere(molecules: tuple[Molecule, ...]) -> IncompleteAssignm
         if bare
         else f"No one table has groups for every component; only some tables cover {smiles}."
     )
-    return _uncovered(index, text, smiles, named[index])
+    error = _uncovered(index, text, smiles, named[index])
+    error.cure = (
+        "Leave this component out, or measure it; POST /v1/molecules shows the atoms that no "
+        "group covers, table by table."
+    )
+    return error
 
 
 def _uncovered(
