@@ -23,6 +23,11 @@ TOGETHER = 2e-3
 #: Mixtures whose ln gamma at infinite dilution are all smaller than this cannot split: for
 #: gE/RT = sum A_ij x_i x_j the scaled second derivative differs from one by at most max |A|.
 NEARLY_IDEAL = 0.5
+#: A trial whose distance is more than this times its spread is not followed: the lowest point near
+#: by is lower by about spread / (2 curvature), and curvatures below a fortieth are rare.
+STEEP = 20.0
+#: A distance above minus this counts as zero.
+ZERO_DISTANCE = 1e-10
 #: Numbers in one block of starts.
 BLOCK = 200_000
 
@@ -36,7 +41,11 @@ class Trials:
 
 
 def lowest_trials(
-    liquid: LiquidModel, T: FloatArray, d: FloatArray, extra: FloatArray | None = None
+    liquid: LiquidModel,
+    T: FloatArray,
+    d: FloatArray,
+    extra: FloatArray | None = None,
+    known: FloatArray | None = None,
 ) -> Trials:
     """The lowest trial liquid for each plane.
 
@@ -48,6 +57,8 @@ def lowest_trials(
         Potentials less the standard ones; minus infinity where a component is absent.
     extra : array of shape (k, m, n_components), optional
         More starts.
+    known : array of shape (m, k, n_components), optional
+        Liquids on the plane. A trial that runs into one of them has found nothing new.
     """
     m, n = d.shape
     size = max(1, BLOCK // ((n * (n + 1) // 2 + 2) * n))
@@ -57,7 +68,8 @@ def lowest_trials(
         starts = trial_starts(d[block])
         if extra is not None:
             starts = np.concatenate([starts, extra[:, block]])
-        parts.append(_lowest(liquid, T[block], d[block], starts))
+        on_plane = None if known is None else known[block]
+        parts.append(_lowest(liquid, T[block], d[block], starts, on_plane))
     if len(parts) == 1:
         return parts[0]
     return Trials(
@@ -73,14 +85,25 @@ def nearly_ideal(liquid: LiquidModel, T: FloatArray) -> BoolArray:
     return np.asarray((np.abs(ends).max(axis=(1, 2)) < NEARLY_IDEAL)[inverse])
 
 
-def _lowest(liquid: LiquidModel, T: FloatArray, d: FloatArray, starts: FloatArray) -> Trials:
-    w, height = _substituted(liquid, T, d, starts)
+def _lowest(
+    liquid: LiquidModel,
+    T: FloatArray,
+    d: FloatArray,
+    starts: FloatArray,
+    known: FloatArray | None,
+) -> Trials:
+    w, height, spread = _substituted(liquid, T, d, starts)
     rows = np.arange(len(d))
     best = height.argmin(axis=0)
     distance, trial = height[best, rows], w[best, rows]
-    open_ = np.flatnonzero(distance > -CLEAR)
+    # Newton's method could lower these by about their spread over the curvature: not to the plane.
+    worth = height < STEEP * spread + ZERO_DISTANCE
+    if known is not None and known.shape[1]:
+        apart = np.abs(w[:, :, None] - known[None]).max(axis=3).min(axis=2)
+        worth &= ~((apart < TOGETHER) & (height > -ZERO_DISTANCE))
+    open_ = np.flatnonzero((distance > -CLEAR) & worth.any(axis=0))
     if len(open_):
-        keep = _distinct(w[:, open_], height[:, open_])
+        keep = _distinct(w[:, open_], height[:, open_]) & worth[:, open_]
         start, plane = np.nonzero(keep)
         which = open_[plane]
         found = stationary_points(liquid, T[which], d[which], w[start, which], substitutions=0)
@@ -93,8 +116,12 @@ def _lowest(liquid: LiquidModel, T: FloatArray, d: FloatArray, starts: FloatArra
 
 def _substituted(
     liquid: LiquidModel, T: FloatArray, d: FloatArray, starts: FloatArray
-) -> tuple[FloatArray, FloatArray]:
-    """Trial liquids after some substitutions, and their distances, (s, m, n) and (s, m)."""
+) -> tuple[FloatArray, FloatArray, FloatArray]:
+    """Trial liquids (s, m, n) after some substitutions, their distances (s, m), and the spread.
+
+    The spread is the mean square by which ln w + ln gamma - d differs among the components: zero
+    at a stationary point.
+    """
     s, m, n = starts.shape
     present = np.isfinite(d)
     plane = np.where(present, d, 0.0)
@@ -106,8 +133,10 @@ def _substituted(
         w = raised / raised.sum(axis=2, keepdims=True)
     ln_gamma = liquid.ln_gamma(every_T, w.reshape(-1, n)).reshape(s, m, n)
     ln_w = np.log(np.maximum(w, 1e-300))
-    height = (w * (ln_w + ln_gamma - plane)).sum(axis=2)
-    return w, np.asarray(height)
+    mismatch = ln_w + ln_gamma - plane
+    height = (w * mismatch).sum(axis=2)
+    spread = (w * (mismatch - height[:, :, None]) ** 2).sum(axis=2)
+    return w, np.asarray(height), np.asarray(spread)
 
 
 def _distinct(w: FloatArray, height: FloatArray) -> BoolArray:

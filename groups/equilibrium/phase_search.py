@@ -26,7 +26,7 @@ MOST_LIQUIDS = 3
 ROUNDS = 14
 #: A phase this little below the plane that vanishes when it is added is not worth another round.
 MARGINAL = 1e-7
-SUBSTITUTIONS = 6
+SUBSTITUTIONS = 4
 VAPOUR_PASSES = 40
 #: Largest part of the feed that a new phase begins with.
 FIRST_SHARE = 0.3
@@ -241,7 +241,7 @@ def _liquid_trials(
 ) -> tuple[FloatArray, FloatArray]:
     """Lowest trial liquids, also beside a known liquid (m, k, n) that is unstable in itself."""
     d = plane - part.standard
-    trials = lowest_trials(part.activity, part.temperature_K, d)
+    trials = lowest_trials(part.activity, part.temperature_K, d, known=known)
     distance, liquid = trials.distance, trials.liquid
     for k in range(known.shape[1]):
         values, steps = curvature(part.activity, part.temperature_K, known[:, k])
