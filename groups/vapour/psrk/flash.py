@@ -34,6 +34,10 @@ from groups.vapour.psrk.tangent_plane import tangent_plane
 
 EosPhase = Literal["liquid", "vapour", "two-phase", "two liquids", "unknown"]
 SUBSTITUTIONS = 12
+#: Share of the most that the feed can give to a trial phase, for a start below the plane.
+SLIVER = 0.01
+#: A rise of G within this is rounding, relative.
+ROUNDING = 1e-11
 MAX_ITERATIONS = 120
 TOLERANCE = 1e-11
 #: Phase amounts must add up to the feed this closely: a few roundings.
@@ -129,29 +133,48 @@ class _Split:
         self.settled = np.zeros(len(z), dtype=bool)
 
     def run(self, trial: FloatArray) -> None:
-        """Settle, starting from the trial phase of the stability search."""
-        ln_k = np.clip(np.where(self.z > 0.0, safe_log(trial) - safe_log(self.z), 0.0), -300, 300)
-        rows: IntArray = np.arange(len(self.z), dtype=np.int64)
-        self._share(rows, ln_k)
-        last = np.full(len(rows), np.inf)
+        """Settle, starting from the trial phase of the stability search; G never rises."""
+        n = len(self.z)
+        if not n:
+            return
+        rows: IntArray = np.arange(n, dtype=np.int64)
+        ln_k = np.where(self.z > 0.0, safe_log(trial) - safe_log(self.z), 0.0)
+        v = self._shared(rows, np.clip(ln_k, -300.0, 300.0))
+        # A sliver of the trial phase lowers G for certain; the start above may be too bold.
+        ratio = np.where(trial > 0.0, self.z / np.where(trial > 0.0, trial, 1.0), np.inf)
+        self.v = SLIVER * ratio.min(axis=1)[:, None] * trial
+        self.lean = self.z - self.v
+        step, best = v - self.v, self._gibbs(*self.phases(rows), self.v, self.lean)
         for iteration in range(MAX_ITERATIONS):
+            old_v, old_lean = self.v[rows], self.lean[rows]
+            # A phase of almost nothing must not round to nothing.
+            self.v[rows] = np.maximum(old_v + step[rows], 1e-12 * old_v)
+            self.lean[rows] = np.maximum(old_lean - step[rows], 1e-12 * old_lean)
+            first, second = self.phases(rows)
+            value = self._gibbs(first, second, self.v[rows], self.lean[rows])
+            up = value > best[rows] + ROUNDING * (1.0 + np.abs(value))
+            self.v[rows[up]], self.lean[rows[up]] = old_v[up], old_lean[up]
+            step[rows[up]] *= 0.3
+            best[rows] = np.where(up, best[rows], value)
+            miss = _mismatch(first, second)
+            done = ~up & (np.abs(miss).max(axis=1) <= TOLERANCE)
+            self.settled[rows[done]] = True
+            if iteration < SUBSTITUTIONS or iteration % 10 == 9:
+                gap = np.clip(second.ln_phi - first.ln_phi, -300.0, 300.0)
+                fresh = self._shared(rows, gap) - self.v[rows]
+            else:
+                fresh = self._newton(rows, first, second, miss)
+            step[rows[~up]] = fresh[~up]
+            rows = rows[~done]
             if not len(rows):
                 return
-            first, second = self.phases(rows)
-            gap = second.ln_phi - first.ln_phi  # ln K = ln phi of the second over the first
-            x, y = second.fractions, first.fractions
-            present = (x > 1e-280) & (y > 1e-280)
-            miss = np.where(present, safe_log(y) - safe_log(x) - gap, 0.0)
-            size = np.abs(miss).max(axis=1)
-            done = size <= TOLERANCE
-            self.settled[rows[done]] = True
-            worse = size > 0.9 * last[rows]
-            last[rows] = size
-            if iteration < SUBSTITUTIONS or iteration % 6 == 5:
-                self._share(rows, np.clip(gap, -300.0, 300.0))
-            else:
-                self._newton(rows, first, second, miss, worse)
-            rows = rows[~done]
+
+    @staticmethod
+    def _gibbs(first: Phase, second: Phase, v: FloatArray, lean: FloatArray) -> FloatArray:
+        """G/RT of both phases, less terms that do not change, of shape (n,)."""
+        one = (v * (np.maximum(safe_log(first.fractions), -700.0) + first.ln_phi)).sum(axis=1)
+        other = np.maximum(safe_log(second.fractions), -700.0) + second.ln_phi
+        return np.asarray(one + (lean * other).sum(axis=1))
 
     def phases(self, rows: IntArray) -> tuple[Phase, Phase]:
         """The phases made of v and of l, each at its root of lower Gibbs energy."""
@@ -161,19 +184,16 @@ class _Split:
         T, P = self.T[rows], self.P[rows]
         return phase(self.model, T, P, y, "stable"), phase(self.model, T, P, x, "stable")
 
-    def _share(self, rows: IntArray, ln_k: FloatArray) -> None:
-        """Amounts for these distribution coefficients; a sliver where one phase would vanish."""
+    def _shared(self, rows: IntArray, ln_k: FloatArray) -> FloatArray:
+        """v for these distribution coefficients; a sliver where one phase would vanish."""
         z = self.z[rows]
         fraction, inside = phase_fraction(z, ln_k)
         fraction = np.where(inside, fraction, np.clip(fraction, 1e-3, 1.0 - 1e-3))[:, None]
         growth = np.exp(ln_k)
-        self.v[rows] = z * fraction * growth / (1.0 + fraction * (growth - 1.0))
-        self.lean[rows] = z * (1.0 - fraction) / (1.0 + fraction * (growth - 1.0))
+        return np.asarray(z * fraction * growth / (1.0 + fraction * (growth - 1.0)))
 
-    def _newton(
-        self, rows: IntArray, first: Phase, second: Phase, miss: FloatArray, worse: BoolArray
-    ) -> None:
-        """A Newton step in v, damped where the last one did not help."""
+    def _newton(self, rows: IntArray, first: Phase, second: Phase, miss: FloatArray) -> FloatArray:
+        """A Newton step in v that keeps all amounts above zero."""
         z, v, lean = self.z[rows], self.v[rows], self.lean[rows]
         beta, rest = v.sum(axis=1), lean.sum(axis=1)
         nc = z.shape[1]
@@ -190,8 +210,15 @@ class _Split:
         room = np.where(step < 0.0, v, lean)
         share = np.abs(step) / np.where(room > 0.0, room, 1.0)
         limit = np.minimum(1.0, 0.9 / np.maximum(share.max(axis=1), 1e-300))
-        step = step * np.where(worse, 0.5 * limit, limit)[:, None]
-        self.v[rows], self.lean[rows] = v + step, lean - step
+        return np.asarray(step * limit[:, None])
+
+
+def _mismatch(first: Phase, second: Phase) -> FloatArray:
+    """ln fugacity of the first phase less that of the second, of components in both."""
+    x, y = second.fractions, first.fractions
+    present = (x > 1e-280) & (y > 1e-280)
+    gap = safe_log(y) + first.ln_phi - safe_log(x) - second.ln_phi
+    return np.where(present, gap, 0.0)
 
 
 def _assembled(model: PsrkModel, single: Phase, both: IntArray, split: _Split) -> EosFlash:

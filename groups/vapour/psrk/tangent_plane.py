@@ -17,6 +17,8 @@ from groups.vapour.psrk.model import Phase, PsrkModel, phase, slopes
 
 SUBSTITUTIONS = 6
 MAX_ITERATIONS = 60
+#: A rise of the distance within this is rounding, relative.
+ROUNDING = 1e-11
 #: Most pairs of components that searches start from.
 MAX_PAIRS = 28
 TOLERANCE = 1e-9
@@ -153,7 +155,7 @@ class _Search:
             trial = np.clip(u[rows] + self.step[rows], NOTHING - 60.0, 300.0)
             at, total, mismatch = self._evaluate(rows, trial)
             value = 1.0 + (np.exp(trial) * (mismatch - 1.0)).sum(axis=1)
-            down = value <= self.best[rows] + 1e-12 * (1.0 + np.abs(value))
+            down = value <= self.best[rows] + ROUNDING * (1.0 + np.abs(value))
             self.step[rows[~down]] *= 0.5
             kept = rows[down]
             u[kept], self.best[kept] = trial[down], value[down]

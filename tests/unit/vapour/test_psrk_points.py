@@ -130,3 +130,17 @@ def test_no_points_give_no_states():
     found = model("CCO", "O")
     assert psrk_bubble_pressure(found, [], np.zeros((0, 2))).failure == ()
     assert psrk_flash(found, [], [], np.zeros((0, 2))).phase == ()
+
+
+def test_a_strongly_attracting_liquid_under_a_cold_vapour_is_not_overlooked():
+    # Substitution runs away here: the liquid lies between the pure ones, far from all of them.
+    found = model("N", "O", "CO")
+    z = np.array([[0.75918205, 0.02819359, 0.21262436]])
+    states = psrk_flash(found, 266.27646728948986, 8.301672265522514, z)
+    assert states.phase == ("two-phase",) and states.converged.all()
+    # A trial liquid met by chance, below the tangent plane of the feed by 0.45 RT.
+    trial = np.array([[0.15237634, 0.37971441, 0.46790925]])
+    T, P = states.temperature_K, states.pressure_kPa
+    feed, liquid = phase(found, T, P, z, "stable"), phase(found, T, P, trial, "stable")
+    gap = np.log(trial / z) + liquid.ln_phi - feed.ln_phi
+    assert (trial * gap).sum() < -0.4
