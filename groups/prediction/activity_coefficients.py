@@ -7,15 +7,16 @@ from numpy.typing import ArrayLike
 
 from groups.activity import excess_enthalpy, excess_gibbs
 from groups.activity.choice import OnMissing
-from groups.arrays import FloatArray
+from groups.arrays import FloatArray, IntArray
 from groups.confidence import Confidence, graded
 from groups.errors import ShapeError
 from groups.prediction.answers import ActivityAnswer
-from groups.prediction.bands import LEVEL, Band, Drawn, drawn_around
+from groups.prediction.bands import Band, Drawn, band, drawn_around
 from groups.prediction.checks import check_components, check_fractions, check_temperatures
 from groups.prediction.component import Component
 from groups.prediction.liquid import Liquid, liquid
 
+WIDTH_STEP_K = 5.0
 BLOCK_POINTS = 512  # keeps the drawn numbers of one block within a few megabytes
 
 
@@ -101,35 +102,38 @@ def _bands(
     ln_gamma: FloatArray,
     gibbs: FloatArray,
 ) -> tuple[Band, Band] | tuple[None, None]:
-    """Intervals of ln gamma and gE/RT; none for an ideal solution that was asked for."""
+    """Intervals of ln gamma and gE/RT; none for an ideal solution that was asked for.
+
+    The widths are taken at the nearest multiple of `WIDTH_STEP_K`, so that the interval of one
+    point does not depend on the others.
+    """
     if not mixture.compared:
         return None, None
-    drawn = drawn_around(mixture.molecules, on_missing, float(np.median(temperatures)))
-    if drawn is None:
-        return None, None
-    centre = drawn.models.base.ln_gamma(temperatures, fractions)
-    lower, upper = _addition_ends(drawn, fractions)
-    energy = np.sum(fractions * centre, axis=-1)
-    gibbs_lower, gibbs_upper = _addition_ends(drawn, fractions, weigh=True)
-    return (
-        Band(np.minimum(centre + lower, ln_gamma), np.maximum(centre + upper, ln_gamma)),
-        Band(np.minimum(energy + gibbs_lower, gibbs), np.maximum(energy + gibbs_upper, gibbs)),
-    )
+    bands = Band(ln_gamma.copy(), ln_gamma.copy()), Band(gibbs.copy(), gibbs.copy())
+    steps = np.round(temperatures / WIDTH_STEP_K) * WIDTH_STEP_K
+    for step in np.unique(steps):
+        drawn = drawn_around(mixture.molecules, on_missing, float(step))
+        if drawn is None:
+            return None, None
+        places = np.flatnonzero(steps == step)
+        for start in range(0, len(places), BLOCK_POINTS):
+            block = places[start : start + BLOCK_POINTS]
+            _fill(bands, block, drawn, temperatures[block], fractions[block])
+    return bands
 
 
-def _addition_ends(
-    drawn: Drawn, fractions: FloatArray, *, weigh: bool = False
-) -> tuple[FloatArray, FloatArray]:
-    """Quantiles of the drawn errors of ln gamma, or of gE/RT, a block of points at a time."""
-    tail = (1.0 - LEVEL) / 2.0
-    ends = []
-    for start in range(0, len(fractions), BLOCK_POINTS):
-        block = fractions[start : start + BLOCK_POINTS]
-        errors = drawn.models.errors(block)
-        values = np.sum(block * errors, axis=-1) if weigh else errors
-        ends.append(np.quantile(values, [tail, 1.0 - tail], axis=0))
-    both = np.concatenate(ends, axis=1)
-    return both[0], both[1]
+def _fill(
+    bands: tuple[Band, Band],
+    places: IntArray,
+    drawn: Drawn,
+    temperatures: FloatArray,
+    fractions: FloatArray,
+) -> None:
+    """Stretch both intervals at some of the points to hold the drawn values there."""
+    samples = drawn.models.ln_gamma(temperatures, fractions)
+    for one, values in zip(bands, (samples, np.sum(fractions * samples, axis=-1)), strict=True):
+        found = band(values, one.lower[places])
+        one.lower[places], one.upper[places] = found.lower, found.upper
 
 
 def _confidences(

@@ -174,7 +174,7 @@ def _bands(
     ratio = np.exp(ln_volatility - ln_volatility[..., -1:])
     ln_k = ln_volatility - np.log(pressures)[..., None]
     centre = np.median(ln_k, axis=0)
-    present = (known.liquid > 0.0) & (known.vapour > 0.0)
+    present = (known.liquid > 1e-290) & (known.vapour > 1e-290)
     np.log(known.vapour / np.where(present, known.liquid, 1.0), out=centre, where=present)
     return BoilingBands(
         band(temperatures, known.temperature_K),

@@ -11,6 +11,7 @@ from groups.confidence import Confidence, Interval, Reason, graded
 from groups.equilibrium import Flash
 from groups.equilibrium import flash as solve_flash
 from groups.equilibrium.phase_fraction import phase_fraction
+from groups.equilibrium.states import safe_log
 from groups.prediction.answers import PhasePointAnswer
 from groups.prediction.bands import band
 from groups.prediction.boiling_mixture import BoilingMixture, boiling_mixture
@@ -108,7 +109,7 @@ def _confidence(
     ln_k = (ln_k + drawn.shift[:, None, :])[:, 0] - np.log(found.pressure_kPa)
     fraction, _ = phase_fraction(np.broadcast_to(feed, ln_k.shape), ln_k)
     ends = band(fraction, found.vapour_fraction[0])
-    own = np.log(found.vapour[0]) - np.log(found.liquid[0])
+    own = safe_log(found.gamma[0]) + mixture.system.ln_saturation(T)[0] - np.log(found.pressure_kPa)
     return graded(
         reasons,
         mixture.liquid.evidence,
