@@ -25,6 +25,7 @@ from api.schemas.vapour_pressure import VapourPressureUsed
 from groups import prediction
 from groups.arrays import FloatArray
 from groups.confidence import Confidence as GroupsConfidence
+from groups.confidence.calibration import TableWeight
 from groups.equilibrium import Azeotrope, SplitRange
 from groups.prediction import answers
 from groups.pure import VapourPressure
@@ -84,7 +85,7 @@ def confidence(given: GroupsConfidence) -> Confidence:
     )
 
 
-def methods_used(uses: Sequence[answers.MethodUse]) -> list[MethodUse]:
+def methods_used(uses: Sequence[TableWeight]) -> list[MethodUse]:
     """The tables behind an answer."""
     return [MethodUse(method=use.method, weight=use.weight, why=use.why) for use in uses]
 

@@ -5,8 +5,9 @@ Exit status: 0 done; 2 the input is at fault; 3 no method gives the number; 1 an
 
 import argparse
 import sys
-from collections.abc import Sequence
+from collections.abc import Callable, Sequence
 
+from api import __version__
 from api.problem_types import problem_type_of
 from groups.errors import MixwrightError, PredictionError
 
@@ -38,6 +39,7 @@ def parser() -> argparse.ArgumentParser:
         description="Behaviour of liquid mixtures that nobody has measured, from the molecules, "
         "with the reasons to doubt each number.",
     )
+    top.add_argument("--version", action="version", version=f"%(prog)s {__version__}")
     commands = top.add_subparsers(required=True, metavar="COMMAND")
     _add_serve(commands.add_parser("serve", help="start the HTTP service"))
     _add_predict(commands.add_parser("predict", help="predict one mixture"))
@@ -49,9 +51,37 @@ def parser() -> argparse.ArgumentParser:
 
 def _add_serve(command: argparse.ArgumentParser) -> None:
     command.add_argument("--host", help="address to listen on (default 127.0.0.1)")
-    command.add_argument("--port", type=int, help="port to listen on (default 8000)")
-    command.add_argument("--workers", type=int, help="processes (default 1)")
+    command.add_argument("--port", type=_port, help="port to listen on (default 8000)")
+    command.add_argument("--workers", type=_workers, help="processes (default 1)")
     command.set_defaults(run=_serve)
+
+
+def _port(text: str) -> int:
+    """A port number; argparse names the option when this refuses."""
+    port = int(text)
+    if not 0 <= port <= 65535:
+        raise argparse.ArgumentTypeError(f"{port} is no port; give one from 1 to 65535")
+    return port
+
+
+def _workers(text: str) -> int:
+    workers = int(text)
+    if not 1 <= workers <= 64:
+        raise argparse.ArgumentTypeError(f"give 1 to 64 processes, not {workers}")
+    return workers
+
+
+def _picture(*suffixes: str) -> Callable[[str], str]:
+    """A file name whose ending is one of those that can be drawn."""
+
+    def file(text: str) -> str:
+        if not text.lower().endswith(suffixes):
+            raise argparse.ArgumentTypeError(
+                f"'{text}' must end in {' or '.join(suffixes)}, which says what is drawn"
+            )
+        return text
+
+    return file
 
 
 def _add_predict(command: argparse.ArgumentParser) -> None:
@@ -81,8 +111,14 @@ def _add_predict(command: argparse.ArgumentParser) -> None:
         default="estimate",
         help="what to do where no parameter is published",
     )
-    command.add_argument("--points", type=int, default=101, help="points of a diagram")
-    command.add_argument("--picture", help="write the diagram to this .svg or .png file")
+    command.add_argument(
+        "--points", type=int, default=101, help="points of a diagram (default %(default)s)"
+    )
+    command.add_argument(
+        "--picture",
+        type=_picture(".svg", ".png"),
+        help="write the diagram to this .svg or .png file",
+    )
     shape = command.add_mutually_exclusive_group()
     shape.add_argument("--json", action="store_true", help="print the whole answer as JSON")
     shape.add_argument("--csv", action="store_true", help="print the table as CSV")
@@ -92,19 +128,23 @@ def _add_predict(command: argparse.ArgumentParser) -> None:
 def _add_groups(command: argparse.ArgumentParser) -> None:
     command.add_argument("molecule", metavar="MOLECULE", help="SMILES, a name or a CAS number")
     command.add_argument("--method", action="append", help="a method; may be repeated")
-    command.add_argument("--picture", help="write a drawing to this .svg file")
-    command.add_argument("--json", action="store_true")
+    command.add_argument(
+        "--picture", type=_picture(".svg"), help="write a drawing to this .svg file"
+    )
+    command.add_argument("--json", action="store_true", help="print the answer as JSON")
     command.set_defaults(run=_groups)
 
 
 def _add_methods(command: argparse.ArgumentParser) -> None:
     command.add_argument("method", nargs="?", help="show this one in full")
-    command.add_argument("--json", action="store_true")
+    command.add_argument("--json", action="store_true", help="print the answer as JSON")
     command.set_defaults(run=_methods)
 
 
 def _add_demo(command: argparse.ArgumentParser) -> None:
-    command.add_argument("--out", default="mixwright-demo", help="folder for the diagrams")
+    command.add_argument(
+        "--out", default="mixwright-demo", help="folder for the diagrams (default %(default)s)"
+    )
     command.set_defaults(run=_demo)
 
 

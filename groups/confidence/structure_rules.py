@@ -81,7 +81,7 @@ def size_reasons(molecules: Sequence[Molecule]) -> list[Reason]:
         for molecule in molecules
         if molecule_facts(molecule).longest_chain > LONG_CHAIN_ATOMS
     ]
-    sizes = [molecule.mol.GetNumHeavyAtoms() for molecule in molecules]
+    sizes = [max(1, molecule.mol.GetNumHeavyAtoms()) for molecule in molecules]  # hydrogen has none
     largest, smallest = max(sizes), min(sizes)
     if largest >= SIZE_RATIO * smallest and largest > LONG_CHAIN_ATOMS:
         big, small = molecules[sizes.index(largest)], molecules[sizes.index(smallest)]

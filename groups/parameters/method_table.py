@@ -145,7 +145,7 @@ class MethodTable:
 
 
 def _index(numbers: IntArray, number: int, message: str) -> int:
-    position = int(np.searchsorted(numbers, number))
+    position = int(numbers.searchsorted(number))
     if position == len(numbers) or numbers[position] != number:
         raise DataError(message)
     return position

@@ -71,9 +71,10 @@ def check_fractions(mole_fractions: ArrayLike, n_components: int) -> FloatArray:
         ) from error
     fractions = np.atleast_2d(given)
     if fractions.ndim != 2 or fractions.shape[1] != n_components or fractions.shape[0] == 0:
+        got = "lists in lists in lists" if fractions.ndim > 2 else fractions.shape[-1]
         raise ShapeError(
             f"Each point of 'mole_fractions' must have {n_components} numbers, one a component. "
-            f"Got an array of shape {given.shape} instead.",
+            f"Got {got} instead.",
             cure="Give one mole fraction a component, in the order of 'components'.",
             field="mole_fractions",
         )

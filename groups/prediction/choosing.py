@@ -12,6 +12,7 @@ from groups.activity.choice import (
 )
 from groups.confidence import Reason
 from groups.confidence.calibration import TableWeight, mixture_weights
+from groups.confidence.labels import label
 from groups.confidence.parameter_rules import missing_reasons
 from groups.errors import IncompleteAssignmentError, MissingParameterError, UnknownMethodError
 from groups.parameters import METHODS, table
@@ -189,7 +190,7 @@ def _incomplete(molecules: tuple[Molecule, ...], method: str) -> IncompleteAssig
     assignments = [assign(molecule, method) for molecule in molecules]
     index = next((k for k, one in enumerate(assignments) if not one.complete), 0)
     smiles = molecules[index].canonical_smiles
-    text = f"{smiles} cannot be split into the groups of {method}."
+    text = f"{label(molecules[index])} cannot be split into the groups of {method}."
     return _uncovered(index, text, smiles, assignments[index])
 
 
@@ -199,11 +200,11 @@ def _incomplete_everywhere(molecules: tuple[Molecule, ...]) -> IncompleteAssignm
     bare = [k for k, row in enumerate(covers) if not any(one.complete for one in row)]
     named = [row[METHODS.index("unifac-dortmund")] for row in covers]
     index = bare[0] if bare else next(k for k, one in enumerate(named) if not one.complete)
-    smiles = molecules[index].canonical_smiles
+    smiles, name = molecules[index].canonical_smiles, label(molecules[index])
     text = (
-        f"No table has groups for all of {smiles}."
+        f"No table has groups for all of {name}."
         if bare
-        else f"No one table has groups for every component; only some tables cover {smiles}."
+        else f"No one table has groups for every component; only some tables cover {name}."
     )
     error = _uncovered(index, text, smiles, named[index])
     error.cure = (

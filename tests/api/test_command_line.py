@@ -8,6 +8,7 @@ import xml.etree.ElementTree as ElementTree
 
 import pytest
 
+from api import __version__
 from api.cli import main
 from api.commands.quantities import molecule, pressure_kPa, temperature_K
 from groups.prediction import ALL_METHODS, CAUTIONS
@@ -115,7 +116,7 @@ def test_json_is_json(run, command):
         (["predict", "CCO", "O", "--what", "flash", "-x", "1", "0", "-T", "300"], 2, "-P"),
         (["predict", "CCO", "O", "--what", "split", "-P", "1atm"], 2, "-T"),
         (["predict", "CCO", "O", "--what", "bubble", "-P", "1atm"], 2, "-x"),
-        (["predict", "CCO", "CCP(=S)(CC)CC", "-P", "1atm"], 3, "Ask for another method"),
+        (["predict", "CCO", "CCP(=S)(CC)CC", "-P", "1atm"], 3, "Leave this component out"),
         (["groups", "[Na+].[Cl-]"], 2, "salt"),
         (["methods", "unifaq"], 2, "unifaq"),
     ],
@@ -204,3 +205,27 @@ def test_a_reader_that_stops_early_is_no_crash():
             check=False,
         )
     assert b"Traceback" not in done.stderr
+
+
+@pytest.mark.parametrize(
+    ("arguments", "words"),
+    [
+        (["serve", "--port", "99999"], "99999 is no port"),
+        (["serve", "--workers", "0"], "1 to 64 processes"),
+        (["predict", "CCO", "O", "-P", "1atm", "--picture", "x.pdf"], ".svg or .png"),
+        (["groups", "CCO", "--picture", "x.png"], "must end in .svg"),
+    ],
+)
+def test_an_option_that_cannot_be_is_refused_by_name(capsys, arguments, words):
+    with pytest.raises(SystemExit) as stopped:
+        main(arguments)
+    assert stopped.value.code == 2
+    printed = capsys.readouterr().err
+    assert arguments[-2] in printed and words in printed
+
+
+def test_the_version_is_printed(capsys):
+    with pytest.raises(SystemExit) as stopped:
+        main(["--version"])
+    assert stopped.value.code == 0
+    assert __version__ in capsys.readouterr().out

@@ -47,3 +47,8 @@ def test_a_gas_above_its_critical_temperature_is_told(smiles, temperature_K, is_
     # Critical temperatures, from memory: O2 154.6 K, CH4 190.6 K, butane 425 K.
     found = gas_reasons(identified(molecule_from_smiles(smiles)), temperature_K)
     assert [reason.code for reason in found] == ["supercritical_component"] * is_gas
+
+
+def test_hydrogen_has_a_size_beside_a_long_chain():
+    found = size_reasons([molecule_from_smiles("[H][H]"), molecule_from_smiles("C" * 40)])
+    assert [reason.code for reason in found] == ["long_chain", "size_asymmetry"]
