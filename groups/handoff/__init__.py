@@ -1,6 +1,6 @@
 """Hand-over: fits for flowsheets, ThermoML, and measurements against models."""
 
-from groups.handoff.compare_door import compare
+from groups.handoff.compare_door import compare, parameters_of_fit
 from groups.handoff.comparisons import ComparisonAnswer, Measurements, Units, read_csv, read_records
 from groups.handoff.fit_door import FitAnswer, fit
 from groups.handoff.sheets import ParameterSet, to_csv, to_text
@@ -13,6 +13,7 @@ __all__ = [
     "Units",
     "compare",
     "fit",
+    "parameters_of_fit",
     "read_csv",
     "read_records",
     "to_csv",

@@ -7,7 +7,8 @@ import numpy as np
 
 from groups.activity import IdealModel
 from groups.activity.choice import OnMissing
-from groups.equilibrium import LiquidModel, VapourModel
+from groups.equilibrium import LiquidModel, VapourModel, binary_split
+from groups.equilibrium.binary_split import may_split
 from groups.errors import (
     ConvergenceError,
     FitRefusedError,
@@ -31,6 +32,7 @@ from groups.handoff.comparisons.regression import automatic_forms, fit_points
 from groups.handoff.correlations import CORRELATIONS
 from groups.handoff.fits.component_constants import size_parameters
 from groups.handoff.fits.formulation import PairConstants
+from groups.handoff.sheets import ParameterSet, points_parameter_set
 from groups.prediction.checks import check_components
 from groups.prediction.choosing import ALL_METHODS
 from groups.prediction.component import Component
@@ -118,7 +120,7 @@ def compare(
         both,
         (*refused, *unfit),
         recommendation(both, points),
-        _marks(scene, reference, predicted),
+        _marks(scene, reference, predicted, fitted),
         lines,
     )
 
@@ -198,10 +200,61 @@ def _fitted(
     return found, refused
 
 
+def parameters_of_fit(answer: ComparisonAnswer, name: str) -> ParameterSet:
+    """The parameter sheet of an equation that a comparison fitted.
+
+    Parameters
+    ----------
+    answer : ComparisonAnswer
+    name : str
+        Identifier of a fitted equation of the answer.
+
+    Returns
+    -------
+    ParameterSet
+
+    Raises
+    ------
+    UnknownMethodError
+        If the answer holds no such fit.
+    """
+    fits = {m.name: m.fit for m in answer.models if m.fit is not None}
+    if name not in fits:
+        raise UnknownMethodError(name, tuple(fits))
+    T = answer.measurements.temperatures_K
+    return points_parameter_set(
+        fits[name],
+        answer.components,
+        answer.vapour_pressures,
+        (float(T.min()), float(T.max())),
+        answer.measurements.n_points,
+        sizes=size_parameters(answer.components) if name == "uniquac" else None,
+    )
+
+
+def _split_marks(scene: _Scene, fitted: list[ComparedModel]) -> list[Mark]:
+    """A word where a fitted equation splits a liquid of which no split was measured."""
+    if len(scene.points.solubilities.number):
+        return []
+    T = float(np.median(scene.points.temperatures_K))
+    return [
+        Mark(
+            "fit_splits",
+            f"{one.name} fitted to these points splits the liquid in two at {T:.1f} K, and no two "
+            "liquids were measured: do not use it before that is settled.",
+        )
+        for one in fitted
+        if may_split(one.model, np.array([T])) and binary_split(one.model, T) is not None
+    ]
+
+
 def _marks(
-    scene: _Scene, reference: LiquidModel, predicted: list[ComparedModel]
+    scene: _Scene,
+    reference: LiquidModel,
+    predicted: list[ComparedModel],
+    fitted: list[ComparedModel],
 ) -> tuple[Mark, ...]:
-    marks = []
+    marks = _split_marks(scene, fitted)
     models = [m.model for m in predicted]
     given = [m.weighted_rms for m in predicted]
     swap = swap_mark(scene.points, scene.lines, models, reference, given)

@@ -10,7 +10,7 @@ from groups.activity.choice import OnMissing
 from groups.arrays import FloatArray
 from groups.confidence import Confidence, graded
 from groups.confidence.calibration import TableWeight
-from groups.equilibrium import LiquidModel
+from groups.equilibrium import Azeotrope, LiquidModel, System, azeotropes
 from groups.equilibrium.subset import SubsetLiquid
 from groups.errors import InvalidInputError, OutOfRangeError
 from groups.handoff.correlations import FORMS
@@ -18,6 +18,7 @@ from groups.handoff.correlations.build import equation_of
 from groups.handoff.correlations.temperature_forms import form_terms
 from groups.handoff.fits import (
     Boiling,
+    FitNote,
     MixtureFit,
     PairConstants,
     fit_grid,
@@ -64,6 +65,10 @@ class FitAnswer:
     parameters : ParameterSet or None
         The sheet; None where every pair was refused.
     vapour_pressures : tuple of VapourPressure or None
+    azeotropes_predicted, azeotropes_fitted : tuple of Azeotrope or None
+        Of the whole mixture at `pressure_kPa`, of three or four components; None otherwise.
+    notes : tuple of FitNote
+        Of the mixture as a whole.
     confidence : Confidence
         Of the prediction that was fitted, over the grid.
     """
@@ -76,6 +81,9 @@ class FitAnswer:
     fit: MixtureFit
     parameters: ParameterSet | None
     vapour_pressures: tuple[VapourPressure, ...] | None
+    azeotropes_predicted: tuple[Azeotrope, ...] | None
+    azeotropes_fitted: tuple[Azeotrope, ...] | None
+    notes: tuple[FitNote, ...]
     confidence: Confidence
 
 
@@ -168,6 +176,7 @@ def fit(
         if lines is None or pressure_kPa is None
         else lambda i, j: Boiling((lines[i], lines[j]), pressure_kPa),
     )
+    before, after = _mixture_azeotropes(boiling, found, pressure_kPa)
     named = tuple(_named(molecule) for molecule in mixture.molecules)
     origin = f"ln gamma by {mixture.method}, {len(T)} temperatures x {len(x1)} compositions a pair"
     sheet = None
@@ -191,6 +200,9 @@ def fit(
         found,
         sheet,
         lines,
+        before,
+        after,
+        _mixture_notes(before, after),
         graded(mixture.reasons(*_corners(T, len(components)))),
     )
 
@@ -253,6 +265,38 @@ def _sizes(model: str, molecules: Sequence[Molecule], *, wilson_volumes: bool) -
         volumes = molar_volumes(molecules)
         return _Sizes(PairConstants(None, None, volumes.cm3_mol), None, volumes)
     return _Sizes(PairConstants(), None, None)
+
+
+def _mixture_azeotropes(
+    boiling: BoilingMixture | None, found: MixtureFit, pressure_kPa: float | None
+) -> tuple[tuple[Azeotrope, ...] | None, tuple[Azeotrope, ...] | None]:
+    """Azeotropes of the whole mixture before and after; pairs alone are compared pair by pair."""
+    if boiling is None or found.model is None or not 3 <= len(boiling.lines) <= 4:
+        return None, None
+    system = System(found.model, boiling.lines)
+    before = azeotropes(boiling.system, pressure_kPa=pressure_kPa)
+    return before, azeotropes(system, pressure_kPa=pressure_kPa)
+
+
+def _mixture_notes(
+    before: tuple[Azeotrope, ...] | None, after: tuple[Azeotrope, ...] | None
+) -> tuple[FitNote, ...]:
+    if before is None or after is None:
+        return ()
+
+    def higher(found: tuple[Azeotrope, ...]) -> list[tuple[int, ...]]:
+        return sorted(one.components for one in found if len(one.components) > 2)
+
+    if higher(before) == higher(after):
+        return ()
+    return (
+        FitNote(
+            "higher_azeotropes_changed",
+            f"The prediction has {len(higher(before))} azeotropes of three or more components, the "
+            f"mixture of the fitted pairs {len(higher(after))}.",
+            True,
+        ),
+    )
 
 
 def _pair_model(

@@ -105,8 +105,10 @@ def unit_mark(points: Measurements, seen: Observations, reference: LiquidModel) 
 
 
 def _unit_of(off: FloatArray) -> str | None:
-    """The unit whose factor explains ln(P as read in kPa / P expected)."""
-    for name, factor in PRESSURE_UNITS.items():
-        if name != "kPa" and (np.abs(off + np.log(factor)) < NEAR).all():
-            return name
-    return None
+    """The unit whose factor best explains ln(P as read in kPa / P expected), if one does."""
+    distance = {
+        name: abs(float(np.median(off)) + float(np.log(factor)))
+        for name, factor in PRESSURE_UNITS.items()
+        if name != "kPa" and (np.abs(off + np.log(factor)) < NEAR).all()
+    }
+    return min(distance, key=lambda name: distance[name], default=None)

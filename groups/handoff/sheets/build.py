@@ -4,6 +4,7 @@ from collections.abc import Sequence
 
 import numpy as np
 
+from groups.handoff.comparisons.regression import PointFit
 from groups.handoff.correlations import margules, nrtl, uniquac, van_laar, wilson
 from groups.handoff.correlations.temperature_forms import form_terms
 from groups.handoff.fits.answers import FittedParameter, PairFit
@@ -104,15 +105,7 @@ def parameter_set(
     ParameterSet
     """
     name, form = fits[0].name, fits[0].form
-    extra: list[list[ConstantSheet]] = [[] for _ in molecules]
-    for k, listed in enumerate(extra):
-        if sizes is not None:
-            for symbol, values in (("r", sizes.volumes), ("q", sizes.surfaces)):
-                title = f"{symbol} (UNIQUAC)"
-                listed.append(ConstantSheet(title, float(values[k]), "1", sizes.source, False))
-        if volumes is not None:
-            value, source = float(volumes.cm3_mol[k]), volumes.sources[k]
-            listed.append(ConstantSheet("V (Wilson, 298.15 K)", value, "cm3/mol", source, False))
+    extra = _extra(len(molecules), sizes, volumes)
     return ParameterSet(
         name,
         form,
@@ -123,7 +116,7 @@ def parameter_set(
         origin,
         predicted,
         tuple(
-            _component(k, molecule, None if lines is None else lines[k], tuple(extra[k]))
+            _component(k, molecule, None if lines is None else lines[k], extra[k])
             for k, molecule in enumerate(molecules)
         ),
         tuple(_pair(fit) for fit in fits),
@@ -134,17 +127,88 @@ def parameter_set(
 def _pair(fit: PairFit) -> PairSheet:
     i, j = fit.pair[0] + 1, fit.pair[1] + 1
     where = fit.residual
-    which = fit.pair[where.component] + 1
+    words = (
+        f"rms {where.rms:.4f} in ln gamma, largest {where.largest:+.4f} at "
+        f"{where.temperature_K:.2f} K, x_{i} = {where.x1:.3f}, "
+        f"component {fit.pair[where.component] + 1}"
+    )
     return PairSheet(
         i,
         j,
         tuple(_number(one, i, j, fit.name) for one in fit.parameters),
         fit.accepted,
+        words,
         where.rms,
         where.largest,
-        f"{where.temperature_K:.2f} K, x_{i} = {where.x1:.3f}, component {which}",
         tuple(note.message for note in fit.notes),
     )
+
+
+def points_parameter_set(
+    fit: PointFit,
+    molecules: tuple[Molecule, Molecule],
+    lines: tuple[VapourPressure, VapourPressure] | None,
+    temperature_range_K: tuple[float, float],
+    n_points: int,
+    *,
+    sizes: SizeParameters | None = None,
+) -> ParameterSet:
+    """The sheet of an equation that was fitted to measured points.
+
+    Parameters
+    ----------
+    fit : PointFit
+    molecules : tuple of Molecule
+    lines : tuple of VapourPressure or None
+    temperature_range_K : tuple of float
+        Of the points, K.
+    n_points : int
+    sizes : SizeParameters, optional
+        r and q of UNIQUAC.
+
+    Returns
+    -------
+    ParameterSet
+        With `predicted` False.
+    """
+    words = f"{fit.weighted_rms:.2f} standard deviations of the measurements (rms)"
+    if fit.folds:
+        words += f"; {fit.cross_validated_rms:.2f} for points left out of the fit"
+    numbers = tuple(_number(one, 1, 2, fit.name) for one in fit.parameters)
+    pair = PairSheet(1, 2, numbers, True, words, None, None, ())
+    extra = _extra(2, sizes, None)
+    return ParameterSet(
+        fit.name,
+        fit.form,
+        _EQUATIONS[fit.name],
+        interactions_text(fit.name, fit.form),
+        "K",
+        temperature_range_K,
+        f"{n_points} measured points",
+        False,
+        tuple(
+            _component(k, molecule, None if lines is None else lines[k], extra[k])
+            for k, molecule in enumerate(molecules)
+        ),
+        (pair,),
+        _CAUTIONS,
+    )
+
+
+def _extra(
+    n: int, sizes: SizeParameters | None, volumes: MolarVolumes | None
+) -> list[tuple[ConstantSheet, ...]]:
+    """What the equation needs of each component besides the interactions."""
+    found: list[list[ConstantSheet]] = [[] for _ in range(n)]
+    for k, listed in enumerate(found):
+        if sizes is not None:
+            for symbol, values in (("r", sizes.volumes), ("q", sizes.surfaces)):
+                title = f"{symbol} (UNIQUAC)"
+                listed.append(ConstantSheet(title, float(values[k]), "1", sizes.source, False))
+        if volumes is not None:
+            value, source = float(volumes.cm3_mol[k]), volumes.sources[k]
+            listed.append(ConstantSheet("V (Wilson, 298.15 K)", value, "cm3/mol", source, False))
+    return [tuple(listed) for listed in found]
 
 
 def _number(one: FittedParameter, i: int, j: int, model: str) -> Number:

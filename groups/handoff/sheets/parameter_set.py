@@ -19,15 +19,19 @@ class Number:
 
 @dataclass(frozen=True, slots=True)
 class PairSheet:
-    """The parameters of one pair; `first` and `second` are 1-based, as in the subscripts."""
+    """The parameters of one pair; `first` and `second` are 1-based, as in the subscripts.
+
+    The residuals of ln gamma are None where measured points were fitted; `residual` says in words
+    how far the fit lies from what it was fitted to.
+    """
 
     first: int
     second: int
     numbers: tuple[Number, ...]
     accepted: bool
-    rms_ln_gamma: float
-    largest_ln_gamma: float
-    largest_at: str
+    residual: str
+    rms_ln_gamma: float | None
+    largest_ln_gamma: float | None
     notes: tuple[str, ...]
 
 

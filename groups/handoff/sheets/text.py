@@ -86,10 +86,7 @@ def _pair_lines(pair: PairSheet) -> list[str]:
     for one in pair.numbers:
         error = "fixed" if one.standard_error is None else f"+/- {one.standard_error:.3g}"
         lines.append(f"  {one.name:<12} {one.value: .10g} [{one.unit}] {error}   {one.meaning}")
-    lines.append(
-        f"  residual of ln gamma: rms {pair.rms_ln_gamma:.4f}, largest "
-        f"{pair.largest_ln_gamma:+.4f} at {pair.largest_at}"
-    )
+    lines.append(f"  residual: {pair.residual}")
     if not pair.accepted:
         lines.append("  NOT TO BE USED WITHOUT A LOOK AT THE NOTES:")
     lines += [f"  note: {note}" for note in pair.notes]

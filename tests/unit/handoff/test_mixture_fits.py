@@ -132,3 +132,21 @@ def test_wilson_with_volumes_states_them():
 def test_bad_questions_are_refused(arguments, error):
     with pytest.raises(error):
         fit(components("CCO", "O"), method="unifac", **arguments)
+
+
+def test_azeotropes_of_three_components_are_compared():
+    # Acetone / chloroform / methanol has a ternary saddle azeotrope (Horsley 1973, from memory).
+    answer = fit(
+        components("CC(C)=O", "ClC(Cl)Cl", "CO"),
+        temperature_range_K=(320.0, 345.0),
+        pressure_kPa=101.325,
+        method="unifac-dortmund",
+    )
+    assert answer.azeotropes_predicted is not None
+    assert answer.azeotropes_fitted is not None
+    kinds = [
+        sorted(one.components for one in found)
+        for found in (answer.azeotropes_predicted, answer.azeotropes_fitted)
+    ]
+    assert (0, 1, 2) in kinds[0]
+    assert (kinds[0] == kinds[1]) == (not answer.notes)
