@@ -106,7 +106,9 @@ def _lowest(
         keep = _distinct(w[:, open_], height[:, open_]) & worth[:, open_]
         start, plane = np.nonzero(keep)
         which = open_[plane]
-        found = stationary_points(liquid, T[which], d[which], w[start, which], substitutions=0)
+        found = stationary_points(
+            liquid, T[which], d[which], w[start, which], 0, plane=which, enough=-CLEAR
+        )
         value = np.where(np.isfinite(found.height), found.height, np.inf)
         order = np.lexsort((-value, which))  # the lowest of each plane is written last
         chosen = order[value[order] < distance[which[order]]]

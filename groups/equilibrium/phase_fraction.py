@@ -7,7 +7,9 @@ from groups.arrays import BoolArray, FloatArray
 MAX_ITERATIONS = 80
 
 
-def phase_fraction(z: FloatArray, ln_k: FloatArray) -> tuple[FloatArray, BoolArray]:
+def phase_fraction(
+    z: FloatArray, ln_k: FloatArray, tolerance: float = 4e-16
+) -> tuple[FloatArray, BoolArray]:
     """Solve sum_i z_i (K_i - 1)/(1 + b (K_i - 1)) = 0 for b between 0 and 1.
 
     Parameters
@@ -16,6 +18,8 @@ def phase_fraction(z: FloatArray, ln_k: FloatArray) -> tuple[FloatArray, BoolArr
         Overall mole fractions.
     ln_k : array of shape (m, n_components)
         ln of the ratio of mole fractions, phase sought over the other; at most 300 in size.
+    tolerance : float
+        Relative change of the fraction at which the search ends.
 
     Returns
     -------
@@ -48,7 +52,7 @@ def phase_fraction(z: FloatArray, ln_k: FloatArray) -> tuple[FloatArray, BoolArr
         newton = b[rows] - value / slope
         good = (newton >= low[rows]) & (newton <= high[rows])
         new = np.where(good, newton, 0.5 * (low[rows] + high[rows]))
-        small = np.abs(new - b[rows]) <= 1e-16 + 4e-16 * b[rows]
+        small = np.abs(new - b[rows]) <= 1e-16 + tolerance * b[rows]
         b[rows] = new
         rows = rows[~(small | (value == 0.0))]
     return b, inside

@@ -27,6 +27,8 @@ ROUNDS = 14
 #: A phase this little below the plane that vanishes when it is added is not worth another round.
 MARGINAL = 1e-7
 SUBSTITUTIONS = 4
+#: How closely the shares need to be known during them.
+ROUGH_SHARE = 1e-3
 VAPOUR_PASSES = 40
 #: Largest part of the feed that a new phase begins with.
 FIRST_SHARE = 0.3
@@ -262,7 +264,7 @@ def _substituted(part: PhaseProblem, start: FloatArray, n_liquids: int) -> Float
         x = n / n.sum(axis=2, keepdims=True)
         c = part.coefficients(x, n_liquids)
         ln_k = np.clip(c[:, 0] - c[:, 1], -300.0, 300.0)  # second phase over the first
-        share, inside = phase_fraction(part.feed, ln_k)
+        share, inside = phase_fraction(part.feed, ln_k, ROUGH_SHARE)
         share = np.clip(share, 1e-3, 1.0 - 1e-3)[:, None]
         ratio = np.exp(ln_k)
         whole = 1.0 - share + share * ratio

@@ -43,6 +43,8 @@ def stationary_points(
     d: FloatArray,
     start: FloatArray,
     substitutions: int = SUBSTITUTIONS,
+    plane: IntArray | None = None,
+    enough: float = -np.inf,
 ) -> Stationary:
     """Local minima of the tangent-plane distance, one search for each row.
 
@@ -56,11 +58,17 @@ def stationary_points(
         First trial liquids; zero where a component is absent.
     substitutions : int
         Steps of successive substitution before Newton's method.
+    plane : array of shape (m,), optional
+        Which rows are trials of one plane; they all stop as soon as one lies below `enough`.
+    enough : float
     """
     search = _Search(liquid, temperature_K, d, start)
     active = np.arange(len(temperature_K), dtype=np.int64)
     for iteration in range(MAX_ITERATIONS):
         active = search.evaluate(active)
+        if plane is not None and len(active):
+            proven = plane[search.best_height < enough]
+            active = active[~np.isin(plane[active], proven)] if len(proven) else active
         if not len(active):
             break
         search.advance(active, newton=iteration >= substitutions)

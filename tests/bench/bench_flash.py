@@ -25,6 +25,7 @@ from groups.equilibrium import (
 )
 from groups.pure import vapour_pressure
 from groups.structure.assignment import assign
+from groups.structure.identify import name_and_cas
 from groups.structure.molecule import molecule_from_smiles
 
 PRESSURE_KPA = 101.325
@@ -116,7 +117,7 @@ def reference_flasher(mixed: Mixture):  # type: ignore[no-untyped-def]
     from thermo.unifac import UNIFAC
 
     n = len(mixed.smiles)
-    names = [str(molecule_from_smiles(each).cas) for each in mixed.smiles]
+    names = [str(name_and_cas(molecule_from_smiles(s).canonical_smiles)[1]) for s in mixed.smiles]
     constants, properties = ChemicalConstantsPackage.from_IDs(names)
     grid = np.linspace(250.0, 450.0, 201)
     pressures = []
