@@ -49,8 +49,8 @@ class TwoLiquidRegion:
         Ends of the tie lines, in order along the region; the binodal runs through them and the
         plait points.
     whole : bool
-        False where some of the tie lines asked for are left out, because a region of three liquids
-        lies across them.
+        False for a part of a region that a triangle of three liquids cuts; it has only its share of
+        the tie lines asked for.
     plait_points : tuple of arrays of shape (3,)
         None, one or two.
     """
@@ -72,10 +72,11 @@ class TernaryBinodal:
 
 @dataclass(slots=True)
 class _Swept:
-    """Tie lines in order, each (2, 3), and whether the region closed in a plait point."""
+    """Tie lines in order, each (2, 3), and whether the region closes in a plait point there."""
 
     lines: list[FloatArray]
     closed: bool
+    closed_at_start: bool = False
 
 
 def ternary_binodal(
@@ -124,7 +125,10 @@ def ternary_binodal(
     for start in lattice[0]:
         if not any(_near(start, region) for region in swept):
             swept.append(_island(liquid, T, start))
-    regions = [_finished(liquid, T, region, tie_lines) for region in swept if len(region.lines) > 1]
+    regions: list[TwoLiquidRegion] = []
+    for region in swept:
+        if len(region.lines) > 1:
+            regions.extend(_new(_finished(liquid, T, region, tie_lines), regions))
     return TernaryBinodal(T, tuple(regions), tuple(lattice[1]))
 
 
@@ -149,9 +153,14 @@ def _lattice_flash(liquid: LiquidModel, T: float) -> tuple[list[FloatArray], lis
     triangles: list[FloatArray] = []
     for k in np.flatnonzero(found.converged & (count == 3)):
         corners = found.liquids[k]
-        if not any(np.abs(corners - old).max() < 1e-6 for old in triangles):
+        if not any(_same_corners(corners, old) for old in triangles):
             triangles.append(corners)
     return lines, triangles
+
+
+def _same_corners(one: FloatArray, other: FloatArray) -> bool:
+    apart = np.abs(one[:, None] - other[None]).max(axis=2)
+    return bool(apart.min(axis=1).max() < 1e-6)
 
 
 def _sweep(liquid: LiquidModel, T: float, start: FloatArray, inward: FloatArray) -> _Swept:
@@ -185,7 +194,7 @@ def _island(liquid: LiquidModel, T: float, start: FloatArray) -> _Swept:
     across = start[1] - start[0]
     side = np.cross(across, np.ones(3))
     one, other = (_sweep(liquid, T, start, start.mean(axis=0) + s * side) for s in (1.0, -1.0))
-    return _Swept(other.lines[:0:-1] + one.lines, closed=one.closed and other.closed)
+    return _Swept(other.lines[:0:-1] + one.lines, one.closed, other.closed)
 
 
 def _beside(across: FloatArray, ahead: FloatArray) -> FloatArray:
@@ -225,7 +234,21 @@ def _near(line: FloatArray, region: _Swept) -> bool:
     return False
 
 
-def _finished(liquid: LiquidModel, T: float, region: _Swept, count: int) -> TwoLiquidRegion:
+def _new(parts: list[TwoLiquidRegion], known: list[TwoLiquidRegion]) -> list[TwoLiquidRegion]:
+    """The parts that another sweep has not found before."""
+    old = [_Swept(list(np.stack([r.first, r.second], axis=1)), closed=False) for r in known]
+    return [
+        part
+        for part in parts
+        if not any(
+            _near(np.stack([part.first[k], part.second[k]]), region)
+            for region in old
+            for k in (0, len(part.first) // 2)
+        )
+    ]
+
+
+def _finished(liquid: LiquidModel, T: float, region: _Swept, count: int) -> list[TwoLiquidRegion]:
     """Evenly spaced tie lines, tested for stability, and the plait points."""
     lines = np.array(region.lines)
     middles = lines.mean(axis=1)
@@ -243,13 +266,18 @@ def _finished(liquid: LiquidModel, T: float, region: _Swept, count: int) -> TwoL
     mean = (found.amounts * found.ln_fugacity).sum(axis=1) / np.where(feeds > 0.0, feeds, 1.0)
     plane = np.where(feeds > 0.0, mean, -np.inf)[good]
     stable = lowest_trials(liquid, problem.temperature_K[good], plane).distance > -ZERO_DISTANCE
-    x = x[good][stable]
-    ends = [lines[-1]] if region.closed else []
-    if region.closed and np.abs(lines[0][1] - lines[0][0]).max() < SHORT:
-        ends.append(lines[0])
-    plaits = [plait_point(liquid, T, end[0], end[1]) for end in ends]
-    true = tuple(p for p in plaits if p is not None and _lies_lowest(liquid, T, p))
-    return TwoLiquidRegion(x[:, 0], x[:, 1], len(x) == count, true)
+    good[good] = stable
+    # Where three liquids lie across the region its parts are given one by one.
+    cuts = np.flatnonzero(np.diff(np.concatenate([[False], good, [False]]).astype(np.int64)))
+    parts = []
+    for low, high in zip(cuts[::2].tolist(), cuts[1::2].tolist(), strict=True):
+        ends = [lines[-1]] if region.closed and high == count else []
+        ends += [lines[0]] if region.closed_at_start and low == 0 else []
+        plaits = [plait_point(liquid, T, end[0], end[1]) for end in ends]
+        true = tuple(p for p in plaits if p is not None and _lies_lowest(liquid, T, p))
+        part = x[low:high]
+        parts.append(TwoLiquidRegion(part[:, 0], part[:, 1], high - low == count, true))
+    return parts
 
 
 def _lies_lowest(liquid: LiquidModel, T: float, x: FloatArray) -> bool:
