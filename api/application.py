@@ -13,6 +13,7 @@ from api.problems import add_problem_handlers
 from api.routers import (
     activity,
     diagrams,
+    measurement_plans,
     methods,
     molecules,
     pages,
@@ -57,6 +58,7 @@ def create_app(settings: Settings | None = None) -> FastAPI:
         phase_points,
         diagrams,
         separations,
+        measurement_plans,
         pages,
     ):
         app.include_router(module.router)

@@ -53,13 +53,16 @@ def _computed(
     places = [k for k, _ in described]
     try:
         found = prediction.infinite_dilution(
-            [pair for _, pair in described], method=request.method, on_missing=request.on_missing
+            [pair for _, pair in described],
+            method=request.method,
+            on_missing=request.on_missing,
+            level=request.level,
         )
     except InvalidInputError as error:
         error.field = _INDEXED.sub(lambda m: f"pairs[{places[int(m[1])]}]", error.field or "")
         error.field = error.field or None
         raise
-    converted = (answers.infinite_dilution_result(answer) for answer in found)
+    converted = (answers.infinite_dilution_result(answer, request.level) for answer in found)
     return dict(zip(places, converted, strict=True))
 
 

@@ -39,6 +39,11 @@ def _trust(confidence: Confidence) -> list[Cell]:
     return [confidence.grade, " ".join(reason.code for reason in confidence.reasons)]
 
 
+def _ends(confidence: Confidence) -> list[Cell]:
+    interval = confidence.interval_90
+    return [None, None] if interval is None else [interval.lower, interval.upper]
+
+
 def _smiles(molecule: MoleculeIdentity | None) -> str | None:
     return None if molecule is None else molecule.canonical_smiles
 
@@ -83,16 +88,21 @@ def activity_csv(answer: ActivityResponse) -> str:
         *_numbered("x", n),
         *_numbered("gamma", n),
         *_numbered("ln_gamma", n),
+        *_numbered("ln_gamma_lower", n),
+        *_numbered("ln_gamma_upper", n),
         "excess_gibbs_RT",
         "excess_enthalpy_J_mol",
         *_TRUST,
     ]
+    nothing: list[Cell] = [None] * n
     rows = (
         [
             point.temperature_K,
             *point.mole_fractions,
             *point.gamma,
             *point.ln_gamma,
+            *(point.ln_gamma_lower or nothing),
+            *(point.ln_gamma_upper or nothing),
             point.excess_gibbs_RT,
             point.excess_enthalpy_J_mol,
             *_trust(point.confidence),
@@ -113,19 +123,22 @@ def infinite_dilution_csv(answer: InfiniteDilutionResponse) -> str:
             result.ln_gamma_inf,
             result.gamma_inf,
             result.method,
+            *_ends(result.confidence),
             *_trust(result.confidence),
         ]
         for result in answer.results
     )
-    return csv_text([*header, "method", *_TRUST], rows)
+    return csv_text([*header, "method", "lower_90", "upper_90", *_TRUST], rows)
 
 
 def phase_point_csv(answer: PhasePointResponse) -> str:
     """One row a component."""
     header = (
         "component,canonical_smiles,x,y,gamma,saturation_kPa,relative_volatility,"
-        "temperature_K,pressure_kPa,vapour_fraction,method"
+        "y_lower,y_upper,relative_volatility_lower,relative_volatility_upper,"
+        "temperature_K,pressure_kPa,vapour_fraction,method,lower_90,upper_90"
     )
+    nothing: list[float | None] = [None] * len(answer.components)
     columns = zip(
         answer.components,
         answer.x,
@@ -133,6 +146,10 @@ def phase_point_csv(answer: PhasePointResponse) -> str:
         answer.gamma,
         answer.saturation_kPa,
         answer.relative_volatility,
+        answer.y_lower or nothing,
+        answer.y_upper or nothing,
+        answer.relative_volatility_lower or nothing,
+        answer.relative_volatility_upper or nothing,
         strict=True,
     )
     rows = (
@@ -144,6 +161,7 @@ def phase_point_csv(answer: PhasePointResponse) -> str:
             answer.pressure_kPa,
             answer.vapour_fraction,
             answer.method,
+            *_ends(answer.confidence),
             *_trust(answer.confidence),
         ]
         for component, *values in columns
@@ -153,7 +171,12 @@ def phase_point_csv(answer: PhasePointResponse) -> str:
 
 def diagram_csv(answer: DiagramResponse) -> str:
     """One row a point."""
-    header = "x1,y1,temperature_K,pressure_kPa,gamma1,gamma2,relative_volatility,stable"
+    header = (
+        "x1,y1,temperature_K,pressure_kPa,gamma1,gamma2,relative_volatility,"
+        "y1_lower,y1_upper,temperature_K_lower,temperature_K_upper,pressure_kPa_lower,"
+        "pressure_kPa_upper,relative_volatility_lower,relative_volatility_upper,stable"
+    )
+    nothing: list[float | None] = [None] * len(answer.x1)
     rows = zip(
         answer.x1,
         answer.y1,
@@ -162,6 +185,14 @@ def diagram_csv(answer: DiagramResponse) -> str:
         answer.gamma1,
         answer.gamma2,
         answer.relative_volatility,
+        answer.y1_lower or nothing,
+        answer.y1_upper or nothing,
+        answer.temperature_K_lower or nothing,
+        answer.temperature_K_upper or nothing,
+        answer.pressure_kPa_lower or nothing,
+        answer.pressure_kPa_upper or nothing,
+        answer.relative_volatility_lower or nothing,
+        answer.relative_volatility_upper or nothing,
         answer.stable,
         strict=True,
     )

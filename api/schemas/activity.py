@@ -3,7 +3,7 @@
 from pydantic import Field
 
 from api.schemas.base import Number, NumberOrList, StrictModel
-from api.schemas.confidence import Confidence, MethodUse
+from api.schemas.confidence import BAND, Confidence, LevelInterval, MethodUse
 from api.schemas.molecule import MoleculeIdentity, MoleculeInput
 from api.schemas.prediction import MethodChoice, MixtureRequest, PredictionResponse
 from api.schemas.problem import Problem
@@ -27,9 +27,13 @@ class ActivityPoint(StrictModel):
     mole_fractions: list[float]
     gamma: list[float | None]
     ln_gamma: list[float | None]
+    ln_gamma_lower: list[float] | None = Field(description=BAND)
+    ln_gamma_upper: list[float] | None = Field(description=BAND)
     ln_gamma_combinatorial: list[float | None]
     ln_gamma_residual: list[float | None]
     excess_gibbs_RT: float | None = Field(description="gE / (R T), dimensionless")
+    excess_gibbs_RT_lower: float | None = Field(description=BAND)
+    excess_gibbs_RT_upper: float | None = Field(description=BAND)
     excess_enthalpy_J_mol: float | None = Field(description="hE, J/mol")
     confidence: Confidence
 
@@ -52,6 +56,10 @@ class InfiniteDilutionRequest(MethodChoice):
     """Any number of pairs."""
 
     pairs: list[Pair] = Field(min_length=1)
+    level: Number | None = Field(
+        default=None,
+        description="Probability of a second interval beside the one of 90 %, 0.01 to 0.99.",
+    )
 
 
 class InfiniteDilutionResult(StrictModel):
@@ -64,6 +72,9 @@ class InfiniteDilutionResult(StrictModel):
     gamma_inf: float | None
     method: str | None
     methods_used: list[MethodUse]
+    interval: LevelInterval | None = Field(
+        default=None, description="Of ln gamma, at the level asked for."
+    )
     confidence: Confidence
     problem: Problem | None = Field(default=None, description="Set where the pair cannot be taken.")
 

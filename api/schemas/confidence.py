@@ -16,6 +16,15 @@ class Interval(StrictModel):
     upper: float
 
 
+class LevelInterval(Interval):
+    """The range that holds the true value with the probability `level`."""
+
+    level: float
+
+
+BAND = "End of the 90 % interval; null where no calibrated interval exists."
+
+
 class Reason(StrictModel):
     """One reason to trust or doubt the number."""
 

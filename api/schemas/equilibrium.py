@@ -5,7 +5,7 @@ from typing import Literal
 from pydantic import Field
 
 from api.schemas.base import Number, StrictModel, WholeNumber
-from api.schemas.confidence import Confidence
+from api.schemas.confidence import BAND, Confidence, Interval
 from api.schemas.prediction import MixtureRequest, PredictionResponse, VapourPredictionResponse
 
 
@@ -40,6 +40,14 @@ class PhasePointResponse(VapourPredictionResponse):
     relative_volatility: list[float | None] = Field(
         description="K of each component over the K of the last one"
     )
+    x_lower: list[float] | None = Field(description=BAND)
+    x_upper: list[float] | None = Field(description=BAND)
+    y_lower: list[float] | None = Field(description=BAND)
+    y_upper: list[float] | None = Field(description=BAND)
+    gamma_lower: list[float] | None = Field(description=BAND)
+    gamma_upper: list[float] | None = Field(description=BAND)
+    relative_volatility_lower: list[float] | None = Field(description=BAND)
+    relative_volatility_upper: list[float] | None = Field(description=BAND)
     liquid_stable: bool | None = Field(description="False where the liquid would split in two")
     failure: str | None
     confidence: Confidence
@@ -65,6 +73,18 @@ class AzeotropeResult(StrictModel):
     kind: str
     stable_liquid: bool = Field(description="False: the liquid splits, a heterogeneous azeotrope")
     liquids: list[list[float]] = Field(description="Mole fractions of the liquid or liquids")
+
+
+class AzeotropeChance(StrictModel):
+    """How probable an azeotrope of two components is, and where it lies if there is one."""
+
+    components: list[int] = Field(description="Indices into `components`")
+    probability: float
+    x1: Interval | None = Field(
+        description="90 % interval of the mole fraction of the first of the two, in the binary"
+    )
+    temperature_K: Interval | None
+    pressure_kPa: Interval | None
 
 
 class LiquidSplitRange(StrictModel):
@@ -95,9 +115,18 @@ class DiagramResponse(VapourPredictionResponse):
     gamma1: list[float | None]
     gamma2: list[float | None]
     relative_volatility: list[float | None] = Field(description="Of component 1 over component 2")
+    y1_lower: list[float | None] | None = Field(description=BAND)
+    y1_upper: list[float | None] | None = Field(description=BAND)
+    temperature_K_lower: list[float | None] | None = Field(description=BAND)
+    temperature_K_upper: list[float | None] | None = Field(description=BAND)
+    pressure_kPa_lower: list[float | None] | None = Field(description=BAND)
+    pressure_kPa_upper: list[float | None] | None = Field(description=BAND)
+    relative_volatility_lower: list[float | None] | None = Field(description=BAND)
+    relative_volatility_upper: list[float | None] | None = Field(description=BAND)
     stable: list[bool] = Field(description="False where the liquid drawn would split in two")
     failures: list[PointFailure]
     azeotropes: list[AzeotropeResult]
+    azeotrope_chance: AzeotropeChance | None
     liquid_split: LiquidSplitRange | None = Field(
         description="The widest gap of the boiling liquid; null where it does not split"
     )
@@ -117,6 +146,7 @@ class AzeotropesResponse(VapourPredictionResponse):
     pressure_kPa: float | None
     temperature_K: float | None
     azeotropes: list[AzeotropeResult]
+    chances: list[AzeotropeChance] = Field(description="One for each two components")
     confidence: Confidence
 
 
@@ -134,10 +164,19 @@ class LiquidPhase(StrictModel):
     ln_gamma: list[float]
 
 
+class SplitChance(StrictModel):
+    """How probable a split is; 90 % intervals of x1 of both liquids if there is one."""
+
+    probability: float
+    x1_lower: Interval | None
+    x1_upper: Interval | None
+
+
 class LiquidSplitResponse(PredictionResponse):
     """The coexisting liquids; none where the liquid is homogeneous."""
 
     temperature_K: float
     splits: bool
     phases: list[LiquidPhase]
+    chance: SplitChance | None = Field(description="Of a binary")
     confidence: Confidence

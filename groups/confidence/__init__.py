@@ -2,22 +2,26 @@
 
 from groups.confidence.confidence import (
     GRADES,
+    THRESHOLDS,
     Confidence,
     Evidence,
     Grade,
     Interval,
     Reason,
+    grade_of_half_width,
     graded,
     worst_grade,
 )
 
 __all__ = [
     "GRADES",
+    "THRESHOLDS",
     "Confidence",
     "Evidence",
     "Grade",
     "Interval",
     "Reason",
+    "grade_of_half_width",
     "graded",
     "worst_grade",
 ]

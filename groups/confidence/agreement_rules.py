@@ -7,6 +7,7 @@ from groups.confidence.confidence import Reason
 # Difference in ln gamma beyond which tables are said to disagree: three times the scatter of
 # repeated measurements.
 DISAGREE = 0.30
+LEAST_CORRECTION = 0.05
 
 
 def agreement_reasons(method: str, spreads: dict[str, float]) -> list[Reason]:
@@ -57,3 +58,24 @@ def _factor(spread_ln_gamma: float) -> str:
         return "more than a thousandfold"
     factor = exp(spread_ln_gamma)
     return f"a factor {factor:.1f}" if factor < 10.0 else f"a factor {factor:.0f}"
+
+
+def correction_reasons(largest_ln_gamma: float) -> list[Reason]:
+    """That the weighted tables were corrected by what alike systems measured.
+
+    Parameters
+    ----------
+    largest_ln_gamma : float
+        Size of the largest correction of ln gamma at infinite dilution in the mixture.
+    """
+    if largest_ln_gamma < LEAST_CORRECTION:
+        return []
+    return [
+        Reason(
+            "learned_correction",
+            f"Up to {largest_ln_gamma:.2f} in ln gamma at infinite dilution was added to the "
+            "weighted tables, by which they err on alike systems that were measured. It acts "
+            "at high dilution and fades towards the middle of the composition range.",
+            "auto",
+        )
+    ]

@@ -77,8 +77,25 @@ def binary_split(liquid: LiquidModel, temperature_K: float) -> tuple[FloatArray,
 def binary_splits(liquid: LiquidModel, temperature_K: float) -> tuple[BinarySplit, ...]:
     """Every miscibility gap of a binary at one temperature, in the order of x1.
 
-    Parameters, Raises, Source
-    --------------------------
+    Parameters
+    ----------
+    liquid : LiquidModel
+        Of two components.
+    temperature_K : float
+        In K, 40 to 2000.
+
+    Returns
+    -------
+    tuple of BinarySplit
+        Empty where the liquid is stable throughout.
+
+    Raises
+    ------
+    ShapeError, OutOfRangeError
+        As `binary_split`.
+
+    Source
+    ------
     As `binary_split`.
     """
     T = float(checked_temperature(temperature_K)[0])

@@ -13,6 +13,7 @@ from groups.prediction.answers import (
 )
 from groups.prediction.assignments import assign_groups
 from groups.prediction.cautions import CAUTIONS
+from groups.prediction.chances import AzeotropeChance, SplitChance
 from groups.prediction.choosing import ALL_METHODS
 from groups.prediction.component import Component
 from groups.prediction.diagrams import diagram
@@ -27,6 +28,7 @@ __all__ = [
     "CAUTIONS",
     "ActivityAnswer",
     "AzeotropeAnswer",
+    "AzeotropeChance",
     "Component",
     "DiagramAnswer",
     "InfiniteDilutionAnswer",
@@ -34,6 +36,7 @@ __all__ = [
     "MeasurementPlan",
     "PhasePointAnswer",
     "PlannedMeasurement",
+    "SplitChance",
     "activity_coefficients",
     "assign_groups",
     "azeotropes",

@@ -9,7 +9,7 @@ from dataclasses import dataclass, replace
 import numpy as np
 
 from groups.arrays import FloatArray
-from groups.confidence import Confidence
+from groups.confidence import Confidence, Interval
 from groups.confidence.calibration import TableWeight
 from groups.equilibrium import Azeotrope, Diagram
 from groups.prediction.bands import Band
@@ -54,6 +54,7 @@ class InfiniteDilutionAnswer:
     ln_gamma_inf: float
     method: str | None
     methods_used: tuple[TableWeight, ...]
+    interval: Interval | None  # of another level, if one was asked for
     confidence: Confidence
 
 

@@ -9,11 +9,11 @@ from groups.activity import ln_gamma_infinite_pairs
 from groups.activity.choice import OnMissing
 from groups.arrays import FloatArray
 from groups.confidence import Interval, Reason, graded
-from groups.confidence.agreement_rules import agreement_reasons
+from groups.confidence.agreement_rules import agreement_reasons, correction_reasons
 from groups.confidence.calibration import (
     TABLES,
+    DiluteAnswers,
     dilute_answers,
-    ln_gamma_interval,
     pair_weights,
 )
 from groups.confidence.chemistry_rules import gas_reasons
@@ -40,7 +40,7 @@ def infinite_dilution(
     pairs: Sequence[DilutePair],
     method: str = "auto",
     on_missing: OnMissing = "estimate",
-    level: float = LEVEL,
+    level: float | None = None,
 ) -> tuple[InfiniteDilutionAnswer, ...]:
     """ln gamma at infinite dilution of each solute in each solvent.
 
@@ -51,8 +51,8 @@ def infinite_dilution(
     method : str
         An identifier of `ALL_METHODS`.
     on_missing : {"refuse", "estimate"}
-    level : float
-        Probability of the intervals, 0.01 to 0.99.
+    level : float, optional
+        Probability of a second interval beside the one of 90 %, 0.01 to 0.99.
 
     Returns
     -------
@@ -76,7 +76,9 @@ def infinite_dilution(
         return _by_auto(pairs, on_missing, level)
     choices = [_choice_or_refusal(pair, method, on_missing) for pair in pairs]
     numbers = _numbers_by_method(pairs, choices)
-    _, lower, upper = ln_gamma_interval(pairs, level)
+    found = dilute_answers(pairs)
+    ends = _ends(found, LEVEL)
+    wished = None if level is None else _ends(found, level)
     return tuple(
         _refused(pair, method, choice)
         if isinstance(choice, PredictionError)
@@ -84,29 +86,43 @@ def infinite_dilution(
             pair,
             choice,
             {m: float(column[k]) for m, column in numbers.items()},
-            (float(lower[k]), float(upper[k])),
+            float(numbers[choice.heaviest.method][k]),
+            ends[k],
+            None if wished is None else wished[k],
         )
         for k, (pair, choice) in enumerate(zip(pairs, choices, strict=True))
     )
 
 
 def _by_auto(
-    pairs: Sequence[DilutePair], on_missing: OnMissing, level: float
+    pairs: Sequence[DilutePair], on_missing: OnMissing, level: float | None
 ) -> tuple[InfiniteDilutionAnswer, ...]:
     """All pairs in whole arrays; only the reasons are gathered pair by pair."""
     found = dilute_answers(pairs, on_missing)
-    lower, upper = found.interval(level)
+    ends = _ends(found, LEVEL)
+    wished = None if level is None else _ends(found, level)
     weights = pair_weights(found)
     answers = []
     for k, pair in enumerate(pairs):
         if weights[k]:
             choice = weighted_choice(pair[:2], weights[k])
             numbers = dict(zip(TABLES, map(float, found.tables.ln_gamma[k]), strict=True))
-            ends = (float(lower[k]), float(upper[k]))
-            answers.append(_answered(pair, choice, numbers, ends))
+            other = None if wished is None else wished[k]
+            value, added = float(found.ln_gamma[k]), float(found.correction[k])
+            answers.append(
+                _answered(
+                    pair, choice, numbers, value, ends[k], other, correction_reasons(abs(added))
+                )
+            )
         else:
             answers.append(_refused(pair, "auto", _refusal(pair, on_missing)))
     return tuple(answers)
+
+
+def _ends(found: DiluteAnswers, level: float) -> list[tuple[float, float]]:
+    """Ends of the interval of every pair."""
+    lower, upper = found.interval(level)
+    return list(zip(lower.tolist(), upper.tolist(), strict=True))
 
 
 def _refusal(pair: DilutePair, on_missing: OnMissing) -> PredictionError:
@@ -171,10 +187,12 @@ def _answered(
     pair: DilutePair,
     choice: Choice,
     numbers: Mapping[str, float],
-    calibrated: tuple[float, float],
+    ln_gamma: float,
+    ends: tuple[float, float],
+    wished: tuple[float, float] | None,
+    extra: Sequence[Reason] = (),
 ) -> InfiniteDilutionAnswer:
     solute, solvent, temperature_K = pair
-    ln_gamma = sum(one.weight * numbers[one.method] for one in choice.weights)
     spreads = {other: abs(numbers[other] - ln_gamma) for other in choice.compared}
     heaviest = choice.heaviest
     reasons = [
@@ -182,8 +200,8 @@ def _answered(
         *gas_reasons(solute, temperature_K),
         *temperature_reasons(table(heaviest.method), temperature_K, temperature_K),
         *agreement_reasons(choice.method, spreads),
+        *extra,
     ]
-    interval = Interval(min(calibrated[0], ln_gamma), max(calibrated[1], ln_gamma))
     return InfiniteDilutionAnswer(
         solute,
         solvent,
@@ -191,18 +209,24 @@ def _answered(
         ln_gamma,
         choice.method,
         choice.weights,
-        graded(reasons, choice_evidence(choice), interval=interval),
+        None if wished is None else _holding(wished, ln_gamma),
+        graded(reasons, choice_evidence(choice), interval=_holding(ends, ln_gamma)),
     )
+
+
+def _holding(ends: tuple[float, float], number: float) -> Interval:
+    """The interval, stretched to hold the number where a single table lies outside it."""
+    return Interval(min(ends[0], number), max(ends[1], number))
 
 
 def _ideal(pair: DilutePair) -> InfiniteDilutionAnswer:
     mixture = liquid(pair[:2], "ideal", "refuse")
     return InfiniteDilutionAnswer(
-        *pair, 0.0, "ideal", mixture.methods_used, graded(mixture.fixed_reasons)
+        *pair, 0.0, "ideal", mixture.methods_used, None, graded(mixture.fixed_reasons)
     )
 
 
 def _refused(pair: DilutePair, method: str, error: PredictionError) -> InfiniteDilutionAnswer:
     code = "missing_parameter" if isinstance(error, MissingParameterError) else "no_groups"
     confidence = graded([Reason(code, str(error), method, "none")])
-    return InfiniteDilutionAnswer(*pair, float("nan"), None, (), confidence)
+    return InfiniteDilutionAnswer(*pair, float("nan"), None, (), None, confidence)

@@ -6,12 +6,12 @@ from functools import lru_cache
 
 import numpy as np
 
-from groups.activity import ActivityModel, IdealModel, WeightedModel, activity_model
+from groups.activity import ActivityModel, IdealModel, activity_model
 from groups.activity.choice import OnMissing
 from groups.arrays import FloatArray
 from groups.confidence import Evidence, Reason
-from groups.confidence.agreement_rules import agreement_reasons
-from groups.confidence.calibration import TableWeight
+from groups.confidence.agreement_rules import agreement_reasons, correction_reasons
+from groups.confidence.calibration import TableWeight, auto_model
 from groups.confidence.parameter_rules import temperature_reasons
 from groups.errors import UnknownMethodError
 from groups.parameters import table
@@ -137,12 +137,13 @@ def _liquid(molecules: tuple[Molecule, ...], method: str, on_missing: OnMissing)
         return _ideal(molecules, method)
     choice = choose(molecules, method, on_missing)
     models = {m: activity_model(choice.counts(m), m) for m in choice.tables}
-    weights = {one.method: one.weight for one in choice.weights}
-    taken = (
-        models[choice.method]
-        if len(weights) == 1 and choice.method in models
-        else WeightedModel(tuple(models[m] for m in weights), tuple(weights.values()))
-    )
+    extra: list[Reason] = []
+    taken: ActivityModel = models[choice.heaviest.method]
+    if method == "auto":
+        automatic = auto_model(molecules, on_missing)
+        assert automatic is not None  # or there would be no choice
+        taken = automatic.model
+        extra = correction_reasons(float(np.max(np.abs(automatic.correction))))
     return Liquid(
         molecules,
         choice.method,
@@ -150,7 +151,7 @@ def _liquid(molecules: tuple[Molecule, ...], method: str, on_missing: OnMissing)
         choice.weights,
         choice.heaviest.method,
         {m: models[m] for m in choice.compared},
-        mixture_reasons(molecules, choice),
+        (*mixture_reasons(molecules, choice), *extra),
         choice_evidence(choice),
     )
 

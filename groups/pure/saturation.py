@@ -87,7 +87,8 @@ class VapourPressure:
         edges = np.array(self.range_K)
         steepness = self.curve.slope(edges) * edges**2
         beyond = np.where(inside < T, steepness[1], steepness[0])
-        return self.curve.ln_kPa(inside) + beyond * (1.0 / inside - 1.0 / T)
+        continued: FloatArray = self.curve.ln_kPa(inside) + beyond * (1.0 / inside - 1.0 / T)
+        return continued
 
     def slope(self, temperature_K: npt.ArrayLike) -> FloatArray:
         """Temperature derivative of ln P.

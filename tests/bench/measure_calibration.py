@@ -20,7 +20,7 @@ from matplotlib.figure import Figure
 from groups.arrays import BoolArray, IntArray
 from groups.confidence.calibration.crossval import Held, cross_validate
 from groups.confidence.calibration.features import TABLE_FEATURES
-from groups.confidence.calibration.grades import grade_of_half_width
+from groups.confidence.confidence import grade_of_half_width
 from groups.confidence.calibration.open_set import OpenSet, group_folds, read_open_set
 from groups.confidence.calibration.training import Training, training
 from groups.confidence.calibration.traits import traits

@@ -4,7 +4,6 @@ from groups.confidence.calibration.addition import AddedExcess
 from groups.confidence.calibration.automatic import AutoModel, auto_model
 from groups.confidence.calibration.dilute import TABLES, DiluteTables, dilute_tables
 from groups.confidence.calibration.evidence import evidence
-from groups.confidence.calibration.grades import THRESHOLDS, grade_of_half_width
 from groups.confidence.calibration.intervals import (
     DiluteAnswers,
     dilute_answers,
@@ -15,7 +14,6 @@ from groups.confidence.calibration.samples import SampledModels, sample_models
 
 __all__ = [
     "TABLES",
-    "THRESHOLDS",
     "AddedExcess",
     "AutoModel",
     "DiluteAnswers",
@@ -26,7 +24,6 @@ __all__ = [
     "dilute_answers",
     "dilute_tables",
     "evidence",
-    "grade_of_half_width",
     "ln_gamma_interval",
     "mixture_weights",
     "pair_weights",

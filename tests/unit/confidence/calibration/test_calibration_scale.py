@@ -3,7 +3,7 @@
 import numpy as np
 import pytest
 
-from groups.confidence.calibration import grade_of_half_width
+from groups.confidence import grade_of_half_width
 from groups.confidence.calibration.model import calibration
 from groups.confidence.calibration.scale import fit_scale, half_width, interval_score
 from groups.errors import OutOfRangeError
