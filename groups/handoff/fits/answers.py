@@ -73,7 +73,7 @@ class FitEffects:
     Attributes
     ----------
     splits : tuple of SplitEffect
-        At every temperature of the grid.
+        At the lowest, the middle and the highest temperature of the grid.
     azeotropes_predicted, azeotropes_fitted : tuple of Azeotrope or None
         At `pressure_kPa`; None where no vapour pressures or no pressure were given.
     pressure_kPa : float or None

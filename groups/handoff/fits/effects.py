@@ -10,10 +10,11 @@ from groups.equilibrium import (
     LiquidModel,
     SaturationLine,
     System,
-    azeotropes,
     binary_split,
 )
+from groups.equilibrium.binary_azeotropes import binary_azeotropes
 from groups.equilibrium.binary_split import may_split
+from groups.equilibrium.boiling_curve import Condition, boiling_curve
 from groups.handoff.correlations import CorrelativeModel
 from groups.handoff.fits.answers import FitEffects, FitNote, SplitEffect
 from groups.handoff.fits.target import PairTarget
@@ -22,6 +23,8 @@ from groups.handoff.fits.target import PairTarget
 AZEOTROPE_SHIFT = 0.02
 SPLIT_SHIFT = 0.02
 LN_ALPHA_CHANGE = 0.05
+#: Points of the boiling curve that azeotropes are looked for along, besides those the search adds.
+CURVE_X1 = np.linspace(0.0, 1.0, 21)
 
 
 @dataclass(frozen=True, slots=True)
@@ -44,7 +47,9 @@ def azeotropes_of(liquid: LiquidModel, boiling: Boiling | None) -> tuple[Azeotro
     """Azeotropes of a binary at the pressure, where vapour pressures are given."""
     if boiling is None:
         return None
-    return azeotropes(System(liquid, boiling.lines), pressure_kPa=boiling.pressure_kPa)
+    # The search of one pair alone: the index of a whole mixture, which costs as much, says no more.
+    system, condition = System(liquid, boiling.lines), Condition(pressure_kPa=boiling.pressure_kPa)
+    return binary_azeotropes(system, condition, boiling_curve(system, condition, CURVE_X1))
 
 
 def effects(
@@ -67,7 +72,8 @@ def effects(
     FitEffects
     """
     T = target.temperature_K
-    pairs = zip(T.tolist(), splits_of(predicted, T), splits_of(fitted, T), strict=True)
+    some = T[np.unique([0, len(T) // 2, len(T) - 1])]  # a split has its consolute point on one side
+    pairs = zip(some.tolist(), splits_of(predicted, some), splits_of(fitted, some), strict=True)
     change = fitted.ln_gamma(T[:, None], target.fractions) - target.ln_gamma
     ln_alpha = change[..., 0] - change[..., 1]
     row, column = np.unravel_index(int(np.argmax(np.abs(ln_alpha))), ln_alpha.shape)

@@ -9,6 +9,8 @@ from collections.abc import Iterator, Mapping
 from dataclasses import dataclass, field
 from xml.etree import ElementTree
 
+from rdkit import Chem, rdBase
+
 from groups.errors import MeasurementError, StructureError
 from groups.handoff.comparisons.measurements import Measurements
 from groups.handoff.comparisons.reading import Cell, read_records
@@ -26,6 +28,7 @@ from groups.structure.molecule import Molecule, molecule_from_smiles
 
 LARGEST_BYTES = 20_000_000
 _LIQUIDS = ("Liquid mixture 1", "Liquid mixture 2", "Liquid mixture 3")
+_FLUID = {"Liquid", "Gas", *_LIQUIDS}
 _COVERAGE = 2.0  # of an expanded uncertainty where the document states no factor
 
 Element = ElementTree.Element
@@ -181,8 +184,8 @@ def _places(root: Element, molecules: tuple[Molecule, Molecule]) -> dict[str, in
 
 
 def _smiles(compound: Element) -> str | None:
-    """Canonical SMILES by SMILES, CAS number or name, whichever is understood first."""
-    for text in (_path(compound, "sSmiles"),):
+    """Canonical SMILES by SMILES, InChI, CAS number or name, whichever is understood first."""
+    for text in (_path(compound, "sSmiles"), _from_inchi(_path(compound, "sStandardInChI"))):
         if text:
             try:
                 return molecule_from_smiles(text).canonical_smiles
@@ -203,7 +206,19 @@ def _smiles(compound: Element) -> str | None:
     return None
 
 
+def _from_inchi(inchi: str) -> str:
+    if not inchi:
+        return ""
+    with rdBase.BlockLogs():
+        mol = Chem.MolFromInchi(inchi)  # type: ignore[no-untyped-call]
+    return "" if mol is None else Chem.MolToSmiles(mol)
+
+
 def _block(block: Element, places: Mapping[str, int], left_out: list[str]) -> list[dict[str, Cell]]:
+    phases = {_path(one, "ePhase") for one in _children(block, "PhaseID")}
+    if not phases <= _FLUID:
+        left_out.append(f"data with {', '.join(sorted(phases - _FLUID))}")
+        return []
     properties = {
         _path(one, "nPropNumber"): _property(one, places) for one in _children(block, "Property")
     }
@@ -244,7 +259,7 @@ def _block(block: Element, places: Mapping[str, int], left_out: list[str]) -> li
 
 def _known(quantity: _Quantity) -> bool:
     if quantity.name in (MOLE_FRACTION, MASS_FRACTION):
-        return quantity.phase in ("Gas", *_LIQUIDS)
+        return quantity.phase in _FLUID
     return quantity.name in (PRESSURE, TEMPERATURE, ACTIVITY_COEFFICIENT, EXCESS_ENTHALPY)
 
 
