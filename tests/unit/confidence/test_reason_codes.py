@@ -210,8 +210,8 @@ def test_the_grade_follows_the_width_where_no_reason_binds():
         0.1: "high",
         0.29: "high",
         0.31: "moderate",
-        0.59: "moderate",
-        0.61: "low",
+        0.69: "moderate",
+        0.71: "low",
         3.0: "low",
     }
     for half_width, grade in widths.items():
