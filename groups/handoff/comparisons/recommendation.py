@@ -11,7 +11,8 @@ from groups.handoff.comparisons.measurements import Measurements
 DESCRIBES = 3.0
 #: A fitted model must beat the best prediction by this factor on points it has not seen.
 GAIN = 0.8
-LEAST_POINTS_FOR_FIT = 6
+LEAST_POINTS_FOR_FIT = 4
+RESIDUALS_PER_PARAMETER = 3
 #: AICc differences below this leave two models equally good: Burnham & Anderson, Model Selection
 #: and Multimodel Inference (2002), section 2.6.
 EQUAL_AICC = 2.0
@@ -73,9 +74,16 @@ def _cross(value: float) -> float:
 def _worth_fitting(trial: ComparedModel, best: ComparedModel | None, points: Measurements) -> bool:
     assert trial.fit is not None
     seen_anew = trial.fit.cross_validated_rms
-    if points.n_points < LEAST_POINTS_FOR_FIT or not np.isfinite(seen_anew):
+    if not _enough(trial, points) or not np.isfinite(seen_anew):
         return False
     return best is None or seen_anew < GAIN * best.weighted_rms
+
+
+def _enough(trial: ComparedModel, points: Measurements) -> bool:
+    """Whether the points can carry the parameters of a fit at all."""
+    assert trial.fit is not None
+    needed = RESIDUALS_PER_PARAMETER * len(trial.fit.covariance)
+    return points.n_points >= LEAST_POINTS_FOR_FIT and len(trial.fit.residuals) >= needed
 
 
 def _fitted_words(
@@ -134,8 +142,11 @@ def _predicted_words(
 def _why_no_fit(trial: ComparedModel | None, points: Measurements) -> str:
     if trial is None:
         return "the points are too few to fit an equation to"
-    if points.n_points < LEAST_POINTS_FOR_FIT:
-        return f"{points.n_points} points are too few to trust an equation fitted to them"
+    if not _enough(trial, points):
+        return (
+            f"{points.n_points} point{'s are' if points.n_points > 1 else ' is'} too few to trust "
+            "an equation fitted to them"
+        )
     return "no equation fitted to the points does clearly better on points left out of the fit"
 
 

@@ -12,12 +12,12 @@ import numpy as np
 import pytest
 
 from groups.activity import IdealModel
-from groups.equilibrium import System, bubble_pressure
+from groups.equilibrium import System, azeotropes, bubble_pressure
 from groups.handoff.comparisons import consistency, fit_points, observations, read_records
 from groups.handoff.comparisons.measurements import Measurements
 from groups.handoff.correlations import correlative_model
 from tests.reference.handoff.lines import ConstantLine
-from tests.unit.equilibrium.equilibrium_mixtures import Antoine
+from tests.unit.equilibrium.equilibrium_mixtures import BENZENE, ETHANOL, Antoine
 
 HERE = Path(__file__).parent
 MEK_TOLUENE = HERE.parent / "equilibrium" / "mek_toluene.csv"
@@ -164,3 +164,58 @@ def test_one_false_pressure_is_named_and_not_dropped():
     outliers = next(test for test in found.tests if test.name == "outliers")
     assert outliers.points == (5,)
     assert len(moved.vapour_liquid.number) == len(v.number)
+
+
+def test_the_area_test_cannot_see_a_false_pressure():
+    # Its known weakness: the pressure cancels. All pressures 10 % too high change no area, while
+    # the pure ends and the point-to-point comparison see it at once.
+    points = isothermal(MEK_TOLUENE, 323.15)
+    v = points.vapour_liquid
+    moved = dataclasses.replace(
+        points, vapour_liquid=dataclasses.replace(v, pressure_kPa=1.1 * v.pressure_kPa)
+    )
+    tests = []
+    for one in (points, moved):
+        seen = observations(one, ends(points), IdealModel(2))
+        found = consistency(one.vapour_liquid, seen, ends(points))
+        tests.append({test.name: test for test in found.tests})
+    assert tests[1]["area"].value == pytest.approx(tests[0]["area"].value, abs=1e-9)
+    assert tests[0]["pure ends"].passed is True
+    assert tests[1]["pure ends"].passed is False
+    assert tests[1]["pure ends"].value == pytest.approx(10.0, abs=1e-6)
+    assert "pressure cancels" in tests[0]["area"].weakness
+
+
+def test_points_given_twice_and_points_that_disagree_are_named():
+    points = isothermal(MEK_TOLUENE, 323.15)
+    v = points.vapour_liquid
+    again = np.r_[np.arange(len(v.number)), 3, 5]
+    fields = {f.name: getattr(v, f.name)[again] for f in dataclasses.fields(v)}
+    fields["number"] = np.arange(len(again))
+    fields["pressure_kPa"] = fields["pressure_kPa"].copy()
+    fields["pressure_kPa"][-1] *= 1.04  # eight times the stated half per cent of each
+    moved = dataclasses.replace(points, vapour_liquid=dataclasses.replace(v, **fields))
+    seen = observations(moved, ends(points), IdealModel(2))
+    found = consistency(moved.vapour_liquid, seen, ends(points))
+    test = next(one for one in found.tests if one.name == "duplicates")
+    assert test.points == (3, 5, 11, 12)
+    assert test.passed is False
+
+
+def test_van_laar_constants_of_an_azeotrope_give_the_azeotrope_back():
+    # Carlson & Colburn, Ind. Eng. Chem. 34 (1942) 581: both constants from one azeotropic point,
+    # here ethanol (1) / benzene (2), x1 = 0.448 at 341.0 K and 101.325 kPa (Horsley 1973, from
+    # memory); the constants then hold at that temperature.
+    lines, T, P, x1 = (ETHANOL, BENZENE), 341.0, 101.325, 0.448
+    first, second = (float(np.log(P) - line.ln_kPa(T)) for line in lines)
+    x2 = 1.0 - x1
+    A12 = first * (1.0 + x2 * second / (x1 * first)) ** 2
+    A21 = second * (1.0 + x1 * first / (x2 * second)) ** 2
+    model = correlative_model("van-laar", "a", [[[0.0, A12], [A21, 0.0]]])
+    assert model.ln_gamma(T, [x1, x2]) == pytest.approx([first, second], abs=1e-12)
+    (found,) = azeotropes(System(model, lines), pressure_kPa=P)
+    assert found.mole_fractions[0] == pytest.approx(x1, abs=1e-8)
+    assert found.temperature_K == pytest.approx(T, abs=1e-8)
+    # Tables of van Laar constants for this pair lie near 1.9 and 1.4 (from memory): a loose check
+    # that neither sign nor order is wrong.
+    assert (pytest.approx(1.9, abs=0.3), pytest.approx(1.4, abs=0.3)) == (A12, A21)
