@@ -97,6 +97,9 @@ def drawn_ln_alpha(
         temperatures = np.full(len(GRID), temperature_K)
     else:
         temperatures = _boiling(system, liquid, pressure_kPa or np.nan)
+        if not np.isfinite(temperatures).all():
+            unknown = np.full((len(drawn.shift), len(GRID)), np.nan)
+            return unknown, unknown
     ln_volatility = drawn.models.ln_gamma(temperatures, liquid)
     ln_volatility = ln_volatility + system.ln_saturation(temperatures) + drawn.shift[:, None, :]
     slopes = system.ln_volatility_slope(temperatures, liquid)
@@ -135,11 +138,16 @@ def nearest_to_azeotrope(ln_alpha: FloatArray) -> FloatArray:
 
 
 def _boiling(system: System, liquid: FloatArray, pressure_kPa: float) -> FloatArray:
-    """Boiling temperatures of the prediction itself, gaps filled from their neighbours."""
+    """Boiling temperatures of the prediction itself, gaps filled from their neighbours.
+
+    NaN where no liquid between the two boils at the pressure: then no draw has an azeotrope.
+    """
     from groups.equilibrium import bubble_temperature
 
     found = bubble_temperature(system, pressure_kPa, liquid).temperature_K
     known = np.isfinite(found)
+    if not known.any():
+        return found
     return np.interp(np.arange(len(found)), np.flatnonzero(known), found[known])
 
 

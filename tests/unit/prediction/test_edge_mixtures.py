@@ -12,6 +12,7 @@ from groups.prediction import (
     azeotropes,
     bubble_point,
     dew_point,
+    diagram,
     flash,
     infinite_dilution,
     liquid_splits,
@@ -220,3 +221,9 @@ def test_a_component_made_twice_is_one_and_the_same_answer():
         pressure_kPa=ONE_ATM,
     )
     assert two.temperature_K == pytest.approx(one.temperature_K, abs=1e-9)
+
+
+def test_a_diagram_whose_inner_liquids_never_boil_still_answers():
+    # Nitrogen is above its critical temperature (126 K, from memory) wherever benzene is a liquid.
+    answer = diagram("Txy", mixture("c1ccccc1", "N#N"), pressure_kPa=0.002, method="psrk")
+    assert answer.azeotrope_chance is None or answer.azeotrope_chance.probability == 0.0
