@@ -19,6 +19,9 @@ from groups.equilibrium.two_liquids import two_liquids
 
 TOLERANCE = 1e-10
 MAX_ITERATIONS = 40
+#: A search whose gap is still this wide after these iterations wanders.
+PATIENCE = 15
+WANDERING = 0.1
 #: Amounts below this mean that the point runs to an edge or a phase vanishes.
 EDGE = 1e-13
 
@@ -56,10 +59,12 @@ def heterogeneous_azeotrope(
     share = liquids.first_fraction
     amounts = np.stack([share * liquids.first, (1.0 - share) * liquids.second])
     T, ln_P = temperature_K, float(np.log(pressure_kPa))
-    for _ in range(MAX_ITERATIONS):
+    for iteration in range(MAX_ITERATIONS):
         gap = _gap(system, amounts, T, ln_P)
         if np.abs(gap).max() <= TOLERANCE:
             return _checked(system, TwoLiquidAzeotrope(amounts, T, float(np.exp(ln_P))))
+        if iteration >= PATIENCE and np.abs(gap).max() > WANDERING:
+            return None
         taken = _step(system, amounts, T, gap, condition)
         if taken is None:
             return None

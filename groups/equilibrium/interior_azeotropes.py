@@ -7,7 +7,7 @@ import numpy as np
 from groups.arrays import FloatArray
 from groups.equilibrium.azeotrope import Azeotrope, homogeneous_kind, kind_of
 from groups.equilibrium.azeotrope_index import balanced
-from groups.equilibrium.azeotrope_newton import azeotrope_roots
+from groups.equilibrium.azeotrope_newton import AzeotropeRoots, azeotrope_roots
 from groups.equilibrium.boiling_curve import Condition
 from groups.equilibrium.heterogeneous import (
     TwoLiquidAzeotrope,
@@ -30,6 +30,8 @@ INSIDE = 1e-9
 #: Splitting liquids of a further round from which a heterogeneous azeotrope is sought.
 MOST_SPLITTING = 8
 STEPS_INWARD = (0.01, 0.1, 0.3)
+#: Searches for a heterogeneous azeotrope in one face; each costs some twenty milliseconds.
+MOST_ATTEMPTS = 8
 
 
 def interior_azeotropes(
@@ -100,30 +102,35 @@ def _search(
         boiling.pressure_kPa[good],
         fixed_pressure=condition.pressure_kPa is not None,
     )
-    keep = np.flatnonzero(roots.found & (roots.mole_fractions > INSIDE).all(axis=1))
+    found, splitting = _sorted_out(system, roots)
+    starts_inside = _splitting_starts(system, boiling) if thorough else []
+    for x, T, P in [*splitting, *_hetero_starts(system, known), *starts_inside][:MOST_ATTEMPTS]:
+        if any(old.heterogeneous for old in found):
+            break  # two of one face are not known; the index would tell
+        two = heterogeneous_azeotrope(system, condition, x, T, P)
+        if two is not None:
+            found.append(_two_liquid(system, two))
+    return found
+
+
+def _sorted_out(
+    system: System, roots: AzeotropeRoots
+) -> tuple[list[Azeotrope], list[tuple[FloatArray, float, float]]]:
+    """Different azeotropes inside whose liquid is stable, and places where it would split."""
     found: list[Azeotrope] = []
-    splitting = _hetero_starts(system, known)
-    for k in keep:
-        x, T, P = (
-            roots.mole_fractions[k],
-            float(roots.temperature_K[k]),
-            float(roots.pressure_kPa[k]),
-        )
+    splitting: list[tuple[FloatArray, float, float]] = []
+    everything = tuple(range(system.n_components))
+    for k in np.flatnonzero(roots.found & (roots.mole_fractions > INSIDE).all(axis=1)):
+        x = roots.mole_fractions[k]
+        T, P = float(roots.temperature_K[k]), float(roots.pressure_kPa[k])
         if _listed(x, found) or any(np.abs(x - s[0]).max() < SAME for s in splitting):
             continue
         if stability(system.activity, T, x).stable[0]:
             kind = homogeneous_kind(system, T, x)
-            everything = tuple(range(system.n_components))
             found.append(Azeotrope(everything, x, T, P, kind, True, (x,)))
         else:
             splitting.append((x, T, P))
-    if thorough:
-        splitting.extend(_splitting_starts(system, boiling))
-    for x, T, P in splitting:
-        two = heterogeneous_azeotrope(system, condition, x, T, P)
-        if two is not None and not _listed(two.amounts.sum(axis=0), found):
-            found.append(_two_liquid(system, two))
-    return found
+    return found, splitting
 
 
 def _hetero_starts(system: System, known: list[Azeotrope]) -> list[tuple[FloatArray, float, float]]:
