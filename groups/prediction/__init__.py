@@ -19,8 +19,9 @@ from groups.prediction.component import Component
 from groups.prediction.diagrams import diagram
 from groups.prediction.flashes import flash
 from groups.prediction.infinite_dilution import infinite_dilution
-from groups.prediction.measurement_plan import measurement_plan, ranking_plan
+from groups.prediction.measurement_plan import measurement_plan
 from groups.prediction.phase_points import bubble_point, dew_point
+from groups.prediction.ranking_plan import ranking_plan
 from groups.prediction.special_points import azeotropes, liquid_splits
 
 __all__ = [
