@@ -13,6 +13,7 @@ from dataclasses import dataclass
 from functools import cache
 from pathlib import Path
 
+import matplotlib
 import numpy as np
 from matplotlib.backends.backend_agg import FigureCanvasAgg
 from matplotlib.figure import Figure
@@ -20,11 +21,10 @@ from matplotlib.figure import Figure
 from groups.arrays import BoolArray, IntArray
 from groups.confidence.calibration.crossval import Held, cross_validate
 from groups.confidence.calibration.features import TABLE_FEATURES
-from groups.confidence.confidence import grade_of_half_width
 from groups.confidence.calibration.open_set import OpenSet, group_folds, read_open_set
 from groups.confidence.calibration.training import Training, training
 from groups.confidence.calibration.traits import traits
-from groups.confidence.confidence import GRADES
+from groups.confidence.confidence import GRADES, grade_of_half_width
 from tests.bench.open_data import OPEN_DATA
 
 FOLDS = ("solvent or aqueous solute", "solvent", "solute")
@@ -89,32 +89,56 @@ def errors_by_grade(result: Held) -> dict[str, tuple[float, float]]:
     }
 
 
+WIDEST_SHOWN = 2.5
+BLUE = "#1f5fa8"
+
+
 def write_figures(folder: Path) -> None:
     """Reliability diagram and histogram of the widths."""
     folder.mkdir(parents=True, exist_ok=True)
+    _save(reliability_figure(held(FOLDS[0])), folder / "reliability")
+    _save(width_figure(held(FOLDS[0])), folder / "widths")
+
+
+def reliability_figure(result: Held) -> Figure:
+    """Share of measurements inside against the stated probability."""
     figure = Figure(figsize=(4.5, 4.5), layout="constrained")
-    result = held(FOLDS[0])
     axes = figure.add_subplot()
-    axes.plot([0, 1], [0, 1], color="0.6", linewidth=1, label="perfect")
+    axes.plot([0, 1], [0, 1], color="0.5", linewidth=1, linestyle="--", label="as stated")
     share = result.inside.mean(axis=1)
-    axes.plot(result.levels, share, "o-", color="#1f5fa8", label="solvents and solutes unseen")
-    axes.set(xlabel="stated probability", ylabel="share of measurements inside", aspect="equal")
-    axes.legend(frameon=False)
-    _save(figure, folder / "reliability")
+    axes.plot(result.levels, share, "o-", color=BLUE, label="measured, solvents and solutes unseen")
+    axes.set(xlabel="Stated probability", ylabel="Share of measurements inside", aspect="equal")
+    axes.set(xlim=(0, 1), ylim=(0, 1))
+    axes.grid(color="0.88", linewidth=0.6)
+    axes.legend(frameon=False, loc="upper left")
+    return figure
+
+
+def width_figure(result: Held) -> Figure:
+    """How many measurements have which width."""
     figure = Figure(figsize=(5.5, 3.5), layout="constrained")
     axes = figure.add_subplot()
-    axes.hist(np.minimum(result.half_width, 2.5), bins=50, color="#1f5fa8")
+    shown = np.minimum(result.half_width, WIDEST_SHOWN)
+    axes.hist(shown, bins=50, range=(0.0, WIDEST_SHOWN), color=BLUE)
     constant = float(np.median(result.constant_upper - result.constant_lower)) / 2.0
-    axes.axvline(constant, color="0.3", linestyle="--", label="one width for all")
-    axes.set(xlabel="half-width of the 90 % interval of ln γ∞", ylabel="measurements")
+    axes.axvline(
+        constant, color="black", linestyle="--", label=f"one width for all, {constant:.2f}"
+    )
+    middle = float(np.median(result.half_width))
+    axes.axvline(middle, color="black", linestyle=":", label=f"median, {middle:.2f}")
+    ticks = np.arange(0.0, WIDEST_SHOWN + 0.1, 0.5)
+    axes.set_xticks(ticks, [*(f"{tick:.1f}" for tick in ticks[:-1]), f"≥ {WIDEST_SHOWN}"])
+    axes.set(xlabel="Half-width of the 90 % interval of ln γ∞", ylabel="Measurements")
     axes.legend(frameon=False)
-    _save(figure, folder / "widths")
+    return figure
 
 
 def _save(figure: Figure, path: Path) -> None:
+    """PNG and SVG; the same numbers give the same bytes."""
     FigureCanvasAgg(figure)
-    for ending in ("png", "svg"):
-        figure.savefig(path.with_suffix(f".{ending}"), dpi=150)
+    figure.savefig(path.with_suffix(".png"), dpi=150)
+    with matplotlib.rc_context({"svg.hashsalt": "mixwright"}):
+        figure.savefig(path.with_suffix(".svg"), metadata={"Date": None})
 
 
 def main() -> None:
