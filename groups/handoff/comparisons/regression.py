@@ -18,6 +18,7 @@ from groups.handoff.fits.pair import correlation_of, pair_covariance, parameters
 from groups.handoff.fits.starts import lattice_ln_gamma, starts
 
 MOST_FOLDS = 10
+FOLD_EVALUATIONS = 25  # from the solution of all points it is never far
 #: Central differences of hE over the parameters, which are of order one: error of order 1e-10.
 _STEP = 1e-5
 #: A span of temperature below which two coefficients for each interaction mean nothing.
@@ -164,9 +165,16 @@ def _best_form(
         if how.n_parameters >= N:
             break
         found = solve(_PointResiduals(how, seen, np.arange(N)), _starts(how, points, seen))
+        if how.ran_away(found.parameters, points.temperatures_K):
+            continue
         score = akaike(2.0 * found.cost, N, how.n_parameters)
         if best is None or score < best[0]:
             best = score, how, found
+    if best is None and how.n_parameters < N:
+        raise FitRefusedError(
+            f"The parameters of {name} run away without end: these points do not fix them.",
+            cure="Give more points or better ones, or take another equation.",
+        )
     if best is None:
         raise TooFewPointsError(
             f"{name} in the form '{how.form}' has {how.n_parameters} parameters, and the points "
@@ -288,8 +296,10 @@ def _cross_validated(
         if len(kept) <= how.n_parameters:
             return float("nan"), 0
         try:
-            again = solve(_PointResiduals(how, seen, kept), [found.parameters])
+            again = solve(_PointResiduals(how, seen, kept), [found.parameters], FOLD_EVALUATIONS)
         except ConvergenceError:
+            return float("nan"), 0
+        if how.ran_away(again.parameters, seen.temperature_K):
             return float("nan"), 0
         values, _ = _PointResiduals(how, seen, left)(again.parameters)
         total, count = total + float((values**2).sum()), count + len(left)

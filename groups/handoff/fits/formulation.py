@@ -27,6 +27,10 @@ liquid is not one of theirs, and such a fit is marked.
 """
 
 
+LARGEST_INTERACTION = 40.0
+"""|tau|, |ln tau|, |ln Lambda| or |A| beyond which a fit has run away: exp(40) is 2e17."""
+
+
 @dataclass(frozen=True, slots=True)
 class PairConstants:
     """What an equation needs of the two components besides parameters.
@@ -103,6 +107,12 @@ class Formulation:
         """u of shape (t, 2, 2)."""
         c = self.coefficients(p)
         return self.offset + np.tensordot(basis(self.form, temperature_K), c, 1)
+
+    def ran_away(self, p: FloatArray, temperature_K: FloatArray) -> bool:
+        """True where an interaction has left all bounds of sense at one of the temperatures."""
+        with np.errstate(all="ignore"):
+            u = self.interactions(p, temperature_K) - self.offset
+        return not bool((np.abs(u) < LARGEST_INTERACTION).all())
 
     def start(self, u12: float, u21: float, alpha: float, temperature_K: FloatArray) -> FloatArray:
         """p of interactions that are, as nearly as the form allows, constant over temperature."""

@@ -13,7 +13,7 @@ Residuals = Callable[[FloatArray], tuple[FloatArray, FloatArray]]
 """From the parameters (P,) to the weighted residuals (N,) and their derivatives (N, P)."""
 
 TOLERANCE = 1e-10
-MOST_EVALUATIONS = 200
+MOST_EVALUATIONS = 80
 HUGE = 1e6
 """Residuals beyond this, or not finite, are held at it: a step far into nonsense must cost much,
 not break the solver."""
@@ -30,6 +30,8 @@ class Solution:
         Half the sum of squares.
     residuals : FloatArray of shape (N,)
     jacobian : FloatArray of shape (N, P)
+    converged : bool
+        False where the solver stopped at its limit of evaluations.
     starts : int
         How many starts were tried.
     agreeing : int
@@ -40,6 +42,7 @@ class Solution:
     cost: float
     residuals: FloatArray
     jacobian: FloatArray
+    converged: bool
     starts: int
     agreeing: int
 
@@ -63,7 +66,11 @@ class Solution:
         return inverse
 
 
-def solve(residuals: Residuals, starts: Sequence[FloatArray]) -> Solution:
+def solve(
+    residuals: Residuals,
+    starts: Sequence[FloatArray],
+    most_evaluations: int = MOST_EVALUATIONS,
+) -> Solution:
     """Minimise the sum of squares from each start and keep the best.
 
     Parameters
@@ -72,6 +79,8 @@ def solve(residuals: Residuals, starts: Sequence[FloatArray]) -> Solution:
         Weighted residuals and their derivatives.
     starts : sequence of FloatArray of shape (P,)
         At least one.
+    most_evaluations : int
+        From each start.
 
     Returns
     -------
@@ -87,7 +96,7 @@ def solve(residuals: Residuals, starts: Sequence[FloatArray]) -> Solution:
     Levenberg-Marquardt as in MINPACK (More, 1978), through `scipy.optimize.least_squares`.
     """
     memory = _Memory(residuals)
-    found: list[tuple[float, FloatArray]] = []
+    found: list[tuple[float, FloatArray, bool]] = []
     for start in starts:
         arrived = least_squares(
             memory.values,
@@ -97,20 +106,20 @@ def solve(residuals: Residuals, starts: Sequence[FloatArray]) -> Solution:
             xtol=TOLERANCE,
             ftol=TOLERANCE,
             gtol=TOLERANCE,
-            max_nfev=MOST_EVALUATIONS,
+            max_nfev=most_evaluations,
         )
         if np.isfinite(arrived.cost) and arrived.status >= 0:
-            found.append((float(arrived.cost), np.asarray(arrived.x)))
+            found.append((float(arrived.cost), np.asarray(arrived.x), arrived.status > 0))
     if not found:
         raise ConvergenceError(
             "No start of the fit arrived at finite residuals.",
-            iterations=MOST_EVALUATIONS * len(starts),
+            iterations=most_evaluations * len(starts),
             residual=float("nan"),
         )
-    cost, best = min(found, key=lambda one: one[0])
-    agreeing = sum(c <= cost * (1.0 + 1e-6) + 1e-12 for c, _ in found)
+    cost, best, converged = min(found, key=lambda one: one[0])
+    agreeing = sum(c <= cost * (1.0 + 1e-6) + 1e-12 for c, _, _ in found)
     values, jacobian = memory.both(best)
-    return Solution(best, cost, values, jacobian, len(starts), agreeing)
+    return Solution(best, cost, values, jacobian, converged, len(starts), agreeing)
 
 
 class _Memory:

@@ -77,10 +77,17 @@ def fit_pair(
     refuse_impossible(name, target, predicted)
     how = formulation(name, form, target.temperature_K, alpha=alpha, constants=constants)
     found = solve(_Residuals(how, target), _starts(how, target))
+    if how.ran_away(found.parameters, target.temperature_K):
+        raise FitRefusedError(
+            f"The parameters of {name} run away without end: the equation has no minimum for this "
+            "prediction in this form.",
+            cure="Take another equation, or a form with fewer parameters.",
+            field="model",
+        )
     model = how.model(found.parameters)
     change = effects(predicted, model, target, boiling)
     residual = _residual(found, how, target)
-    notes = [*effect_notes(change), *_notes(how, found.parameters, residual, target)]
+    notes = [*effect_notes(change), *_notes(how, found, residual, target)]
     covariance = pair_covariance(how, found, independent=False)
     return PairFit(
         name,
@@ -184,9 +191,18 @@ def _residual(found: Solution, how: Formulation, target: PairTarget) -> FitResid
 
 
 def _notes(
-    how: Formulation, p: FloatArray, residual: FitResidual, target: PairTarget
+    how: Formulation, found: Solution, residual: FitResidual, target: PairTarget
 ) -> list[FitNote]:
-    notes = []
+    notes, p = [], found.parameters
+    if not found.converged:
+        notes.append(
+            FitNote(
+                "not_converged",
+                "The fit stopped at its limit of steps: other parameters describe the prediction "
+                "nearly as well, and these are one choice among them.",
+                False,
+            )
+        )
     if residual.rms > POOR_RMS or residual.weighted_rms > POOR_WEIGHTED_RMS:
         notes.append(
             FitNote(

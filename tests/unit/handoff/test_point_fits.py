@@ -164,3 +164,21 @@ def test_forms_follow_the_span_of_temperature():
         records(nrtl(*TRUE_TAU)) + records(nrtl(*TRUE_TAU), temperature_K=340.0), MASSES
     )
     assert automatic_forms(two) == ("b/T", "a+b/T")
+
+
+def test_points_that_fix_nothing_are_refused_and_not_run_after():
+    # Activity coefficients of nonsense at both ends and a middle that contradicts them.
+    rows = [
+        {"temperature": 300.0, "gamma_inf_1": 1e-4},
+        {"temperature": 300.0, "gamma_inf_2": 1e6},
+        {"temperature": 300.0, "gamma_1": 1e5, "x1": 0.5},
+    ]
+    points, seen = seen_of(rows, None)
+    for name in ("nrtl", "wilson"):
+        try:
+            fit = fit_points(name, ["a"], points, seen)
+        except FitRefusedError:
+            continue
+        u = fit.model.interactions.values(np.array([300.0]))
+        assert np.abs(u).max() < 40.0
+        assert fit.weighted_rms > 10.0

@@ -23,7 +23,7 @@ def evaluated(text: str, numbers: dict[str, float], T: float) -> float:
         names["tau"] = 1.0 - T / names["Tc"]
     if "x =" in right:
         names["x"] = max(0.0, (T - names["T0"]) / names["Tc"])
-    value = eval(formula.replace(") (", ") * ("), {}, _with_products(names, formula))
+    value = eval(formula.replace(") (", ") * ("), {}, names)
     if left == "ln(P/Pc)":
         return float(value + np.log(names["Pc"]))
     return float(value * np.log(10.0) - np.log(1000.0) if left == "log10(P/Pa)" else value)
