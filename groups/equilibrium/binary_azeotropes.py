@@ -9,6 +9,7 @@ the heterogeneous azeotrope.
 import numpy as np
 from scipy.optimize import brentq
 
+from groups.equilibrium.activity_curve import fractions
 from groups.equilibrium.azeotrope import Azeotrope, Kind, homogeneous_kind
 from groups.equilibrium.azeotrope_brackets import Brackets, brackets, near_misses, places
 from groups.equilibrium.azeotrope_newton import (
@@ -17,7 +18,6 @@ from groups.equilibrium.azeotrope_newton import (
     azeotrope_roots,
     fugacity_gap,
 )
-from groups.equilibrium.binary_split import fractions
 from groups.equilibrium.boiling_curve import BoilingCurve, Condition
 from groups.equilibrium.conditions import HIGHEST_K, LOWEST_K
 from groups.equilibrium.stability import stability

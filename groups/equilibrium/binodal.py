@@ -22,18 +22,11 @@ from groups.equilibrium.plait_point import plait_point
 from groups.equilibrium.stability import ZERO_DISTANCE
 from groups.equilibrium.subset import SubsetLiquid
 from groups.equilibrium.system import LiquidModel
+from groups.equilibrium.tie_line_sweep import Swept, island, near, on_line, sweep
 from groups.errors import OutOfRangeError, ShapeError
 
-#: Step between the middles of neighbouring tie lines while a region is followed, and its least.
-STEP = 0.04
-SMALLEST_STEP = 2e-4
-MOST_STEPS = 300
-#: A tie line shorter than this is followed no further: the plait point is near.
-SHORT = 0.02
 #: Tangent-plane distance below which a plait point is no stable one.
 FLAT_DISTANCE = 1e-6
-#: A mole fraction below this in the middle of a tie line: the edge of the triangle is reached.
-EDGE = 1e-4
 MOST_TIE_LINES = 1000
 #: Parts along an edge of the lattice on which regions that touch no edge are looked for.
 LATTICE = 12
@@ -68,15 +61,6 @@ class TernaryBinodal:
     temperature_K: float
     regions: tuple[TwoLiquidRegion, ...]
     triangles: tuple[FloatArray, ...]
-
-
-@dataclass(slots=True)
-class _Swept:
-    """Tie lines in order, each (2, 3), and whether the region closes in a plait point there."""
-
-    lines: list[FloatArray]
-    closed: bool
-    closed_at_start: bool = False
 
 
 def ternary_binodal(
@@ -117,14 +101,14 @@ def ternary_binodal(
         raise OutOfRangeError("tie_lines", tie_lines, 2, MOST_TIE_LINES)
     T = float(checked_temperature(temperature_K)[0])
     lattice = _lattice_flash(liquid, T)
-    swept: list[_Swept] = []
+    swept: list[Swept] = []
     for start, inward in _edge_gaps(liquid, T):
-        if not any(_on_line(start, region.lines[-1]) for region in swept):
-            region = _sweep(liquid, T, start, inward)
+        if not any(on_line(start, region.lines[-1]) for region in swept):
+            region = sweep(liquid, T, start, inward)
             swept.append(region)
     for start in lattice[0]:
-        if not any(_near(start, region) for region in swept):
-            swept.append(_island(liquid, T, start))
+        if not any(near(start, region) for region in swept):
+            swept.append(island(liquid, T, start))
     regions: list[TwoLiquidRegion] = []
     for region in swept:
         if len(region.lines) > 1:
@@ -163,92 +147,21 @@ def _same_corners(one: FloatArray, other: FloatArray) -> bool:
     return bool(apart.min(axis=1).max() < 1e-6)
 
 
-def _sweep(liquid: LiquidModel, T: float, start: FloatArray, inward: FloatArray) -> _Swept:
-    """Follow tie lines from one to a plait point or to another edge."""
-    lines, step = [start], STEP
-    ahead = inward - start.mean(axis=0)
-    for _ in range(MOST_STEPS):
-        last = lines[-1]
-        across = last[1] - last[0]
-        length = float(np.abs(across).max())
-        ahead = _beside(across, ahead)
-        # Not further than a share of the length: the region narrows towards a plait point.
-        feed = last.mean(axis=0) + min(step, 0.5 * length) * ahead
-        new = _tie_line(liquid, T, last, feed) if (feed > 0.0).all() else None
-        if new is None:
-            step *= 0.5
-            if step < SMALLEST_STEP:
-                return _Swept(lines, closed=bool((last.mean(axis=0) > 10.0 * EDGE).all()))
-            continue
-        lines.append(new)
-        step = min(STEP, 1.5 * step)
-        if np.abs(new[1] - new[0]).max() < SHORT:
-            return _Swept(lines, closed=True)
-        if new.mean(axis=0).min() < EDGE:
-            return _Swept(lines, closed=False)
-    return _Swept(lines, closed=False)
-
-
-def _island(liquid: LiquidModel, T: float, start: FloatArray) -> _Swept:
-    """A region that touches no edge: swept from within to both sides."""
-    across = start[1] - start[0]
-    side = np.cross(across, np.ones(3))
-    one, other = (_sweep(liquid, T, start, start.mean(axis=0) + s * side) for s in (1.0, -1.0))
-    return _Swept(other.lines[:0:-1] + one.lines, one.closed, other.closed)
-
-
-def _beside(across: FloatArray, ahead: FloatArray) -> FloatArray:
-    """Unit direction in the plane of the triangle, at right angles to a tie line, ahead."""
-    direction = np.cross(across, np.ones(3))
-    direction *= 1.0 if direction @ ahead >= 0.0 else -1.0
-    return np.asarray(direction / np.abs(direction).max())
-
-
-def _tie_line(
-    liquid: LiquidModel, T: float, last: FloatArray, feed: FloatArray
-) -> FloatArray | None:
-    """The tie line (2, 3) through a feed, beginning from a neighbouring one."""
-    share = 0.5 * np.maximum(last, 1e-8)
-    start = share * (feed / share.sum(axis=0))
-    problem = PhaseProblem.of_liquid(liquid, np.array([T]), feed[None])
-    found = settled_amounts(problem, start[None], 2)
-    if not found.settled[0]:
-        return None
-    x = found.amounts[0] / found.amounts[0].sum(axis=1, keepdims=True)
-    # A jump to another gap is no neighbour.
-    return np.asarray(x) if np.abs(x - last).max() < 0.3 else None
-
-
-def _on_line(line: FloatArray, other: FloatArray) -> bool:
-    return bool(np.abs(line - other).max() < 0.02 or np.abs(line - other[::-1]).max() < 0.02)
-
-
-def _near(line: FloatArray, region: _Swept) -> bool:
-    """Whether the middle of a tie line lies close to a region that has been swept."""
-    middle = line.mean(axis=0)
-    for other in region.lines:
-        across = other[1] - other[0]
-        share = np.clip((middle - other[0]) @ across / max(float(across @ across), 1e-12), 0.0, 1.0)
-        if np.abs(other[0] + share * across - middle).max() < 1.5 * STEP:
-            return True
-    return False
-
-
 def _new(parts: list[TwoLiquidRegion], known: list[TwoLiquidRegion]) -> list[TwoLiquidRegion]:
     """The parts that another sweep has not found before."""
-    old = [_Swept(list(np.stack([r.first, r.second], axis=1)), closed=False) for r in known]
+    old = [Swept(list(np.stack([r.first, r.second], axis=1)), closed=False) for r in known]
     return [
         part
         for part in parts
         if not any(
-            _near(np.stack([part.first[k], part.second[k]]), region)
+            near(np.stack([part.first[k], part.second[k]]), region)
             for region in old
             for k in (0, len(part.first) // 2)
         )
     ]
 
 
-def _finished(liquid: LiquidModel, T: float, region: _Swept, count: int) -> list[TwoLiquidRegion]:
+def _finished(liquid: LiquidModel, T: float, region: Swept, count: int) -> list[TwoLiquidRegion]:
     """Evenly spaced tie lines, tested for stability, and the plait points."""
     lines = np.array(region.lines)
     middles = lines.mean(axis=1)

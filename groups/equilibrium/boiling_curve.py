@@ -11,7 +11,8 @@ from dataclasses import dataclass
 import numpy as np
 
 from groups.arrays import BoolArray, FloatArray
-from groups.equilibrium.binary_split import SUSPICIOUS_SLOPE, fractions, may_split
+from groups.equilibrium.activity_curve import SUSPICIOUS_SLOPE, fractions
+from groups.equilibrium.binary_split import may_split
 from groups.equilibrium.boiling_table import BoilingTable, boiling_table
 from groups.equilibrium.bubble import boiling_states, bubble_pressure
 from groups.equilibrium.saturation import rough_boiling_temperatures

@@ -10,6 +10,7 @@ from groups.equilibrium.azeotrope import Azeotrope
 from groups.equilibrium.binary_azeotropes import binary_azeotropes
 from groups.equilibrium.boiling_curve import BoilingCurve, Condition, boiling_curve, inside
 from groups.equilibrium.conditions import checked_pressure, checked_temperature
+from groups.equilibrium.diagram_points import Drawn
 from groups.equilibrium.stability import stability, tested
 from groups.equilibrium.states import States
 from groups.equilibrium.system import System
@@ -17,7 +18,6 @@ from groups.equilibrium.three_phase import ThreePhase
 from groups.errors import InvalidInputError, OutOfRangeError, ShapeError
 
 MOST_POINTS = 100_001
-SPLITS = "the liquid splits in two here, and no three-phase line was found at this condition"
 
 
 @dataclass(frozen=True, slots=True)
@@ -139,8 +139,9 @@ def diagram(
     place[-1] = len(curve.x) - 1  # points crowd at x1 = 1; the pure end is the last
     states = _at(curve.states, place)
     stable = _stable(system, states, curve)
-    drawn = _Drawn.of(states, np.exp(curve.ln_alpha[place]), stable)
-    return drawn.spread(points, outside).over(x, curve.lines).result(kind, x, curve, azeotropes)
+    drawn = Drawn.of(states, np.exp(curve.ln_alpha[place]), stable)
+    drawn = drawn.spread(points, outside).over(x, curve.lines)
+    return _result(drawn, kind, x, curve, azeotropes)
 
 
 def _condition(
@@ -202,99 +203,30 @@ def _stable(system: System, states: States, curve: BoilingCurve) -> BoolArray:
     return stable
 
 
-@dataclass(slots=True)
-class _Drawn:
-    """What is drawn at each point."""
-
-    temperature_K: FloatArray
-    pressure_kPa: FloatArray
-    y1: FloatArray
-    gamma: FloatArray
-    alpha: FloatArray
-    stable: BoolArray
-    converged: BoolArray
-    failure: list[str | None]
-
-    @classmethod
-    def of(cls, states: States, alpha: FloatArray, stable: BoolArray) -> "_Drawn":
-        """Homogeneous states; blank where the liquid splits although no line was found."""
-        drawn = cls(
-            states.temperature_K,
-            states.pressure_kPa,
-            states.vapour[:, 0],
-            states.gamma,
-            alpha,
-            stable,
-            states.converged & stable,
-            list(states.failure),
-        )
-        blank = ~stable
-        if blank.any():
-            for values in (drawn.temperature_K, drawn.pressure_kPa, drawn.y1, drawn.gamma, alpha):
-                values[blank] = np.nan
-            for k in np.flatnonzero(blank):
-                drawn.failure[int(k)] = drawn.failure[int(k)] or SPLITS
-        return drawn
-
-    def spread(self, points: int, outside: IntArray) -> "_Drawn":
-        """Over all points of the diagram; those inside a gap are still empty."""
-        if len(outside) == points:
-            return self
-        failure: list[str | None] = [None] * points
-        for k, place in enumerate(outside.tolist()):
-            failure[place] = self.failure[k]
-        T, P, y1, gamma, alpha = (
-            _spread(values, points, outside)
-            for values in (self.temperature_K, self.pressure_kPa, self.y1, self.gamma, self.alpha)
-        )
-        stable, converged = np.zeros(points, dtype=bool), np.ones(points, dtype=bool)
-        stable[outside], converged[outside] = self.stable, self.converged
-        return _Drawn(T, P, y1, gamma, alpha, stable, converged, failure)
-
-    def over(self, x: FloatArray, lines: tuple[ThreePhase, ...]) -> "_Drawn":
-        """With the three-phase lines in place of liquids that do not exist."""
-        for line in lines:
-            within = inside(line, x)
-            self.temperature_K[within], self.pressure_kPa[within] = (
-                line.temperature_K,
-                line.pressure_kPa,
-            )
-            self.y1[within] = line.vapour[0]
-            ratio = line.vapour / x[within]
-            self.alpha[within] = ratio[:, 0] / ratio[:, 1]
-            self.gamma[within] = line.activity / x[within]
-        return self
-
-    def result(
-        self,
-        kind: Literal["Txy", "Pxy"],
-        x: FloatArray,
-        curve: BoilingCurve,
-        azeotropes: tuple[Azeotrope, ...],
-    ) -> Diagram:
-        """The diagram."""
-        splits = tuple(_range(line) for line in curve.lines)
-        return Diagram(
-            kind,
-            x[:, 0],
-            self.y1,
-            self.temperature_K,
-            self.pressure_kPa,
-            self.gamma,
-            self.alpha,
-            self.stable,
-            self.converged,
-            tuple(self.failure),
-            azeotropes,
-            max(splits, key=lambda r: r.x1_upper - r.x1_lower) if splits else None,
-            splits,
-        )
-
-
-def _spread(values: FloatArray, points: int, outside: IntArray) -> FloatArray:
-    whole = np.full((points, *values.shape[1:]), np.nan)
-    whole[outside] = values
-    return whole
+def _result(
+    drawn: Drawn,
+    kind: Literal["Txy", "Pxy"],
+    x: FloatArray,
+    curve: BoilingCurve,
+    azeotropes: tuple[Azeotrope, ...],
+) -> Diagram:
+    """The diagram."""
+    splits = tuple(_range(line) for line in curve.lines)
+    return Diagram(
+        kind,
+        x[:, 0],
+        drawn.y1,
+        drawn.temperature_K,
+        drawn.pressure_kPa,
+        drawn.gamma,
+        drawn.alpha,
+        drawn.stable,
+        drawn.converged,
+        tuple(drawn.failure),
+        azeotropes,
+        max(splits, key=lambda r: r.x1_upper - r.x1_lower) if splits else None,
+        splits,
+    )
 
 
 def _range(line: ThreePhase) -> SplitRange:

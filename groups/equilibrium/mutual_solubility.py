@@ -13,12 +13,8 @@ import numpy.typing as npt
 from scipy.optimize import brentq, minimize_scalar
 
 from groups.arrays import BoolArray, FloatArray
-from groups.equilibrium.binary_split import (
-    activity_difference_slope,
-    binary_split,
-    fractions,
-    logit_grid,
-)
+from groups.equilibrium.activity_curve import activity_difference_slope, fractions, logit_grid
+from groups.equilibrium.binary_split import binary_split
 from groups.equilibrium.conditions import HIGHEST_K, LOWEST_K, checked_temperature
 from groups.equilibrium.system import LiquidModel
 from groups.errors import OutOfRangeError

@@ -10,14 +10,8 @@ import numpy as np
 from scipy.optimize import brentq
 
 from groups.arrays import FloatArray, IntArray
-from groups.equilibrium.binary_split import (
-    ActivityCurve,
-    BinarySplit,
-    binary_splits,
-    equal_areas,
-    fractions,
-    may_split,
-)
+from groups.equilibrium.activity_curve import ActivityCurve, equal_areas, fractions
+from groups.equilibrium.binary_split import BinarySplit, binary_splits, may_split
 from groups.equilibrium.bubble import MAX_VAPOUR_PASSES, VAPOUR_TOLERANCE
 from groups.equilibrium.saturation import rough_boiling_temperatures
 from groups.equilibrium.states import RESIDUAL_TOLERANCE, log_sum_exp, safe_log

@@ -9,7 +9,7 @@ from dataclasses import dataclass
 import numpy as np
 
 from groups.arrays import FloatArray
-from groups.equilibrium.binary_split import TOLERANCE, activity_difference_slope, fractions
+from groups.equilibrium.activity_curve import TOLERANCE, activity_difference_slope, fractions
 from groups.equilibrium.states import log_sum_exp, safe_log
 from groups.equilibrium.system import System
 
