@@ -10,7 +10,8 @@ Each measurement is the best after those before it. Where none alone shrinks the
 together do (the place of an azeotrope hangs on a difference), the better of the two is taken.
 
 A question that does not vary linearly with the measurements, such as the place of an azeotrope,
-is followed by a number that does, and the width goes back through the ranks of both.
+is read off numbers that do, such as ln alpha along the composition: those are conditioned, and
+the question is asked anew of what is left of them around each of `N_TRUTHS` draws in turn.
 
 Source
 ------
@@ -18,7 +19,7 @@ Linear (Kalman) update: Kalman, J. Basic Eng. 82 (1960) 35. Greedy choice of mea
 common practice, no source. The scatter of good measurements: common practice, no source.
 """
 
-from collections.abc import Sequence
+from collections.abc import Callable, Sequence
 from dataclasses import dataclass
 
 import numpy as np
@@ -33,6 +34,7 @@ BOILING_NOISE = 0.005  # ln P of a pure boiling point, about 0.15 K
 MOST_MEASUREMENTS = 4
 LEAST_GAIN = 0.02  # a measurement that shrinks the width by a smaller share is not worth naming
 WORTH_ALONE = 0.05  # below this share of the width a measurement is looked at with a second one
+N_TRUTHS = 40  # draws that are each taken for the truth once
 USED_UP = 1e-24  # product of variances (ln units) below which nothing but rounding is left
 
 
@@ -45,21 +47,44 @@ class Trial:
     noise: float
 
 
-def greedy_plan(
-    name: str, asked: FloatArray, trials: Sequence[Trial], followed: FloatArray | None = None
-) -> MeasurementPlan:
-    """Take the best measurement, condition everything on it, and go on.
+@dataclass(frozen=True, slots=True)
+class Question:
+    """A number whose doubt is to shrink.
+
+    It is `answer` of `drawn`, (n_samples, n) to (n_samples,); `followed` is the column of `drawn`
+    that says most of it, which chooses the measurements.
+    """
+
+    name: str
+    drawn: FloatArray
+    answer: Callable[[FloatArray], FloatArray]
+    followed: int = 0
+
+
+def linear_question(name: str, values: FloatArray) -> Question:
+    """A question that varies linearly with the measurements.
 
     Parameters
     ----------
     name : str
-        What is asked, for the answer.
-    asked : FloatArray of shape (n_samples,)
-        The number in question, in every draw.
+    values : FloatArray of shape (n_samples,)
+        The number in every draw.
+
+    Returns
+    -------
+    Question
+    """
+    return Question(name, values[:, None], lambda drawn: drawn[:, 0])
+
+
+def greedy_plan(question: Question, trials: Sequence[Trial]) -> MeasurementPlan:
+    """Take the best measurement, condition everything on it, and go on.
+
+    Parameters
+    ----------
+    question : Question
     trials : sequence of Trial
         Read off the same draws.
-    followed : FloatArray of shape (n_samples,), optional
-        A number that goes with the question and is more nearly linear in the measurements.
 
     Returns
     -------
@@ -70,22 +95,22 @@ def greedy_plan(
     ------
     See the module.
     """
-    followed = asked if followed is None else followed
-    width_now = expected_width(asked, followed, 1.0)
-    rest = followed - followed.mean()
+    lower, upper = _interval(question.answer(question.drawn))
+    rest = question.drawn - question.drawn.mean(axis=0)
     columns = np.stack([_readings(*one) for one in enumerate(trials)], axis=1)
     columns = columns - columns.mean(axis=0)
     steps: list[PlannedMeasurement] = []
-    left, worth = 1.0, 0
+    width, worth = upper - lower, 0
     for step in range(min(MOST_MEASUREMENTS, len(trials))):
-        best = _best(rest, columns, last=step + 1 == MOST_MEASUREMENTS)
-        left *= 1.0 - float(_squared_correlation(rest, columns)[best])
-        before = steps[worth - 1].expected_width if worth else width_now
-        steps.append(trials[best].told.after(expected_width(asked, followed, left)))
-        if before - steps[-1].expected_width > LEAST_GAIN * width_now:
-            worth = step + 1
-        rest, columns = _conditioned(rest, columns, best)
-    return MeasurementPlan(name, LEVEL, _interval(asked), tuple(steps[:worth]))
+        followed = rest[:, question.followed]
+        best = _best(followed, columns, last=step + 1 == MOST_MEASUREMENTS)
+        measured = columns[:, best]
+        rest, columns = _conditioned(rest, measured), _conditioned(columns, measured)
+        after = _expected_width(question, rest)
+        steps.append(trials[best].told.after(after))
+        if width - after > LEAST_GAIN * (upper - lower):
+            width, worth = after, step + 1
+    return MeasurementPlan(question.name, LEVEL, (lower, upper), tuple(steps[:worth]))
 
 
 def _readings(place: int, trial: Trial) -> FloatArray:
@@ -102,7 +127,8 @@ def _best(rest: FloatArray, columns: FloatArray, *, last: bool) -> int:
     if last or 1.0 - np.sqrt(1.0 - alone[best]) >= WORTH_ALONE:
         return best
     seconds = [
-        _squared_correlation(*_conditioned(rest, columns, first)) for first in range(len(alone))
+        _squared_correlation(_conditioned(rest, measured), _conditioned(columns, measured))
+        for measured in columns.T
     ]
     left = [(1.0 - alone[k]) * (1.0 - second.max()) for k, second in enumerate(seconds)]
     first = int(np.argmin(left))
@@ -110,14 +136,11 @@ def _best(rest: FloatArray, columns: FloatArray, *, last: bool) -> int:
     return max(pair, key=lambda k: float(alone[k]))
 
 
-def _conditioned(
-    rest: FloatArray, columns: FloatArray, known: int
-) -> tuple[FloatArray, FloatArray]:
-    """Question and measurements once one measurement is known."""
-    measured = columns[:, known]
+def _conditioned(values: FloatArray, measured: FloatArray) -> FloatArray:
+    """What is left of values (n_samples, ...) once a measurement is known."""
     power = max(float(measured @ measured), np.finfo(float).tiny)
-    columns_left: FloatArray = columns - np.outer(measured, measured @ columns) / power
-    return rest - measured * (measured @ rest) / power, columns_left
+    left: FloatArray = values - np.multiply.outer(measured, measured @ values) / power
+    return left
 
 
 def _squared_correlation(rest: FloatArray, columns: FloatArray) -> FloatArray:
@@ -130,32 +153,13 @@ def _squared_correlation(rest: FloatArray, columns: FloatArray) -> FloatArray:
     return np.minimum(squared, 1.0)
 
 
-def _interval(asked: FloatArray) -> tuple[float, float]:
-    lower, upper = np.quantile(asked, [(1.0 - LEVEL) / 2.0, (1.0 + LEVEL) / 2.0])
+def _interval(values: FloatArray) -> tuple[float, float]:
+    lower, upper = np.quantile(values, [(1.0 - LEVEL) / 2.0, (1.0 + LEVEL) / 2.0])
     return float(lower), float(upper)
 
 
-def expected_width(asked: FloatArray, followed: FloatArray, left: float) -> float:
-    """Mean width of the interval of the question with a share of the variance left.
-
-    Parameters
-    ----------
-    asked, followed : FloatArray of shape (n_samples,)
-        As in `greedy_plan`.
-    left : float
-        Share of the variance of `followed`, 0 to 1.
-
-    Returns
-    -------
-    float
-        In the unit of the question. With nothing known it is the width as it stands.
-    """
-    if np.mean((followed - followed.mean()) * (asked - asked.mean())) < 0.0:
-        followed = -followed
-    centre = followed.mean()
-    centres = centre + np.sqrt(1.0 - left) * (followed - centre)
-    reach = np.sqrt(left) * (np.array(_interval(followed)) - centre)
-    if followed is asked:
-        return float(reach[1] - reach[0])
-    ends = np.interp(centres + reach[:, None], np.sort(followed), np.sort(asked))
-    return float(np.mean(ends[1] - ends[0]))
+def _expected_width(question: Question, rest: FloatArray) -> float:
+    """Mean width of the interval around every draw taken for the truth, in the question's unit."""
+    known = (question.drawn - rest)[:N_TRUTHS]  # what the measurements tell of each truth
+    ends = [_interval(question.answer(rest + one)) for one in known]
+    return float(np.mean([upper - lower for lower, upper in ends]))

@@ -28,8 +28,10 @@ from groups.prediction.greedy_plan import (
     BOILING_NOISE,
     DILUTE_NOISE,
     PRESSURE_NOISE,
+    Question,
     Trial,
     greedy_plan,
+    linear_question,
 )
 
 PlanQuestion = Literal["azeotrope", "relative_volatility"]
@@ -77,12 +79,13 @@ def measurement_plan(
     trials = _trials(mixture, drawn, T)
     if question == "azeotrope":
         ln_alpha, _ = drawn_ln_alpha(drawn, mixture.system, (0, 1), temperature_K, pressure_kPa)
-        x1 = nearest_to_azeotrope(ln_alpha)
-        there = int(np.abs(GRID - np.median(x1)).argmin())
-        return greedy_plan("x1 of the azeotrope", x1, trials, followed=ln_alpha[:, there])
+        there = int(np.abs(GRID - np.median(nearest_to_azeotrope(ln_alpha))).argmin())
+        place = Question("x1 of the azeotrope", ln_alpha, nearest_to_azeotrope, there)
+        return greedy_plan(place, trials)
     first, second = (label(component.molecule) for component in components[:2])
     name = f"ln of the relative volatility of {first} over {second}"
-    return greedy_plan(name, _ln_alpha_at(mixture, drawn, T, mole_fractions), trials)
+    ln_ratio = _ln_alpha_at(mixture, drawn, T, mole_fractions)
+    return greedy_plan(linear_question(name, ln_ratio), trials)
 
 
 def _mixture(

@@ -12,7 +12,7 @@ from groups.errors import PredictionError
 from groups.prediction.answers import MeasurementPlan, PlannedMeasurement
 from groups.prediction.bands import N_SAMPLES, SEED
 from groups.prediction.checks import check_components, check_temperatures
-from groups.prediction.greedy_plan import DILUTE_NOISE, Trial, greedy_plan
+from groups.prediction.greedy_plan import DILUTE_NOISE, Trial, greedy_plan, linear_question
 from groups.structure.molecule import Molecule
 
 MOST_SOLVENTS = 200
@@ -72,7 +72,8 @@ def ranking_plan(
         for place in (first, second)
         for k in (0, 1)
     ]
-    return greedy_plan(name, selectivity[:, first] - selectivity[:, second], trials)
+    lead = selectivity[:, first] - selectivity[:, second]
+    return greedy_plan(linear_question(name, lead), trials)
 
 
 def _told(
