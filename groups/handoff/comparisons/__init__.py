@@ -7,6 +7,7 @@ from groups.handoff.comparisons.answers import (
     Mark,
     Recommendation,
 )
+from groups.handoff.comparisons.columns import Units
 from groups.handoff.comparisons.consistency import (
     Consistency,
     ConsistencyTest,
@@ -16,8 +17,9 @@ from groups.handoff.comparisons.consistency import (
 from groups.handoff.comparisons.deviations import REGIONS, Deviation, PointDeviation
 from groups.handoff.comparisons.measurements import Measurements
 from groups.handoff.comparisons.observations import Observations, observations
-from groups.handoff.comparisons.reading import Units, read_csv, read_records
+from groups.handoff.comparisons.reading import read_csv, read_records
 from groups.handoff.comparisons.regression import PointFit, fit_points
+from groups.handoff.comparisons.table import points_to_csv, regions_to_csv
 
 __all__ = [
     "REGIONS",
@@ -38,6 +40,8 @@ __all__ = [
     "consistency",
     "fit_points",
     "observations",
+    "points_to_csv",
     "read_csv",
     "read_records",
+    "regions_to_csv",
 ]

@@ -12,8 +12,9 @@ from xml.etree import ElementTree
 from rdkit import Chem, rdBase
 
 from groups.errors import MeasurementError, StructureError
+from groups.handoff.comparisons.columns import Cell
 from groups.handoff.comparisons.measurements import Measurements
-from groups.handoff.comparisons.reading import Cell, read_records
+from groups.handoff.comparisons.reading import read_records
 from groups.handoff.thermoml.vocabulary import (
     ACTIVITY_COEFFICIENT,
     EXCESS_ENTHALPY,

@@ -110,7 +110,9 @@ def test_margules_constants_of_methyl_ethyl_ketone_and_toluene():
 
 def test_barkers_method_on_diethyl_ketone_and_hexane():
     # Smith, Van Ness & Abbott, 7th ed., example 12.1: A21 = 0.596, A12 = 1.153 from P and x alone.
-    # 0.035: one pressure remembered wrong in its last digit, or other weights, move A21 by that.
+    # Plain least squares of the pressures as remembered gives 0.567 and 1.154, so 0.035 is what the
+    # book's own weighting, or one pressure remembered wrong, leaves open; the straight line through
+    # gE/(x1 x2 RT) gives the printed 0.70 and 1.35.
     points = equal_pressure_weights(isothermal(FALSE_SET, 338.15, vapour=False))
     seen = observations(points, ends(points), IdealModel(2))
     fit = fit_points("margules-3", ["a"], points, seen)

@@ -1,5 +1,7 @@
 """Measured points against every method and fitted equation, and the slips that are seen."""
 
+import csv
+import io
 from dataclasses import dataclass
 
 import numpy as np
@@ -8,6 +10,7 @@ import pytest
 from groups.equilibrium import System, binary_split, bubble_temperature
 from groups.errors import NoVapourPressureError, ShapeError, UnknownMethodError
 from groups.handoff import compare, parameters_of_fit, read_records, to_text
+from groups.handoff.comparisons import points_to_csv, regions_to_csv
 from groups.handoff.comparisons.deviations import REGIONS, in_region
 from groups.handoff.correlations import correlative_model
 from groups.prediction.boiling_mixture import boiling_mixture
@@ -277,3 +280,16 @@ def test_a_fit_that_splits_an_unsplit_liquid_is_marked():
         ACETONE_METHANOL, read_records(rows, MASSES), methods=("ideal",), models=("margules-2",)
     )
     assert "fit_splits" in {mark.code for mark in answer.marks}
+
+
+def test_a_comparison_comes_as_two_tables():
+    answer = compared(isobaric(3), models=("margules-2",))
+    points = list(csv.DictReader(io.StringIO(points_to_csv(answer))))
+    assert len(points) == sum(len(model.points) for model in answer.models)
+    for row in points:
+        gap = float(row["calculated"]) - float(row["measured"])
+        # Eight digits are printed, so a difference of kPa or K holds to 1e-5.
+        assert float(row["difference"]) == pytest.approx(gap, abs=1e-5)
+    regions = list(csv.DictReader(io.StringIO(regions_to_csv(answer))))
+    assert {row["region"] for row in regions} == set(REGIONS)
+    assert {row["model"] for row in regions} == {one.name for one in answer.models}
