@@ -225,7 +225,7 @@ def _notes(
         )
     if how.equation.name == "van-laar":
         u = how.interactions(p, target.temperature_K)
-        if (u[:, 0, 1] * u[:, 1, 0] <= 0.0).any():
+        if (u[:, 0, 1] * u[:, 1, 0] < 0.0).any():
             notes.append(
                 FitNote("pole", "The fitted constants have different signs: there is a pole.", True)
             )

@@ -3,6 +3,7 @@
 import numpy as np
 import pytest
 
+from groups.activity import IdealModel
 from groups.errors import FitRefusedError, OutOfRangeError, ShapeError
 from groups.handoff.correlations import CORRELATIONS, correlative_model
 from groups.handoff.fits import Boiling, PairConstants, fit_grid, fit_pair, pair_target
@@ -207,3 +208,13 @@ def test_bad_standard_deviations_are_refused():
 def test_bad_grids_are_refused(span, temperatures, compositions):
     with pytest.raises(OutOfRangeError):
         fit_grid(span, temperatures, compositions)
+
+
+@pytest.mark.parametrize("name", CORRELATIONS)
+def test_an_ideal_solution_is_fitted_by_an_ideal_one(name):
+    true = IdealModel(2)
+    # UNIQUAC keeps its part for size, which its interactions can only make up for in part.
+    same = PairConstants(np.array([2.0, 2.0]), np.array([1.8, 1.8]))
+    fit = fit_pair(pair_target(true, *grid()), true, name, constants=same)
+    assert fit.residual.rms < 1e-5
+    assert fit.accepted
