@@ -76,16 +76,23 @@ def drawn_around(
         centre = liquid(molecules, "auto", on_missing)
     except PredictionError:
         return None
-    generator = np.random.default_rng(SEED + 1)
+    # Drawn in one order whatever the caller's, so that the order changes no interval.
+    order = np.argsort([molecule.canonical_smiles for molecule in molecules])
+    place = np.argsort(order)
     sigma = np.array([float(line.uncertainty(temperature_K)) for line in lines] or [0.0])
-    shift = sigma * generator.standard_normal((N_SAMPLES, len(molecules)))
+    deviates = np.random.default_rng(SEED + 1).standard_normal((N_SAMPLES, len(molecules)))
+    shift = sigma * deviates[:, place]
     if len(molecules) == 1:
-        nothing = np.zeros((N_SAMPLES, 1, 1))
-        return Drawn(SampledModels(centre.model, nothing), shift)
-    models = sample_models(
-        centre.model, molecules, temperature_K, N_SAMPLES, SEED, on_missing=on_missing
-    )
-    return Drawn(models, shift)
+        return Drawn(SampledModels(centre.model, np.zeros((N_SAMPLES, 1, 1))), shift)
+    errors = sample_models(
+        centre.model,
+        [molecules[k] for k in order],
+        temperature_K,
+        N_SAMPLES,
+        SEED,
+        on_missing=on_missing,
+    ).dilute
+    return Drawn(SampledModels(centre.model, errors[:, place][:, :, place]), shift)
 
 
 def band(samples: FloatArray, own: FloatArray, level: float = LEVEL) -> Band:
