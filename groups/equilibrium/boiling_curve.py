@@ -68,6 +68,9 @@ class BoilingCurve:
     may_split : bool
         False where no liquid of the range can be unstable.
     lines : tuple of ThreePhase
+    trials : array of shape (k, 2)
+        Liquids of the table, in the order of x1; those inside the lines too.
+    table : BoilingTable or None
     """
 
     x: FloatArray
@@ -75,6 +78,8 @@ class BoilingCurve:
     ln_alpha: FloatArray
     may_split: bool
     lines: tuple[ThreePhase, ...]
+    trials: FloatArray
+    table: BoilingTable | None
 
 
 def boiling_curve(system: System, condition: Condition, x1: FloatArray) -> BoilingCurve:
@@ -99,13 +104,14 @@ def boiling_curve(system: System, condition: Condition, x1: FloatArray) -> Boili
         table = boiling_table(system, np.array([condition.pressure_kPa]), x)
     possible = _may_split(system, condition, x, table)
     lines = _lines(system, condition) if possible else ()
+    trials, whole = x, table
     kept = np.ones(len(x), dtype=bool)
     for line in lines:
         kept &= ~inside(line, x)
     if lines:
         x, table = x[kept], None if table is None else table.of(kept)
     states = condition.boil(system, x, table)
-    return BoilingCurve(x, states, _ln_alpha(system, states, x), possible, lines)
+    return BoilingCurve(x, states, _ln_alpha(system, states, x), possible, lines, trials, whole)
 
 
 def inside(line: ThreePhase, x: FloatArray) -> BoolArray:

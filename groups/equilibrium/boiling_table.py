@@ -59,6 +59,12 @@ class BoilingTable:
         usable = np.isfinite(slope) & (np.abs(t) < REACH)
         return 1.0 / inverse, -slope * inverse**2 / self.half, usable
 
+    def ln_gamma_at(self, temperature_K: FloatArray) -> FloatArray:
+        """ln gamma of all liquids at other temperatures (n,), of shape (n, m, n_components)."""
+        t = (1.0 / temperature_K - self.centre) / self.half
+        weights = np.vander(t, PLACES, increasing=True) @ FIT
+        return np.tensordot(weights, self.ln_gamma, axes=1)
+
     def of(self, rows: BoolArray) -> "BoilingTable":
         """The table of some of the liquids."""
         return BoilingTable(

@@ -8,10 +8,10 @@ import numpy as np
 from groups.arrays import BoolArray, FloatArray, IntArray
 from groups.equilibrium.azeotrope import Azeotrope
 from groups.equilibrium.binary_azeotropes import binary_azeotropes
+from groups.equilibrium.binary_stability import stable_binaries
 from groups.equilibrium.boiling_curve import BoilingCurve, Condition, boiling_curve, inside
 from groups.equilibrium.conditions import checked_pressure, checked_temperature
 from groups.equilibrium.diagram_points import Drawn
-from groups.equilibrium.stability import stability, tested
 from groups.equilibrium.states import States
 from groups.equilibrium.system import System
 from groups.equilibrium.three_phase import ThreePhase
@@ -191,15 +191,7 @@ def _stable(system: System, states: States, curve: BoilingCurve) -> BoolArray:
     if not curve.may_split or not len(unknown):
         return stable
     T, x = states.temperature_K[unknown], x[unknown]
-    if not curve.lines:
-        stable[unknown] = stability(system.activity, T, x).stable
-        return stable
-    # Beside the gaps their liquids are the trials that matter.
-    ends = [end for line in curve.lines for end in (line.first, line.second)]
-    trials = np.stack([*ends, *(np.eye(2) * (1.0 - 2e-6) + 1e-6)])
-    starts = np.broadcast_to(trials[:, None, :], (len(trials), *x.shape)).copy()
-    plane = np.log(x) + system.activity.ln_gamma(T, x)
-    stable[unknown] = tested(system.activity, T, x, plane, starts).stable
+    stable[unknown] = stable_binaries(system.activity, T, x, curve.table, curve.trials)
     return stable
 
 

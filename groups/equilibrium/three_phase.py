@@ -15,7 +15,7 @@ from groups.equilibrium.binary_split import BinarySplit, binary_splits, may_spli
 from groups.equilibrium.bubble import MAX_VAPOUR_PASSES, VAPOUR_TOLERANCE
 from groups.equilibrium.saturation import rough_boiling_temperatures
 from groups.equilibrium.states import RESIDUAL_TOLERANCE, log_sum_exp, safe_log
-from groups.equilibrium.system import System
+from groups.equilibrium.system import ROUGH_K, System
 from groups.equilibrium.three_phase_newton import three_phase_line
 
 #: Temperatures at which a miscibility gap is looked for, between the bounds of the boiling range.
@@ -122,18 +122,29 @@ def _only_line(system: System, pressure_kPa: float, lowest_K: float) -> ThreePha
     ends = equal_areas(curve, int(tops[0]), int(bottoms[0])) if len(tops) == 1 else None
     if ends is None:
         return None
-    line = three_phase_line(system, pressure_kPa, np.array(ends), lowest_K)
+    guess = _boiling_guess(system, pressure_kPa, curve, ends)
+    line = three_phase_line(system, pressure_kPa, np.array(ends), guess)
     if line is None or line.temperature_K < lowest_K - ROUGHNESS_K:
         return None
     curve, tops, _ = _gaps(system, line.temperature_K)
     if len(tops) != 1 or not curve.above_tangent(system.activity, float(line.s[0])):
         return None
     x = fractions(line.s)
-    state = _under_vapour(system, BinarySplit(line.temperature_K, x[0], x[1]))
-    if abs(np.log(state.pressure_kPa / pressure_kPa)) > RESIDUAL_TOLERANCE:
-        return None
-    state = replace(state, pressure_kPa=pressure_kPa)
+    activity = np.exp(line.ln_partial - system.ln_saturation(np.array([line.temperature_K]))[0])
+    state = ThreePhase(line.temperature_K, pressure_kPa, x[0], x[1], line.vapour, activity)
     return state if _verified(system, state) else None
+
+
+def _boiling_guess(
+    system: System, pressure_kPa: float, curve: ActivityCurve, ends: tuple[float, float]
+) -> float:
+    """Where both liquids would boil together if their activities stayed as they are."""
+    ln_a = [
+        float(np.interp(end, curve.s, curve.ln_a[:, i])) for i, end in ((0, ends[1]), (1, ends[0]))
+    ]
+    total = log_sum_exp(system.rough_saturation + np.array(ln_a))
+    rising = np.maximum.accumulate(total)
+    return float(1.0 / np.interp(np.log(pressure_kPa), rising, 1.0 / ROUGH_K))
 
 
 def _gaps(system: System, T: float) -> tuple[ActivityCurve, IntArray, IntArray]:

@@ -15,7 +15,7 @@ from groups.equilibrium.system import System
 
 MAX_ITERATIONS = 14
 #: The matrix is evaluated in these first steps and kept after them while the steps shrink.
-FRESH = 3
+FRESH = 2
 #: Longest step in s and in ln T.
 LONGEST_S = 1.5
 LONGEST_LN_T = 0.05
@@ -23,11 +23,12 @@ LONGEST_LN_T = 0.05
 
 @dataclass(frozen=True, slots=True)
 class Line:
-    """Both liquids by s (2,), the temperature in K, and ln of the partial pressures (2,)."""
+    """Both liquids by s (2,), T in K, ln of the partial pressures (2,), and the vapour (2,)."""
 
     s: FloatArray
     temperature_K: float
     ln_partial: FloatArray
+    vapour: FloatArray
 
 
 def three_phase_line(
@@ -54,7 +55,7 @@ def three_phase_line(
         share, total = _vapour(system, terms, both[:1], pressure_kPa)
         gap = np.append(ln_liquid[1] - ln_liquid[0], total - ln_pressure)
         if np.abs(gap).max() <= 0.1 * TOLERANCE:
-            return Line(s, T, terms) if s[1] - s[0] > 1e-6 else None
+            return Line(s, T, terms, share) if s[1] - s[0] > 1e-6 else None
         if step < FRESH:
             matrix = _matrix(system, both, x, s, share)
             if not np.isfinite(matrix).all() or abs(np.linalg.det(matrix)) < 1e-200:
