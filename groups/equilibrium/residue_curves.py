@@ -13,11 +13,8 @@ import numpy as np
 from groups.arrays import FloatArray, IntArray
 from groups.equilibrium.azeotropes import azeotrope_set
 from groups.equilibrium.boiling_curve import Condition
-from groups.equilibrium.bubble import boiling_states
 from groups.equilibrium.conditions import checked_fractions, checked_pressure
 from groups.equilibrium.fixed_points import FixedPoint, fixed_points
-from groups.equilibrium.liquid_trials import nearly_ideal
-from groups.equilibrium.stability import stability
 from groups.equilibrium.stable_bubble import stable_bubble_states
 from groups.equilibrium.system import System
 from groups.errors import ShapeError
@@ -116,19 +113,15 @@ def residue_curves(
     every = np.concatenate([through, through, saddles])
     sense = np.concatenate([-np.ones(m), np.ones(m), senses])
     paths, ends = still.follow(every, sense)
-    curves = []
-    for k in range(m):
-        back, ahead = paths[k][::-1], paths[m + k][1:]
-        curves.append(still.curve(np.concatenate([back, ahead]), ends[k], ends[m + k]))
-    boundaries = []
+    whole = [
+        (np.concatenate([paths[k][::-1], paths[m + k][1:]]), ends[k], ends[m + k]) for k in range(m)
+    ]
     for k, saddle in enumerate(_saddle_indices(points)):
-        path, end = paths[2 * m + k], ends[2 * m + k]
-        whole = np.concatenate([points[saddle].mole_fractions[None], path])
-        if senses[k] < 0.0:
-            boundaries.append(still.curve(whole[::-1], end, saddle))
-        else:
-            boundaries.append(still.curve(whole, saddle, end))
-    return ResidueMap(P, points, tuple(curves), tuple(boundaries), found.index_balanced)
+        path = np.concatenate([points[saddle].mole_fractions[None], paths[2 * m + k]])
+        end = ends[2 * m + k]
+        whole.append((path[::-1], end, saddle) if senses[k] < 0.0 else (path, saddle, end))
+    curves = still.curves(whole)
+    return ResidueMap(P, points, curves[:m], curves[m:], found.index_balanced)
 
 
 def _lattice() -> FloatArray:
@@ -173,18 +166,8 @@ class _Still:
 
     def boil(self, x: FloatArray) -> tuple[FloatArray, FloatArray]:
         """T and vapour over stable liquids; NaN where not found."""
-        P = np.full(len(x), self.P)
-        states = boiling_states(self.system, P, x)
-        T, y = states.temperature_K.copy(), states.vapour.copy()
-        good = np.flatnonzero(states.converged)
-        suspect = good[~nearly_ideal(self.system.activity, T[good])] if len(good) else good
-        if len(suspect):
-            stable = stability(self.system.activity, T[suspect], x[suspect]).stable
-            split = suspect[~stable]
-            if len(split):
-                found = stable_bubble_states(self.system, P[split], x[split])
-                T[split], y[split] = found.temperature_K, found.vapour
-        return T, y
+        found = stable_bubble_states(self.system, np.full(len(x), self.P), x)
+        return found.temperature_K, found.vapour
 
     def follow(
         self, starts: FloatArray, sense: FloatArray
@@ -229,10 +212,16 @@ class _Still:
         near = apart.argmin(axis=1)
         return np.where(apart[np.arange(len(x)), near] < ARRIVED, near, -1)
 
-    def curve(self, path: FloatArray, begins: int | None, ends: int | None) -> ResidueCurve:
-        """The path with its temperatures."""
-        T, _ = self.boil(_inside(path))
-        return ResidueCurve(path, T, begins, ends)
+    def curves(
+        self, paths: list[tuple[FloatArray, int | None, int | None]]
+    ) -> tuple[ResidueCurve, ...]:
+        """The paths with their temperatures, all evaluated at once."""
+        T, _ = self.boil(_inside(np.concatenate([path for path, _, _ in paths])))
+        parts = np.split(T, np.cumsum([len(path) for path, _, _ in paths])[:-1])
+        return tuple(
+            ResidueCurve(path, part, begins, ends)
+            for (path, begins, ends), part in zip(paths, parts, strict=True)
+        )
 
 
 def _inside(x: FloatArray) -> FloatArray:

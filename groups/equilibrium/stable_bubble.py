@@ -24,10 +24,11 @@ from groups.equilibrium.conditions import (
 )
 from groups.equilibrium.flash_result import Flash, Phases, flash_result
 from groups.equilibrium.liquid_trials import nearly_ideal
-from groups.equilibrium.phase_amounts import settled_amounts
+from groups.equilibrium.phase_amounts import ln_fugacities, settled_amounts
 from groups.equilibrium.phase_problem import PhaseProblem
 from groups.equilibrium.phase_search import MOST_LIQUIDS, find_phases
-from groups.equilibrium.stability import stability
+from groups.equilibrium.phase_trials import lowest_phases
+from groups.equilibrium.stability import ZERO_DISTANCE
 from groups.equilibrium.states import States, log_sum_exp, safe_log
 from groups.equilibrium.system import System
 from groups.equilibrium.temperature_root import rising_root
@@ -111,11 +112,13 @@ def stable_bubble_states(system: System, P: FloatArray, x: FloatArray) -> Flash:
 
 def _unstable(system: System, T: FloatArray, x: FloatArray) -> BoolArray:
     """Which liquids split at these temperatures."""
-    unstable = np.zeros(len(x), dtype=bool)
-    rows = np.flatnonzero(~nearly_ideal(system.activity, T)) if len(x) else np.empty(0, np.int64)
-    if len(rows):
-        unstable[rows] = ~stability(system.activity, T[rows], x[rows]).stable
-    return unstable
+    if not len(x):
+        return np.zeros(0, dtype=bool)
+    problem = PhaseProblem.of_liquid(system.activity, T, x)
+    alone = x[:, None]
+    ideal = nearly_ideal(system.activity, T)
+    probe = lowest_phases(problem, alone, ln_fugacities(problem, alone, 1), 1, ideal)
+    return np.asarray(probe.distance < -ZERO_DISTANCE)
 
 
 class _SplitBoiling:
