@@ -36,7 +36,7 @@ def traits(molecule: Molecule) -> Traits:
     """
     polar = polar_groups(molecule.mol)
     return Traits(
-        heavy_atoms=molecule.mol.GetNumHeavyAtoms(),
+        heavy_atoms=max(molecule.mol.GetNumHeavyAtoms(), 1),  # hydrogen, too, has a size
         polar_groups=len(polar),
         donors=sum(group.hydrogen_bond_donor for group in polar),
         crowded=bool(neighbouring_polar_groups(molecule.mol)),
