@@ -1,6 +1,6 @@
 """Random flashes: how many are verified, and is the phase count right?
 
-    python tests/bench/measure_flash_robustness.py [--count 5000] [--first 0] [--check 300]
+    python -m tests.bench.measure_flash_robustness [--count 5000] [--first 0] [--check 300]
                                                    [--record FILE]
 
 Mixtures of 2 to 8 of the open molecules at random temperature, pressure and composition, by four

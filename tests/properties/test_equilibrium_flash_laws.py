@@ -4,7 +4,7 @@ import numpy as np
 import pytest
 
 from groups.activity import activity_model
-from groups.equilibrium import System, flash, flash_at_pressure
+from groups.equilibrium import System, flash, flash_at_pressure, flash_at_temperature
 from groups.pure import vapour_pressure
 from groups.structure.assignment import assign
 from groups.structure.molecule import molecule_from_smiles
@@ -37,6 +37,19 @@ def test_brute_force_finds_no_phase_below_the_answer():
         if found.converged[0]:
             # 1e-6 RT: what a minimiser without derivatives resolves.
             assert lowest_distance(case.system, found, case.feed, case.number) > -1e-6
+
+
+@needs_data
+def test_random_vapour_fractions_are_reached():
+    for case in cases(20, first=40_000):
+        share = float(np.random.default_rng(case.number).uniform(0.0, 1.0))
+        for found in (
+            flash_at_pressure(case.system, case.pressure_kPa, share, case.feed),
+            flash_at_temperature(case.system, case.temperature_K, share, case.feed),
+        ):
+            assert found.converged[0], (case.number, found.failure[0])
+            assert found.vapour_fraction[0] == pytest.approx(share, abs=1e-10)
+            assert found.residual[0] < 1e-8  # the tolerance
 
 
 def test_brute_force_sees_a_phase_that_was_left_out():
