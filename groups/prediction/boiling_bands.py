@@ -14,8 +14,9 @@ from groups.equilibrium.states import log_sum_exp, safe_log
 from groups.equilibrium.system import System
 from groups.prediction.bands import Band, Drawn, band
 
-DEW_PASSES = 40
-DEW_DAMPING = 0.5
+DEW_PASSES = 30
+DEW_LEAST_SHARE = 0.2  # of a mole fraction left by one step, so that none turns negative
+DEW_CLOSE = 1e-7  # change of a mole fraction that ends the iteration
 
 
 @dataclass(frozen=True, slots=True)
@@ -79,6 +80,18 @@ class KnownStates:
     pressure_fixed: bool
 
 
+@dataclass(frozen=True, slots=True)
+class DrawnStates:
+    """The known states as every draw has them; arrays of shape (n_samples, n, ...)."""
+
+    temperature_K: FloatArray
+    pressure_kPa: FloatArray
+    liquid: FloatArray
+    vapour: FloatArray
+    ln_gamma: FloatArray
+    ln_volatility: FloatArray  # ln(gamma Psat), Psat in kPa
+
+
 def bubble_bands(drawn: Drawn, system: System, known: KnownStates) -> BoilingBands:
     """Intervals around bubble points, the liquid given.
 
@@ -93,24 +106,72 @@ def bubble_bands(drawn: Drawn, system: System, known: KnownStates) -> BoilingBan
     -------
     BoilingBands
     """
+    return bands_of(bubble_draws(drawn, system, known), known)
+
+
+def bubble_draws(drawn: Drawn, system: System, known: KnownStates) -> DrawnStates:
+    """Bubble points of every draw, the liquid given.
+
+    Parameters
+    ----------
+    drawn : Drawn
+    system : System
+        Of the prediction itself.
+    known : KnownStates
+
+    Returns
+    -------
+    DrawnStates
+    """
     T, x = known.temperature_K, known.liquid
     ln_gamma = drawn.models.ln_gamma(T, x)
-    ln_volatility = ln_gamma + system.ln_saturation(T) + drawn.shift[:, None, :]
+    ln_volatility = ln_gamma + real_saturation(system, known) + drawn.shift[:, None, :]
     ln_partial = safe_log(x) + ln_volatility
-    slopes = system.ln_volatility_slope(T, x)
+    gamma_slopes = system.activity.ln_gamma_slope(T, x)
+    slopes = gamma_slopes + system.ln_saturation_slope(T)
     ln_P = log_sum_exp(ln_partial)
     if known.pressure_fixed:
         temperatures = _moved(T, ln_P, known, np.sum(known.vapour * slopes, axis=-1))
         step = _straight(T, temperatures)
         ln_partial = ln_partial + slopes * step[..., None]
         ln_volatility = ln_volatility + slopes * step[..., None]
+        ln_gamma = ln_gamma + gamma_slopes * step[..., None]
         pressures = np.broadcast_to(known.pressure_kPa, ln_P.shape)
     else:
         temperatures = np.broadcast_to(T, ln_P.shape)
         pressures = np.exp(ln_P)
     vapour = np.exp(ln_partial - log_sum_exp(ln_partial)[..., None])
     liquid = np.broadcast_to(x, vapour.shape)
-    return _bands(known, temperatures, pressures, (liquid, vapour), ln_gamma, ln_volatility)
+    return DrawnStates(temperatures, pressures, liquid, vapour, ln_gamma, ln_volatility)
+
+
+def dew_curve_band(states: DrawnStates, known: KnownStates) -> Band:
+    """Interval of the dew curve of a binary at the known vapours, from its drawn bubble points.
+
+    Where a vapour lies outside what a draw reaches, the end of the draw's curve stands in.
+
+    Parameters
+    ----------
+    states : DrawnStates
+        Along a whole diagram.
+    known : KnownStates
+
+    Returns
+    -------
+    Band
+        Of the temperature, or of the pressure at given temperature; of shape (n,).
+    """
+    level, own = (
+        (states.temperature_K, known.temperature_K)
+        if known.pressure_fixed
+        else (states.pressure_kPa, known.pressure_kPa)
+    )
+    y1 = states.vapour[..., 0]
+    order = np.argsort(y1, axis=-1)
+    y1, level = np.take_along_axis(y1, order, -1), np.take_along_axis(level, order, -1)
+    at = known.vapour[:, 0]
+    read = np.array([np.interp(at, *curve) for curve in zip(y1, level, strict=True)])
+    return band(read, own)
 
 
 def dew_bands(drawn: Drawn, system: System, known: KnownStates) -> BoilingBands:
@@ -127,27 +188,69 @@ def dew_bands(drawn: Drawn, system: System, known: KnownStates) -> BoilingBands:
     BoilingBands
     """
     T, y = known.temperature_K, known.vapour
-    saturation = system.ln_saturation(T) + drawn.shift[:, None, :]
-    liquid = np.broadcast_to(known.liquid, (len(drawn.shift), *known.liquid.shape)).copy()
-    base = system.activity.ln_gamma(T, known.liquid)
-    for _ in range(DEW_PASSES):
-        ln_gamma = base + drawn.models.errors_each(liquid)
-        ln_share = safe_log(y) - ln_gamma - saturation
-        new = np.exp(ln_share - log_sum_exp(ln_share)[..., None])
-        liquid = DEW_DAMPING * liquid + (1.0 - DEW_DAMPING) * new
-    ln_P = -log_sum_exp(ln_share)
+    saturation = real_saturation(system, known) + drawn.shift[:, None, :]
+    liquid, ln_gamma = _condensed(drawn, system, known, safe_log(y) - saturation)
+    ln_P = -log_sum_exp(safe_log(y) - ln_gamma - saturation)
     ln_volatility = ln_gamma + saturation
-    slopes = system.ln_volatility_slope(T, known.liquid)
+    gamma_slopes = system.activity.ln_gamma_slope(T, known.liquid)
+    slopes = gamma_slopes + system.ln_saturation_slope(T)
     if known.pressure_fixed:
         temperatures = _moved(T, ln_P, known, np.sum(known.liquid * slopes, axis=-1))
         step = _straight(T, temperatures)
         ln_volatility = ln_volatility + slopes * step[..., None]
+        ln_gamma = ln_gamma + gamma_slopes * step[..., None]
         pressures = np.broadcast_to(known.pressure_kPa, ln_P.shape)
     else:
         temperatures = np.broadcast_to(T, ln_P.shape)
         pressures = np.exp(ln_P)
     vapour = np.broadcast_to(y, liquid.shape)
-    return _bands(known, temperatures, pressures, (liquid, vapour), ln_gamma, ln_volatility)
+    states = DrawnStates(temperatures, pressures, liquid, vapour, ln_gamma, ln_volatility)
+    return bands_of(states, known)
+
+
+def real_saturation(system: System, known: KnownStates) -> FloatArray:
+    """ln Psat less the correction of a real vapour at the known states, which is held there.
+
+    Parameters
+    ----------
+    system : System
+    known : KnownStates
+
+    Returns
+    -------
+    array of shape (n, n_components)
+    """
+    saturation = system.ln_saturation(known.temperature_K)
+    if system.vapour.ideal:
+        return saturation
+    correction = system.vapour.ln_correction(known.temperature_K, known.pressure_kPa, known.vapour)
+    held: FloatArray = saturation - correction
+    return held
+
+
+def _condensed(
+    drawn: Drawn, system: System, known: KnownStates, ln_ratio: FloatArray
+) -> tuple[FloatArray, FloatArray]:
+    """The liquid of every draw over the given vapour, and its ln gamma.
+
+    x = G(x), G the normalised y / (gamma Psat), by chord steps: around the known liquid the change
+    of G is -x_i n d ln gamma_i / dn_j (Gibbs-Duhem takes the change of the sum away).
+    """
+    T, x = known.temperature_K, known.liquid
+    slope = system.activity.ln_gamma_mole_derivatives(T, x)
+    chord = np.eye(x.shape[-1]) + x[..., None] * slope
+    liquid = np.broadcast_to(x, ln_ratio.shape).copy()
+    for _ in range(DEW_PASSES):
+        ln_gamma = system.activity.ln_gamma(T, liquid) + drawn.models.errors_each(liquid)
+        ln_share = ln_ratio - ln_gamma
+        target = np.exp(ln_share - log_sum_exp(ln_share)[..., None])
+        step = np.linalg.solve(chord, (target - liquid)[..., None])[..., 0]
+        new = np.maximum(liquid + step, DEW_LEAST_SHARE * liquid)
+        new = new / new.sum(axis=-1, keepdims=True)
+        change, liquid = float(np.abs(new - liquid).max()), new
+        if change < DEW_CLOSE:
+            break
+    return liquid, ln_gamma
 
 
 def _moved(T: FloatArray, ln_P: FloatArray, known: KnownStates, slope: FloatArray) -> FloatArray:
@@ -163,25 +266,30 @@ def _straight(T: FloatArray, moved: FloatArray) -> FloatArray:
     return step
 
 
-def _bands(
-    known: KnownStates,
-    temperatures: FloatArray,
-    pressures: FloatArray,
-    phases: tuple[FloatArray, FloatArray],
-    ln_gamma: FloatArray,
-    ln_volatility: FloatArray,
-) -> BoilingBands:
+def bands_of(states: DrawnStates, known: KnownStates) -> BoilingBands:
+    """Intervals of drawn states around the known ones.
+
+    Parameters
+    ----------
+    states : DrawnStates
+    known : KnownStates
+
+    Returns
+    -------
+    BoilingBands
+    """
+    ln_volatility = states.ln_volatility
     ratio = np.exp(ln_volatility - ln_volatility[..., -1:])
-    ln_k = ln_volatility - np.log(pressures)[..., None]
+    ln_k = ln_volatility - np.log(states.pressure_kPa)[..., None]
     centre = np.median(ln_k, axis=0)
     present = (known.liquid > 1e-290) & (known.vapour > 1e-290)
     np.log(known.vapour / np.where(present, known.liquid, 1.0), out=centre, where=present)
     return BoilingBands(
-        band(temperatures, known.temperature_K),
-        band(pressures, known.pressure_kPa),
-        band(phases[0], known.liquid),
-        band(phases[1], known.vapour),
-        band(np.exp(ln_gamma), known.gamma),
+        band(states.temperature_K, known.temperature_K),
+        band(states.pressure_kPa, known.pressure_kPa),
+        band(states.liquid, known.liquid),
+        band(states.vapour, known.vapour),
+        band(np.exp(states.ln_gamma), known.gamma),
         band(ratio, known.relative_volatility),
         band(ln_k, centre).half_width.max(axis=-1),
     )
