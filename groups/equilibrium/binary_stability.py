@@ -34,17 +34,23 @@ def stable_binaries(
     x : array of shape (m, 2)
         Both fractions positive.
     table : BoilingTable or None
-        Of the trial liquids; without it every liquid takes the tangent-plane test.
+        Of the trial liquids. Not needed where all temperatures are the same; without it every
+        liquid takes the tangent-plane test elsewhere.
     w : array of shape (k, 2)
         Trial liquids of the table, in the order of x1.
     """
     sure = np.zeros(len(x), dtype=bool)
-    if table is not None:
+    one = len(T) > 0 and bool((T[0] == T).all())
+    if table is not None or one:
         plane = np.log(x) + liquid.ln_gamma(T, x)
+        inner = (w > 0.0).all(axis=1)
+        same = liquid.ln_gamma(T[:1], w)[None] if table is None else None
         for low in range(0, len(x), BLOCK):
             part = slice(low, low + BLOCK)
-            inner = (w > 0.0).all(axis=1)
-            ln_a = safe_log(w[inner]) + table.ln_gamma_at(T[part])[:, inner]
+            ln_gamma = same if table is None else table.ln_gamma_at(T[part])
+            assert ln_gamma is not None
+            ln_a = safe_log(w[inner]) + ln_gamma[:, inner]
+            ln_a = np.broadcast_to(ln_a, (len(x[part]), *ln_a.shape[1:]))
             sure[part] = _surely(x[part], plane[part], w[inner], ln_a)
     rows = np.flatnonzero(~sure)
     if len(rows):
