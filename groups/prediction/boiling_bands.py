@@ -14,6 +14,7 @@ from groups.equilibrium.states import log_sum_exp, safe_log
 from groups.equilibrium.system import System
 from groups.prediction.bands import Band, Drawn, band
 
+BOILING_PASSES = 3  # of Newton, on a curve that is all but straight
 DEW_PASSES = 30
 DEW_LEAST_SHARE = 0.2  # of a mole fraction left by one step, so that none turns negative
 DEW_CLOSE = 1e-7  # change of a mole fraction that ends the iteration
@@ -131,7 +132,7 @@ def bubble_draws(drawn: Drawn, system: System, known: KnownStates) -> DrawnState
     slopes = gamma_slopes + system.ln_saturation_slope(T)
     ln_P = log_sum_exp(ln_partial)
     if known.pressure_fixed:
-        temperatures = _moved(T, ln_P, known, np.sum(known.vapour * slopes, axis=-1))
+        temperatures = _boiling(T, ln_partial, slopes, known)
         step = _straight(T, temperatures)
         ln_partial = ln_partial + slopes * step[..., None]
         ln_volatility = ln_volatility + slopes * step[..., None]
@@ -251,6 +252,20 @@ def _condensed(
         if change < DEW_CLOSE:
             break
     return liquid, ln_gamma
+
+
+def _boiling(
+    T: FloatArray, ln_partial: FloatArray, slopes: FloatArray, known: KnownStates
+) -> FloatArray:
+    """Temperatures at which the drawn partial pressures, straight in 1/T, make up the pressure."""
+    temperatures = T
+    for _ in range(BOILING_PASSES):
+        moved = ln_partial + slopes * _straight(T, temperatures)[..., None]
+        ln_P = log_sum_exp(moved)
+        slope = np.sum(np.exp(moved - ln_P[..., None]) * slopes, axis=-1)
+        inverse = 1.0 / temperatures - (np.log(known.pressure_kPa) - ln_P) / (slope * T**2)
+        temperatures = 1.0 / np.clip(inverse, 1.0 / (3.0 * T), 3.0 / T)
+    return temperatures
 
 
 def _moved(T: FloatArray, ln_P: FloatArray, known: KnownStates, slope: FloatArray) -> FloatArray:
