@@ -31,6 +31,7 @@ def balanced(system: System, condition: Condition, azeotropes: list[Azeotrope]) 
     Returns
     -------
     bool
+        False also where the rule cannot be applied: a component without a boiling point here.
 
     Source
     ------
@@ -39,24 +40,28 @@ def balanced(system: System, condition: Condition, azeotropes: list[Azeotrope]) 
     """
     n = system.n_components
     pure = condition.boil(system, np.eye(n))
-    total = 0
+    if not np.isfinite(pure.temperature_K * pure.pressure_kPa).all():
+        return False
+    total = 0.0
     for i in range(n):
         x, T, P = np.eye(n)[i], float(pure.temperature_K[i]), float(pure.pressure_kPa[i])
         ratios = escape(system, x, T, P, x)
-        total += 2 * int(np.prod(np.sign(-ratios[np.arange(n) != i])))
+        total += 2.0 * float(np.prod(np.sign(-ratios[np.arange(n) != i])))
     for azeotrope in azeotropes:
-        total += 2 ** len(azeotrope.components) * _sign(system, azeotrope)
-    return total == (2 if n % 2 else 0)
+        total += 2.0 ** len(azeotrope.components) * _sign(system, azeotrope)
+    return bool(total == (2.0 if n % 2 else 0.0))
 
 
-def _sign(system: System, azeotrope: Azeotrope) -> int:
-    """Sign of the determinant of the flow at an azeotrope."""
+def _sign(system: System, azeotrope: Azeotrope) -> float:
+    """Sign of the determinant of the flow at an azeotrope; NaN where it cannot be told."""
     present = azeotrope.mole_fractions > 0.0
     inner = inner_derivatives(system, azeotrope)
+    if not np.isfinite(inner).all():
+        return float("nan")
     basis = steps_basis(int(present.sum()))
     values = np.linalg.eigvalsh(basis @ inner @ basis.T)
     leaving = outward(system, azeotrope)[~present]
-    return int(np.prod(np.sign(-values)) * np.prod(np.sign(-leaving)))
+    return float(np.prod(np.sign(-values)) * np.prod(np.sign(-leaving)))
 
 
 def outward(system: System, azeotrope: Azeotrope) -> FloatArray:
@@ -90,6 +95,8 @@ def inner_derivatives(system: System, azeotrope: Azeotrope) -> FloatArray:
         return np.asarray(part.activity.ln_gamma_mole_derivatives(T, z[None])[0])
     first, second = (liquid[kept] for liquid in azeotrope.liquids)
     share = liquid_share(azeotrope)
+    if not 0.0 < share < 1.0:
+        return np.full((len(kept), len(kept)), np.nan)  # one of the liquids is all but gone
     amounts = np.stack([share * first, (1.0 - share) * second])
     two = TwoLiquidAzeotrope(amounts, azeotrope.temperature_K, azeotrope.pressure_kPa)
     return convex_derivatives(part, two)
