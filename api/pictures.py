@@ -23,6 +23,7 @@ matplotlib.rcParams["svg.hashsalt"] = "mixwright"  # the same diagram gives the 
 _LIQUID = "#12355b"
 _VAPOUR = "#a6401b"
 _SPLIT = "#5c5c5c"
+_LIQUID_BAND, _VAPOUR_BAND = "#9db8d6", "#eac3b4"  # lightness differs too, for black and white
 
 
 @dataclass(frozen=True, slots=True)
@@ -50,8 +51,10 @@ def diagram_picture(answer: DiagramAnswer, file_format: Literal["svg", "png"]) -
     with _drawing:
         figure = Figure(figsize=(7.2, 6.0), layout="constrained")
         axes = figure.add_subplot()
+        _draw_bands(axes, answer)
         _draw_curves(axes, answer.diagram)
         _draw_azeotropes(axes, answer.diagram)
+        _tell_chance(axes, answer)
         _label(figure, axes, answer)
         return _file(figure, file_format)
 
@@ -69,6 +72,48 @@ def _level(drawn: Diagram) -> FloatArray:
 
 def _level_of(kind: str, found: Azeotrope | SplitRange) -> float:
     return found.temperature_K if kind == "Txy" else found.pressure_kPa
+
+
+def _draw_bands(axes: Axes, answer: DiagramAnswer) -> None:
+    """Where nine of ten drawn mixtures boil and condense: filled, the vapour edged and dotted."""
+    drawn, bands, dew = answer.diagram, answer.bands, answer.dew_band
+    if bands is None or dew is None:
+        return
+    bubble = bands.temperature_K if drawn.kind == "Txy" else bands.pressure_kPa
+    for at, band, colour, hatch, name in (
+        (drawn.y1, dew, _VAPOUR_BAND, "....", "Vapour, 90 % interval"),
+        (drawn.x1, bubble, _LIQUID_BAND, None, "Liquid, 90 % interval"),
+    ):
+        for k, run in enumerate(_runs(drawn.stable & np.isfinite(at) & np.isfinite(band.lower))):
+            axes.fill_between(
+                at[run],
+                band.lower[run],
+                band.upper[run],
+                facecolor=colour,
+                edgecolor=_VAPOUR if hatch else "none",
+                hatch=hatch,
+                linewidth=0.0,
+                alpha=0.45,
+                zorder=1.0,  # behind the curves
+                label=None if k else name,
+            )
+
+
+def _runs(usable: BoolArray) -> list[slice]:
+    """The stretches of neighbouring points that are usable."""
+    edges = np.flatnonzero(np.diff(np.r_[False, usable, False].astype(int)))
+    return [slice(*ends) for ends in zip(edges[::2], edges[1::2], strict=True)]
+
+
+def _tell_chance(axes: Axes, answer: DiagramAnswer) -> None:
+    """The probability of an azeotrope, and where it lies, as a line of the legend."""
+    chance = answer.azeotrope_chance
+    if chance is None:
+        return
+    text = f"Azeotrope: probability {chance.probability:.2f}"
+    if chance.x1 is not None:
+        text += f",\n$x_1$ from {chance.x1.lower:.3f} to {chance.x1.upper:.3f}"
+    axes.plot([], [], " ", label=text)
 
 
 def _draw_curves(axes: Axes, drawn: Diagram) -> None:
@@ -90,11 +135,7 @@ def stable_branches(
 ) -> list[_Branch]:
     """The runs of points that converged over a stable liquid."""
     usable = stable & np.isfinite(y1) & np.isfinite(level)
-    edges = np.flatnonzero(np.diff(np.r_[False, usable, False].astype(int)))
-    return [
-        _Branch(x1[start:stop], y1[start:stop], level[start:stop])
-        for start, stop in zip(edges[::2], edges[1::2], strict=True)
-    ]
+    return [_Branch(x1[run], y1[run], level[run]) for run in _runs(usable)]
 
 
 def _close_curves(axes: Axes, branches: list[_Branch], split: SplitRange, level: float) -> None:
@@ -176,7 +217,9 @@ def _label(figure: Figure, axes: Axes, answer: DiagramAnswer) -> None:
     axes.set_ylabel("Temperature / K" if answer.diagram.kind == "Txy" else "Pressure / kPa")
     axes.grid(color="#d8d8d8", lw=0.6)
     axes.set_axisbelow(True)
-    axes.legend(fontsize=8.5, frameon=True, framealpha=0.92)
+    named = zip(*axes.get_legend_handles_labels(), strict=True)
+    handles, labels = zip(*sorted(named, key=lambda one: "interval" in one[1]), strict=True)
+    axes.legend(handles, labels, fontsize=8.5, frameon=True, framealpha=0.92)
     figure.supxlabel(_footnote(answer), fontsize=7.5, x=0.02, ha="left", parse_math=False)
 
 
@@ -185,8 +228,11 @@ def _name(molecule: Molecule) -> str:
 
 
 def _methods(answer: DiagramAnswer) -> str:
-    used = [use.method for use in answer.methods_used]
-    return " and ".join(used) or answer.method
+    """The method, or how many tables carry `auto` and which of them most."""
+    used = answer.methods_used
+    if len(used) < 2:
+        return used[0].method if used else answer.method
+    return f"{answer.method}: {len(used)} tables, {used[0].method} with {used[0].weight:.0%}"
 
 
 def _fixed(answer: DiagramAnswer) -> str:

@@ -12,7 +12,7 @@ from dataclasses import dataclass
 import numpy as np
 
 from groups.activity.choice import OnMissing
-from groups.arrays import FloatArray
+from groups.arrays import FloatArray, IntArray
 from groups.confidence.calibration import SampledModels, sample_models
 from groups.errors import PredictionError
 from groups.prediction.liquid import liquid
@@ -36,6 +36,41 @@ class Band:
         """Half the distance between the ends."""
         width: FloatArray = (self.upper - self.lower) / 2.0
         return width
+
+    def spread(self, places: IntArray, n_points: int) -> "Band":
+        """The same among n points, NaN at the others.
+
+        Parameters
+        ----------
+        places : array of shape (n,)
+            Where each point belongs.
+        n_points : int
+
+        Returns
+        -------
+        Band
+        """
+        if len(places) == n_points:
+            return self
+        return Band(spread(self.lower, places, n_points), spread(self.upper, places, n_points))
+
+
+def spread(values: FloatArray, places: IntArray, n_points: int) -> FloatArray:
+    """Values at their places among n points, NaN at the others.
+
+    Parameters
+    ----------
+    values : array of shape (n, ...)
+    places : array of shape (n,)
+    n_points : int
+
+    Returns
+    -------
+    array of shape (n_points, ...)
+    """
+    wide = np.full((n_points, *values.shape[1:]), np.nan)
+    wide[places] = values
+    return wide
 
 
 @dataclass(frozen=True, slots=True)

@@ -12,7 +12,7 @@ import numpy as np
 from groups.arrays import FloatArray, IntArray
 from groups.equilibrium.states import log_sum_exp, safe_log
 from groups.equilibrium.system import System
-from groups.prediction.bands import Band, Drawn, band
+from groups.prediction.bands import Band, Drawn, band, spread
 
 BOILING_PASSES = 3  # of Newton, on a curve that is all but straight
 DEW_PASSES = 30
@@ -45,27 +45,15 @@ class BoilingBands:
         -------
         BoilingBands
         """
-        if len(places) == n_points:
-            return self
-
-        def wide(one: Band) -> Band:
-            return Band(_spread(one.lower, places, n_points), _spread(one.upper, places, n_points))
-
         return BoilingBands(
-            wide(self.temperature_K),
-            wide(self.pressure_kPa),
-            wide(self.liquid),
-            wide(self.vapour),
-            wide(self.gamma),
-            wide(self.relative_volatility),
-            _spread(self.ln_k_half_width, places, n_points),
+            self.temperature_K.spread(places, n_points),
+            self.pressure_kPa.spread(places, n_points),
+            self.liquid.spread(places, n_points),
+            self.vapour.spread(places, n_points),
+            self.gamma.spread(places, n_points),
+            self.relative_volatility.spread(places, n_points),
+            spread(self.ln_k_half_width, places, n_points),
         )
-
-
-def _spread(values: FloatArray, places: IntArray, n_points: int) -> FloatArray:
-    wide = np.full((n_points, *values.shape[1:]), np.nan)
-    wide[places] = values
-    return wide
 
 
 @dataclass(frozen=True, slots=True)
@@ -167,12 +155,30 @@ def dew_curve_band(states: DrawnStates, known: KnownStates) -> Band:
         if known.pressure_fixed
         else (states.pressure_kPa, known.pressure_kPa)
     )
-    y1 = states.vapour[..., 0]
-    order = np.argsort(y1, axis=-1)
-    y1, level = np.take_along_axis(y1, order, -1), np.take_along_axis(level, order, -1)
-    at = known.vapour[:, 0]
-    read = np.array([np.interp(at, *curve) for curve in zip(y1, level, strict=True)])
+    read = _first_drops(states.vapour[..., 0], level, known.vapour[:, 0], known.pressure_fixed)
     return band(read, own)
+
+
+def _first_drops(
+    y1: FloatArray, level: FloatArray, at: FloatArray, pressure_fixed: bool
+) -> FloatArray:
+    """Each draw's T or P (n_samples, n) where vapours of fraction `at` begin to condense.
+
+    A curve that turns back, over a liquid that would split, has a vapour more than once: cooled,
+    it condenses at the highest temperature; compressed, at the lowest pressure.
+    """
+    sign = 1.0 if pressure_fixed else -1.0
+    read = np.empty((len(level), len(at)))
+    for k, (y, own) in enumerate(zip(y1, sign * level, strict=True)):
+        left, right = y[:-1, None], y[1:, None]
+        between = (np.minimum(left, right) <= at) & (at <= np.maximum(left, right))
+        gap = np.where(right == left, 1.0, right - left)
+        crossed = own[:-1, None] + (at - left) / gap * (own[1:] - own[:-1])[:, None]
+        outside = np.where(at < y.min(), own[y.argmin()], own[y.argmax()])
+        highest = np.max(np.where(between, crossed, -np.inf), axis=0)
+        read[k] = np.where(between.any(axis=0), highest, outside)
+    found: FloatArray = sign * read
+    return found
 
 
 def dew_bands(drawn: Drawn, system: System, known: KnownStates) -> BoilingBands:

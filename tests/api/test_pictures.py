@@ -1,5 +1,6 @@
 """Pictures of diagrams: well formed, readable in black and white, honest about two liquids."""
 
+import re
 import xml.etree.ElementTree as ElementTree
 
 import numpy as np
@@ -28,9 +29,33 @@ def test_png_is_a_png(service):
     assert response.content.startswith(b"\x89PNG\r\n\x1a\n")
 
 
+def words(picture_of):
+    """What is written in a picture; every text stands beside its outline as a comment."""
+    return " ".join(re.findall(r"<!-- (.*?) -->", picture_of.text))
+
+
 def test_two_liquids_are_hatched_and_one_is_not(service):
-    assert "<pattern" in picture(service, ["CCCCO", "O"]).text
-    assert "<pattern" not in picture(service, ["CCO", "O"]).text
+    two, one = picture(service, ["CCCCO", "O"]), picture(service, ["CCO", "O"])
+    assert "Two liquids, no single one" in words(two)
+    assert "Two liquids" not in words(one)
+    assert two.text.count("<pattern") == one.text.count("<pattern") + 1
+
+
+def test_intervals_are_shaded_and_told_apart_without_colour(service):
+    text = picture(service, ["CCO", "O"])
+    assert "Liquid, 90 % interval" in words(text) and "Vapour, 90 % interval" in words(text)
+    assert text.text.count("<pattern") == 1  # the vapour's is dotted, the liquid's plain
+
+
+def test_the_chance_of_an_azeotrope_stands_in_the_legend(service):
+    body = ATMOSPHERE | {"components": ["CCO", "O"]}
+    chance = service.post("/v1/diagrams", body).json()["azeotrope_chance"]
+    assert f"probability {chance['probability']:.2f}" in words(picture(service, ["CCO", "O"]))
+
+
+def test_an_ideal_solution_has_neither_interval_nor_chance(service):
+    text = words(picture(service, ["CCO", "O"], method="ideal"))
+    assert "interval" not in text and "probability" not in text
 
 
 def test_lines_are_told_apart_without_colour(service):
