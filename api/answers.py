@@ -25,12 +25,14 @@ from api.schemas.equilibrium import (
     LiquidPhase,
     LiquidSplitRange,
     LiquidSplitResponse,
+    Phase,
     PhasePointResponse,
     PointFailure,
     SplitChance,
 )
 from api.schemas.measurement_plan import MeasurementPlanResponse, PlannedMeasurement
 from api.schemas.molecule import MoleculeIdentity
+from api.schemas.prediction import VapourUsed as VapourUsedResponse
 from api.schemas.vapour_pressure import VapourPressureUsed
 from groups import prediction
 from groups.arrays import FloatArray
@@ -40,6 +42,8 @@ from groups.confidence.calibration import TableWeight
 from groups.equilibrium import Azeotrope, SplitRange
 from groups.prediction import answers
 from groups.prediction.bands import Band
+from groups.prediction.phases import PhaseAnswer
+from groups.prediction.vapours import VapourUsed
 from groups.pure import VapourPressure
 from groups.structure.molecule import Molecule
 
@@ -116,6 +120,23 @@ def vapour_pressures(lines: Sequence[VapourPressure]) -> list[VapourPressureUsed
             notes=list(line.notes),
         )
         for line in lines
+    ]
+
+
+def vapour_used(used: VapourUsed) -> VapourUsedResponse:
+    """The vapour behind an answer."""
+    return VapourUsedResponse(kind=used.kind, reason=used.reason)
+
+
+def phases(found: Sequence[PhaseAnswer]) -> list[Phase]:
+    """Liquids and vapour with their amounts."""
+    return [
+        Phase(
+            kind=phase.kind,
+            fraction=phase.fraction,
+            mole_fractions=phase.mole_fractions.tolist(),
+        )
+        for phase in found
     ]
 
 
@@ -243,8 +264,10 @@ def phase_point(answer: answers.PhasePointAnswer) -> PhasePointResponse:
         relative_volatility_lower=_lower(ratio_band),
         relative_volatility_upper=_upper(ratio_band),
         liquid_stable=answer.liquid_stable,
+        phases=phases(answer.phases),
         failure=answer.failure,
         vapour_pressures=vapour_pressures(answer.vapour_pressures),
+        vapour=vapour_used(answer.vapour),
         confidence=confidence(answer.confidence),
         cautions=cautions(),
     )
@@ -297,6 +320,7 @@ def azeotropes(answer: answers.AzeotropeAnswer) -> AzeotropesResponse:
         azeotropes=[azeotrope(found) for found in answer.azeotropes],
         chances=[azeotrope_chance(found) for found in answer.chances],
         vapour_pressures=vapour_pressures(answer.vapour_pressures),
+        vapour=vapour_used(answer.vapour),
         confidence=confidence(answer.confidence),
         cautions=cautions(),
     )
@@ -371,6 +395,7 @@ def diagram(answer: answers.DiagramAnswer) -> DiagramResponse:
         azeotrope_chance=None if chance is None else azeotrope_chance(chance),
         liquid_split=None if drawn.liquid_split is None else split_range(drawn.liquid_split),
         vapour_pressures=vapour_pressures(answer.vapour_pressures),
+        vapour=vapour_used(answer.vapour),
         confidence=confidence(answer.confidence),
         cautions=cautions(),
     )

@@ -103,6 +103,15 @@ def _add_predict(command: argparse.ArgumentParser) -> None:
     command.add_argument(
         "-x", "--fractions", type=float, nargs="+", help="mole fractions, in the order given"
     )
+    command.add_argument(
+        "--vapour-fraction", type=float, help="of a flash, in place of -T or -P: 0 to 1"
+    )
+    command.add_argument(
+        "--vapour",
+        choices=("auto", "ideal", "virial"),
+        default="auto",
+        help="ideal or real vapour (default: real where the mixture needs it)",
+    )
     command.add_argument("--what", choices=WHAT, help="what to predict")
     command.add_argument("--method", default="auto", help="see `mixwright methods`")
     command.add_argument(

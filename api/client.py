@@ -44,6 +44,7 @@ from api.schemas.problem import Problem
 from api.schemas.service import Health, MethodDetail, MethodsResponse, Readiness
 
 Answer = TypeVar("Answer", bound=BaseModel)
+Vapour = Literal["auto", "ideal", "virial"]
 MoleculeLike = str | Mapping[str, object] | MoleculeInput
 """SMILES as text, a mapping as in the HTTP contract, or the model itself."""
 
@@ -155,6 +156,7 @@ class MixwrightClient:
         pressure_kPa: float | None = None,
         method: str = "auto",
         on_missing: OnMissing = "estimate",
+        vapour: Vapour = "auto",
     ) -> PhasePointResponse:
         """Where a liquid begins to boil."""
         request = PointRequest(
@@ -164,6 +166,7 @@ class MixwrightClient:
             pressure_kPa=pressure_kPa,
             method=method,
             on_missing=on_missing,
+            vapour=vapour,
         )
         return self._post("/v1/bubble-point", request, PhasePointResponse)
 
@@ -176,6 +179,7 @@ class MixwrightClient:
         pressure_kPa: float | None = None,
         method: str = "auto",
         on_missing: OnMissing = "estimate",
+        vapour: Vapour = "auto",
     ) -> PhasePointResponse:
         """Where a vapour begins to condense."""
         request = PointRequest(
@@ -185,6 +189,7 @@ class MixwrightClient:
             pressure_kPa=pressure_kPa,
             method=method,
             on_missing=on_missing,
+            vapour=vapour,
         )
         return self._post("/v1/dew-point", request, PhasePointResponse)
 
@@ -193,19 +198,23 @@ class MixwrightClient:
         components: Sequence[MoleculeLike],
         mole_fractions: Sequence[float],
         *,
-        temperature_K: float,
-        pressure_kPa: float,
+        temperature_K: float | None = None,
+        pressure_kPa: float | None = None,
+        vapour_fraction: float | None = None,
         method: str = "auto",
         on_missing: OnMissing = "estimate",
+        vapour: Vapour = "auto",
     ) -> PhasePointResponse:
-        """Liquid and vapour of a feed."""
+        """The phases of a feed; two of temperature, pressure and vapour fraction are given."""
         request = FlashRequest(
             components=_molecules(components),
             mole_fractions=list(mole_fractions),
             temperature_K=temperature_K,
             pressure_kPa=pressure_kPa,
+            vapour_fraction=vapour_fraction,
             method=method,
             on_missing=on_missing,
+            vapour=vapour,
         )
         return self._post("/v1/flash", request, PhasePointResponse)
 
@@ -219,6 +228,7 @@ class MixwrightClient:
         points: int = 101,
         method: str = "auto",
         on_missing: OnMissing = "estimate",
+        vapour: Vapour = "auto",
     ) -> DiagramResponse:
         """A binary diagram."""
         request = DiagramRequest(
@@ -229,6 +239,7 @@ class MixwrightClient:
             points=points,
             method=method,
             on_missing=on_missing,
+            vapour=vapour,
         )
         return self._post("/v1/diagrams", request, DiagramResponse)
 
@@ -240,6 +251,7 @@ class MixwrightClient:
         temperature_K: float | None = None,
         method: str = "auto",
         on_missing: OnMissing = "estimate",
+        vapour: Vapour = "auto",
     ) -> AzeotropesResponse:
         """All azeotropes of a mixture."""
         request = AzeotropesRequest(
@@ -248,6 +260,7 @@ class MixwrightClient:
             temperature_K=temperature_K,
             method=method,
             on_missing=on_missing,
+            vapour=vapour,
         )
         return self._post("/v1/azeotropes", request, AzeotropesResponse)
 

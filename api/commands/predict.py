@@ -38,7 +38,7 @@ def _implied(given: argparse.Namespace, count: int) -> str:
     """What the conditions ask for where the user does not say it."""
     both = given.temperature is not None and given.pressure is not None
     if given.fractions is not None:
-        return "flash" if both else "bubble"
+        return "flash" if both or given.vapour_fraction is not None else "bubble"
     if given.temperature is None and given.pressure is None:
         raise InvalidInputError(
             "Neither a temperature nor a pressure is given.",
@@ -58,6 +58,10 @@ def _conditions(given: argparse.Namespace) -> dict[str, Any]:
     return {"temperature_K": given.temperature, "pressure_kPa": given.pressure, **_choice(given)}
 
 
+def _boiling(given: argparse.Namespace) -> dict[str, Any]:
+    return {**_conditions(given), "vapour": given.vapour}
+
+
 def _fractions(given: argparse.Namespace) -> list[float]:
     if given.fractions is None:
         raise InvalidInputError(
@@ -73,31 +77,32 @@ def _temperature(given: argparse.Namespace) -> float:
 
 
 def _bubble(given: argparse.Namespace, components: list[Component]) -> _Outcome:
-    found = prediction.bubble_point(components, _fractions(given), **_conditions(given))
+    found = prediction.bubble_point(components, _fractions(given), **_boiling(given))
     return answers.phase_point(found), point_text, tables.phase_point_csv
 
 
 def _dew(given: argparse.Namespace, components: list[Component]) -> _Outcome:
-    found = prediction.dew_point(components, _fractions(given), **_conditions(given))
+    found = prediction.dew_point(components, _fractions(given), **_boiling(given))
     return answers.phase_point(found), point_text, tables.phase_point_csv
 
 
 def _flash(given: argparse.Namespace, components: list[Component]) -> _Outcome:
-    if given.pressure is None:
-        raise InvalidInputError("The pressure is missing.", cure="Give it with -P.")
+    if given.pressure is None and given.vapour_fraction is None:
+        raise InvalidInputError(
+            "The pressure is missing.", cure="Give it with -P, or a --vapour-fraction."
+        )
     found = prediction.flash(
         components,
         _fractions(given),
-        temperature_K=_temperature(given),
-        pressure_kPa=given.pressure,
-        **_choice(given),
+        vapour_fraction=given.vapour_fraction,
+        **_boiling(given),
     )
     return answers.phase_point(found), point_text, tables.phase_point_csv
 
 
 def _diagram(given: argparse.Namespace, components: list[Component]) -> _Outcome:
     kind: Literal["Txy", "Pxy"] = "Txy" if given.pressure is not None else "Pxy"
-    found = prediction.diagram(kind, components, points=given.points, **_conditions(given))
+    found = prediction.diagram(kind, components, points=given.points, **_boiling(given))
     if given.picture is not None:
         from api.pictures import diagram_picture  # matplotlib is slow to import
 
@@ -108,7 +113,7 @@ def _diagram(given: argparse.Namespace, components: list[Component]) -> _Outcome
 
 
 def _azeotropes(given: argparse.Namespace, components: list[Component]) -> _Outcome:
-    found = prediction.azeotropes(components, **_conditions(given))
+    found = prediction.azeotropes(components, **_boiling(given))
     return answers.azeotropes(found), azeotropes_text, tables.azeotropes_csv
 
 

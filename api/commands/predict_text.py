@@ -26,9 +26,19 @@ def point_text(answer: PhasePointResponse) -> str:
     lines = [state, aligned(header, rows)]
     if answer.failure:
         lines.append(wrapped(answer.failure, "Not converged: "))
-    if answer.liquid_stable is False:
+    if len(answer.phases) > 1 and answer.liquid_stable is False:
+        lines += ["", "The phases:", _phases_table(answer)]
+    elif answer.liquid_stable is False:
         lines.append("This liquid would split in two: the state shown is not stable.")
     return _with_doubts("\n".join(lines), answer, doubts(answer.confidence))
+
+
+def _phases_table(answer: PhasePointResponse) -> str:
+    rows: list[list[object]] = [["moles in a mole", *(phase.fraction for phase in answer.phases)]]
+    columns = [phase.mole_fractions for phase in answer.phases]
+    names = [named(component) for component in answer.components]
+    rows += [[name, *values] for name, *values in zip(names, *columns, strict=True)]
+    return aligned(["", *(phase.kind for phase in answer.phases)], rows)
 
 
 def diagram_text(answer: DiagramResponse) -> str:
@@ -123,8 +133,10 @@ def _with_doubts(body: str, answer: PredictionResponse, doubt: str) -> str:
     sources = (
         [
             wrapped(f"{named(component)}: {line.source}, {line.equation}", "Vapour pressure of ")
-            for component, line in zip(answer.components, answer.vapour_pressures, strict=True)
+            # The equation of state has no lines of its own.
+            for component, line in zip(answer.components, answer.vapour_pressures, strict=False)
         ]
+        + [wrapped(f"{answer.vapour.kind}: {answer.vapour.reason}", "Vapour ")]
         if isinstance(answer, VapourPredictionResponse)
         else []
     )

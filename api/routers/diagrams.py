@@ -62,6 +62,7 @@ def predict_diagram(
         points=request.points,
         method=request.method,
         on_missing=request.on_missing,
+        vapour=request.vapour,
     )
     if media in {"image/svg+xml", "image/png"}:
         from api.pictures import diagram_picture  # matplotlib is slow to import

@@ -53,7 +53,24 @@ _FLASH_EXAMPLES: dict[str, Any] = {
             "temperature_K": 353.15,
             "pressure_kPa": 101.325,
         }
-    }
+    },
+    "two liquids and a vapour, half boiled": {
+        "value": {
+            "components": ["CCCCO", "O", "CCO"],
+            "mole_fractions": [0.2, 0.75, 0.05],
+            "pressure_kPa": 101.325,
+            "vapour_fraction": 0.2,
+        }
+    },
+    "a gas over a liquid, by the equation of state": {
+        "value": {
+            "components": ["CO", "O=C=O"],
+            "mole_fractions": [0.6, 0.4],
+            "temperature_K": 313.15,
+            "pressure_kPa": 3000.0,
+            "method": "psrk",
+        }
+    },
 }
 _Point = Annotated[PointRequest, Body(openapi_examples=_EXAMPLES)]
 
@@ -77,6 +94,7 @@ def predict_bubble_point(
         pressure_kPa=request.pressure_kPa,
         method=request.method,
         on_missing=request.on_missing,
+        vapour=request.vapour,
     )
     return answer_as(media, answers.phase_point(answer), phase_point_csv)
 
@@ -100,6 +118,7 @@ def predict_dew_point(
         pressure_kPa=request.pressure_kPa,
         method=request.method,
         on_missing=request.on_missing,
+        vapour=request.vapour,
     )
     return answer_as(media, answers.phase_point(answer), phase_point_csv)
 
@@ -107,7 +126,7 @@ def predict_dew_point(
 @router.post(
     "/flash",
     operation_id="predict_flash",
-    summary="Liquid and vapour of a feed at a temperature and a pressure",
+    summary="The phases of a feed: liquids and a vapour",
     response_model=PhasePointResponse,
     responses=_responses,
 )
@@ -116,14 +135,16 @@ def predict_flash(
     media: _json_or_csv,
     settings: SettingsDependency,
 ) -> Response:
-    """`mole_fractions` is the feed; a feed that is all liquid or all vapour says so."""
+    """Give two of `temperature_K`, `pressure_kPa` and `vapour_fraction`; `phases` has them all."""
     check_length("components", len(request.components), settings.max_components)
     answer = prediction.flash(
         components_of(request.components),
         request.mole_fractions,
         temperature_K=request.temperature_K,
         pressure_kPa=request.pressure_kPa,
+        vapour_fraction=request.vapour_fraction,
         method=request.method,
         on_missing=request.on_missing,
+        vapour=request.vapour,
     )
     return answer_as(media, answers.phase_point(answer), phase_point_csv)

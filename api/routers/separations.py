@@ -55,6 +55,7 @@ def find_azeotropes(
         temperature_K=request.temperature_K,
         method=request.method,
         on_missing=request.on_missing,
+        vapour=request.vapour,
     )
     return answer_as(media, answers.azeotropes(answer), azeotropes_csv)
 

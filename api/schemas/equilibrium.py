@@ -6,10 +6,15 @@ from pydantic import Field
 
 from api.schemas.base import Number, StrictModel, WholeNumber
 from api.schemas.confidence import BAND, Confidence, Interval
-from api.schemas.prediction import MixtureRequest, PredictionResponse, VapourPredictionResponse
+from api.schemas.prediction import (
+    BoilingRequest,
+    MixtureRequest,
+    PredictionResponse,
+    VapourPredictionResponse,
+)
 
 
-class PointRequest(MixtureRequest):
+class PointRequest(BoilingRequest):
     """A mixture of stated composition at a temperature or a pressure."""
 
     mole_fractions: list[Number] = Field(min_length=1)
@@ -17,12 +22,23 @@ class PointRequest(MixtureRequest):
     pressure_kPa: Number | None = None
 
 
-class FlashRequest(MixtureRequest):
-    """A feed of stated composition at a temperature and a pressure."""
+class FlashRequest(BoilingRequest):
+    """A feed with two of temperature, pressure and vapour fraction."""
 
     mole_fractions: list[Number] = Field(min_length=1)
-    temperature_K: Number
-    pressure_kPa: Number
+    temperature_K: Number | None = None
+    pressure_kPa: Number | None = None
+    vapour_fraction: Number | None = Field(
+        default=None, description="Moles of vapour in a mole of feed, 0 to 1"
+    )
+
+
+class Phase(StrictModel):
+    """One phase; a phase about to form has fraction 0."""
+
+    kind: Literal["liquid", "vapour"]
+    fraction: float = Field(description="Moles of this phase in a mole of mixture")
+    mole_fractions: list[float]
 
 
 class PhasePointResponse(VapourPredictionResponse):
@@ -31,7 +47,9 @@ class PhasePointResponse(VapourPredictionResponse):
     temperature_K: float | None
     pressure_kPa: float | None
     vapour_fraction: float | None = Field(description="0 at a bubble point, 1 at a dew point")
-    x: list[float | None] = Field(description="Mole fractions of the liquid")
+    x: list[float | None] = Field(
+        description="Mole fractions of the liquid, of all liquids together where there are several"
+    )
     y: list[float | None] = Field(description="Mole fractions of the vapour")
     gamma: list[float | None]
     saturation_kPa: list[float | None] = Field(
@@ -48,12 +66,13 @@ class PhasePointResponse(VapourPredictionResponse):
     gamma_upper: list[float] | None = Field(description=BAND)
     relative_volatility_lower: list[float] | None = Field(description=BAND)
     relative_volatility_upper: list[float] | None = Field(description=BAND)
-    liquid_stable: bool | None = Field(description="False where the liquid would split in two")
+    liquid_stable: bool | None = Field(description="False where the liquid splits in two")
+    phases: list[Phase] = Field(description="Liquids first, then the vapour")
     failure: str | None
     confidence: Confidence
 
 
-class DiagramRequest(MixtureRequest):
+class DiagramRequest(BoilingRequest):
     """A binary diagram at one pressure (Txy) or one temperature (Pxy)."""
 
     kind: Literal["Txy", "Pxy"]
@@ -133,7 +152,7 @@ class DiagramResponse(VapourPredictionResponse):
     confidence: Confidence
 
 
-class AzeotropesRequest(MixtureRequest):
+class AzeotropesRequest(BoilingRequest):
     """A mixture at one pressure or one temperature."""
 
     pressure_kPa: Number | None = None

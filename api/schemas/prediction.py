@@ -40,7 +40,31 @@ class PredictionResponse(StrictModel):
     cautions: list[str]
 
 
-class VapourPredictionResponse(PredictionResponse):
-    """An answer that also rests on vapour pressures."""
+class VapourChoice(StrictModel):
+    """Which vapour to reckon with."""
 
-    vapour_pressures: list[VapourPressureUsed]
+    vapour: Literal["auto", "ideal", "virial"] = Field(
+        default="auto",
+        description="'virial' is a real vapour with dimers of acids; 'auto' takes it where the "
+        "mixture needs it, and the answer says why.",
+    )
+
+
+class BoilingRequest(MixtureRequest, VapourChoice):
+    """A mixture that boils."""
+
+
+class VapourUsed(StrictModel):
+    """The vapour of an answer."""
+
+    kind: Literal["ideal", "virial", "psrk"]
+    reason: str = Field(description="Why this one, in a chemist's words.")
+
+
+class VapourPredictionResponse(PredictionResponse):
+    """An answer that also rests on vapour pressures and on a vapour."""
+
+    vapour_pressures: list[VapourPressureUsed] = Field(
+        description="Empty by the equation of state, which has its own"
+    )
+    vapour: VapourUsed

@@ -15,6 +15,8 @@ from groups.equilibrium import Azeotrope, Diagram
 from groups.prediction.bands import Band
 from groups.prediction.boiling_bands import BoilingBands
 from groups.prediction.chances import AzeotropeChance, SplitChance
+from groups.prediction.phases import PhaseAnswer
+from groups.prediction.vapours import VapourUsed
 from groups.pure import VapourPressure
 from groups.structure.molecule import Molecule
 
@@ -77,6 +79,8 @@ class PhasePointAnswer:
     failure: str | None
     vapour_pressures: tuple[VapourPressure, ...]
     bands: BoilingBands | None  # of one point; None for a flash or without calibration
+    phases: tuple[PhaseAnswer, ...]  # liquids first, then the vapour
+    vapour: VapourUsed
     confidence: Confidence
 
 
@@ -107,6 +111,7 @@ class AzeotropeAnswer:
     azeotropes: tuple[Azeotrope, ...]
     chances: tuple[AzeotropeChance, ...]  # one for each pair of components
     vapour_pressures: tuple[VapourPressure, ...]
+    vapour: VapourUsed
     confidence: Confidence
 
 
@@ -118,9 +123,11 @@ class DiagramAnswer:
     method: str
     methods_used: tuple[TableWeight, ...]
     diagram: Diagram
-    bands: BoilingBands | None
+    bands: BoilingBands | None  # at the given liquids
+    dew_band: Band | None  # T or P of the dew curve at the vapours, (n_points,)
     azeotrope_chance: AzeotropeChance | None
     vapour_pressures: tuple[VapourPressure, ...]
+    vapour: VapourUsed
     confidence: Confidence
 
 

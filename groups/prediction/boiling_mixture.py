@@ -19,7 +19,17 @@ from groups.errors import MixwrightError
 from groups.prediction.bands import Drawn, drawn_around
 from groups.prediction.component import Component
 from groups.prediction.liquid import Liquid, liquid
+from groups.prediction.vapours import (
+    ASSUMED_IDEAL,
+    VapourAsked,
+    VapourUsed,
+    chosen_vapour,
+    not_converged_under_real_vapour,
+    noted,
+    vapour_model,
+)
 from groups.pure import VapourPressure, vapour_pressure
+from groups.vapour import VapourNote, range_notes
 
 
 @dataclass(frozen=True, slots=True)
@@ -30,6 +40,18 @@ class BoilingMixture:
     lines: tuple[VapourPressure, ...]
     system: System
     on_missing: OnMissing
+    vapour: VapourUsed = ASSUMED_IDEAL
+    vapour_notes: tuple[VapourNote, ...] = ()
+
+    def under_ideal_vapour(self) -> "BoilingMixture":
+        """The same, where the real vapour asked for by need gave no state."""
+        return BoilingMixture(
+            self.liquid,
+            self.lines,
+            System(self.system.activity, self.lines),
+            self.on_missing,
+            not_converged_under_real_vapour(),
+        )
 
     def drawn(self, temperature_K: float) -> Drawn | None:
         """Liquids and vapour pressures drawn around the mixture; None without calibration.
@@ -48,7 +70,11 @@ class BoilingMixture:
         return drawn_around(self.liquid.molecules, self.on_missing, temperature_K, self.lines)
 
     def reasons(
-        self, temperature_K: FloatArray, pressure_kPa: FloatArray, mole_fractions: FloatArray
+        self,
+        temperature_K: FloatArray,
+        pressure_kPa: FloatArray,
+        mole_fractions: FloatArray,
+        vapour: FloatArray | None = None,
     ) -> list[Reason]:
         """Reasons to doubt vapour-liquid equilibrium over the points; NaN points are left out.
 
@@ -56,6 +82,9 @@ class BoilingMixture:
         ----------
         temperature_K, pressure_kPa : array of shape (n_points,)
         mole_fractions : array of shape (n_points, n_components)
+            Of the liquid.
+        vapour : array of shape (n_points, n_components), optional
+            Mole fractions of the vapour, for the range of the virial equation.
 
         Returns
         -------
@@ -70,11 +99,22 @@ class BoilingMixture:
         molecules = self.liquid.molecules
         return [
             *self.liquid.reasons(T, mole_fractions[known]),
-            *pressure_reasons(float(P.max())),
             *critical_reasons(molecules, self.lines, highest),
-            *association_reasons(molecules),
             *saturation_reasons(molecules, self.lines, lowest, highest),
+            *self._vapour_reasons(T, P, None if vapour is None else vapour[known]),
         ]
+
+    def _vapour_reasons(
+        self, T: FloatArray, P: FloatArray, vapour: FloatArray | None
+    ) -> list[Reason]:
+        """What an assumed ideal vapour costs, or what a real one rests on."""
+        molecules, model = self.liquid.molecules, vapour_model(self.system)
+        if model is not None:
+            beyond = () if vapour is None else range_notes(model, T, P, vapour)
+            return noted([*self.vapour_notes, *beyond])
+        if self.vapour.judged:
+            return []  # an ideal vapour was weighed against a real one and found good enough
+        return [*pressure_reasons(float(P.max())), *association_reasons(molecules)]
 
 
 def boiling_mixture(
@@ -84,8 +124,10 @@ def boiling_mixture(
     *,
     temperature_K: float | None = None,
     pressure_kPa: float | None = None,
+    vapour: VapourAsked = "ideal",
+    fractions: FloatArray | None = None,
 ) -> BoilingMixture:
-    """Choose the activity model and the vapour pressures for one temperature or one pressure.
+    """Choose the activity model, vapour pressures and vapour for one temperature or pressure.
 
     Parameters
     ----------
@@ -94,6 +136,9 @@ def boiling_mixture(
     on_missing : {"refuse", "estimate"}
     temperature_K, pressure_kPa : float or None
         What is fixed; the vapour-pressure equations are chosen to span the temperatures it means.
+    vapour : {"auto", "ideal", "virial"}
+    fractions : array of shape (1, n_components), optional
+        The mixture asked about; a component with zero has no say in the choice of a vapour.
 
     Returns
     -------
@@ -106,11 +151,20 @@ def boiling_mixture(
     """
     mixture = liquid([component.molecule for component in components], method, on_missing)
     span = None if temperature_K is None else (temperature_K, temperature_K)
-    if pressure_kPa is not None:
+    if temperature_K is None and pressure_kPa is not None:
         boiling = [line.boiling_temperature(pressure_kPa) for line in _lines(components, None)]
         span = (min(boiling), max(boiling))
     lines = _lines(components, span)
-    return BoilingMixture(mixture, lines, System(mixture.model, lines), on_missing)
+    chosen = chosen_vapour(
+        System(mixture.model, lines),
+        mixture.molecules,
+        lines,
+        vapour,
+        temperature_K=temperature_K,
+        pressure_kPa=pressure_kPa,
+        present=None if fractions is None else (fractions[0] > 0.0).tolist(),
+    )
+    return BoilingMixture(mixture, lines, chosen.system, on_missing, chosen.used, chosen.notes)
 
 
 def _lines(

@@ -11,6 +11,7 @@ import numpy as np
 
 from groups.arrays import BoolArray, FloatArray
 from groups.confidence import Interval
+from groups.equilibrium import bubble_pressure, bubble_temperature
 from groups.equilibrium.states import log_sum_exp, safe_log
 from groups.equilibrium.system import System
 from groups.prediction.bands import LEVEL, Drawn
@@ -93,15 +94,17 @@ def drawn_ln_alpha(
     first, second = components
     liquid = np.zeros((len(GRID), system.n_components))
     liquid[:, first], liquid[:, second] = GRID, 1.0 - GRID
-    if temperature_K is not None:
-        temperatures = np.full(len(GRID), temperature_K)
+    if temperature_K is not None and system.vapour.ideal:
+        temperatures, saturation = np.full(len(GRID), temperature_K), None
     else:
-        temperatures = _boiling(system, liquid, pressure_kPa or np.nan)
+        temperatures, saturation = _boiling(system, liquid, temperature_K, pressure_kPa)
         if not np.isfinite(temperatures).all():
             unknown = np.full((len(drawn.shift), len(GRID)), np.nan)
             return unknown, unknown
+    if saturation is None:
+        saturation = system.ln_saturation(temperatures)
     ln_volatility = drawn.models.ln_gamma(temperatures, liquid)
-    ln_volatility = ln_volatility + system.ln_saturation(temperatures) + drawn.shift[:, None, :]
+    ln_volatility = ln_volatility + saturation + drawn.shift[:, None, :]
     slopes = system.ln_volatility_slope(temperatures, liquid)
     ln_P = log_sum_exp(safe_log(liquid) + ln_volatility)
     inverse = np.broadcast_to(1.0 / temperatures, ln_P.shape)
@@ -137,18 +140,30 @@ def nearest_to_azeotrope(ln_alpha: FloatArray) -> FloatArray:
     return nearest
 
 
-def _boiling(system: System, liquid: FloatArray, pressure_kPa: float) -> FloatArray:
+def _boiling(
+    system: System, liquid: FloatArray, temperature_K: float | None, pressure_kPa: float | None
+) -> tuple[FloatArray, FloatArray | None]:
     """Boiling temperatures of the prediction itself, gaps filled from their neighbours.
 
-    NaN where no liquid between the two boils at the pressure: then no draw has an azeotrope.
+    NaN where no liquid between the two boils at the condition: then no draw has an azeotrope.
+    Under a real vapour also ln Psat less the correction of the vapour found there.
     """
-    from groups.equilibrium import bubble_temperature
-
-    found = bubble_temperature(system, pressure_kPa, liquid).temperature_K
-    known = np.isfinite(found)
-    if not known.any():
-        return found
-    return np.interp(np.arange(len(found)), np.flatnonzero(known), found[known])
+    if temperature_K is not None:
+        states = bubble_pressure(system, np.array([temperature_K]), liquid)
+    else:
+        states = bubble_temperature(system, pressure_kPa or np.nan, liquid)
+    found, known = states.temperature_K, np.flatnonzero(states.converged)
+    if not known.size:
+        return found, None
+    places = np.arange(len(found))
+    temperatures: FloatArray = np.interp(places, known, found[known])
+    if system.vapour.ideal:
+        return temperatures, None
+    correction = system.vapour.ln_correction(
+        found[known], states.pressure_kPa[known], states.vapour[known]
+    )
+    filled = [np.interp(places, known, column) for column in correction.T]
+    return temperatures, system.ln_saturation(temperatures) - np.stack(filled, axis=-1)
 
 
 def _found(

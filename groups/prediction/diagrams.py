@@ -12,11 +12,19 @@ from groups.equilibrium import Diagram
 from groups.equilibrium import diagram as solve_diagram
 from groups.errors import InvalidInputError, OutOfRangeError
 from groups.prediction.answers import DiagramAnswer
-from groups.prediction.boiling_bands import BoilingBands, KnownStates, bubble_bands
+from groups.prediction.bands import Band
+from groups.prediction.boiling_bands import (
+    BoilingBands,
+    KnownStates,
+    bands_of,
+    bubble_draws,
+    dew_curve_band,
+)
 from groups.prediction.boiling_mixture import BoilingMixture, boiling_mixture
 from groups.prediction.chances import AzeotropeChance, azeotrope_chance
 from groups.prediction.checks import check_components, check_pressures, check_temperatures
 from groups.prediction.component import Component
+from groups.prediction.vapours import VapourAsked
 
 DiagramKind = Literal["Txy", "Pxy"]
 POINTS_RANGE = (2, 2001)
@@ -31,6 +39,7 @@ def diagram(
     points: int = 101,
     method: str = "auto",
     on_missing: OnMissing = "estimate",
+    vapour: VapourAsked = "auto",
 ) -> DiagramAnswer:
     """Boiling and dew curve of a binary at one pressure ("Txy") or temperature ("Pxy").
 
@@ -47,6 +56,8 @@ def diagram(
     method : str
         An identifier of `ALL_METHODS`.
     on_missing : {"refuse", "estimate"}
+    vapour : {"auto", "ideal", "virial"}
+        "auto" takes a real vapour where this mixture needs one.
 
     Returns
     -------
@@ -68,14 +79,20 @@ def diagram(
     if not POINTS_RANGE[0] <= points <= POINTS_RANGE[1]:
         raise OutOfRangeError("points", points, *POINTS_RANGE)
     mixture = boiling_mixture(
-        components, method, on_missing, temperature_K=temperature_K, pressure_kPa=pressure_kPa
+        components,
+        method,
+        on_missing,
+        temperature_K=temperature_K,
+        pressure_kPa=pressure_kPa,
+        vapour=vapour,
     )
     drawn = solve_diagram(
         mixture.system, kind, pressure_kPa=pressure_kPa, temperature_K=temperature_K, points=points
     )
     fractions = np.column_stack([drawn.x1, 1.0 - drawn.x1])
-    reasons = mixture.reasons(drawn.temperature_K, drawn.pressure_kPa, fractions)
-    bands, chance = _uncertainty(mixture, drawn, fractions, temperature_K, pressure_kPa)
+    vapours = np.column_stack([drawn.y1, 1.0 - drawn.y1])
+    reasons = mixture.reasons(drawn.temperature_K, drawn.pressure_kPa, fractions, vapours)
+    bands, dew, chance = _uncertainty(mixture, drawn, fractions, temperature_K, pressure_kPa)
     width = None if bands is None else float(np.nanmax(bands.ln_k_half_width))
     return DiagramAnswer(
         mixture.liquid.molecules,
@@ -83,8 +100,10 @@ def diagram(
         mixture.liquid.methods_used,
         drawn,
         bands,
+        dew,
         chance,
         mixture.lines,
+        mixture.vapour,
         graded([*reasons, *_diagram_reasons(drawn)], mixture.liquid.evidence, half_width_ln=width),
     )
 
@@ -95,14 +114,14 @@ def _uncertainty(
     fractions: FloatArray,
     temperature_K: float | None,
     pressure_kPa: float | None,
-) -> tuple[BoilingBands, AzeotropeChance] | tuple[None, None]:
+) -> tuple[BoilingBands, Band, AzeotropeChance] | tuple[None, None, None]:
     """Intervals along both curves and the chance of an azeotrope."""
     known = np.flatnonzero([text is None for text in found.failure])
     if not known.size:
-        return None, None
+        return None, None, None
     drawn = mixture.drawn(float(np.median(found.temperature_K[known])))
     if drawn is None:
-        return None, None
+        return None, None, None
     vapour = np.column_stack([found.y1, 1.0 - found.y1])
     ratio = np.column_stack([found.relative_volatility, np.ones(len(found.x1))])
     states = KnownStates(
@@ -114,11 +133,13 @@ def _uncertainty(
         ratio[known],
         pressure_kPa is not None,
     )
-    bands = bubble_bands(drawn, mixture.system, states).spread(known, len(found.x1))
+    each = bubble_draws(drawn, mixture.system, states)
+    bands = bands_of(each, states).spread(known, len(found.x1))
+    dew = dew_curve_band(each, states).spread(known, len(found.x1))
     chance = azeotrope_chance(
         drawn, mixture.system, (0, 1), temperature_K=temperature_K, pressure_kPa=pressure_kPa
     )
-    return bands, chance
+    return bands, dew, chance
 
 
 def _check_condition(

@@ -1,6 +1,7 @@
-"""Bubble points, dew points and flashes of one mixture."""
+"""Bubble points and dew points of one mixture."""
 
-from collections.abc import Callable, Sequence
+from collections.abc import Sequence
+from typing import Literal
 
 import numpy as np
 from numpy.typing import ArrayLike
@@ -9,12 +10,13 @@ from groups.activity.choice import OnMissing
 from groups.arrays import FloatArray
 from groups.confidence import Confidence, Interval, Reason, graded
 from groups.equilibrium import (
+    Flash,
     States,
-    bubble_pressure,
-    bubble_temperature,
     dew_pressure,
     dew_temperature,
     stability,
+    stable_bubble_pressure,
+    stable_bubble_temperature,
 )
 from groups.prediction.answers import PhasePointAnswer
 from groups.prediction.boiling_bands import (
@@ -32,8 +34,11 @@ from groups.prediction.checks import (
     check_temperatures,
 )
 from groups.prediction.component import Component
+from groups.prediction.phases import PhaseAnswer, of_both_liquids, phases_of
+from groups.prediction.state_equation import EQUATION_OF_STATE, saturation_by_state_equation
+from groups.prediction.vapours import VapourAsked, check_vapour
 
-Solver = Callable[..., States]
+PointKind = Literal["bubble", "dew"]
 
 
 def bubble_point(
@@ -44,8 +49,11 @@ def bubble_point(
     pressure_kPa: float | None = None,
     method: str = "auto",
     on_missing: OnMissing = "estimate",
+    vapour: VapourAsked = "auto",
 ) -> PhasePointAnswer:
     """Where a liquid begins to boil, and the first vapour.
+
+    A liquid that splits boils as its stable liquids do, both together.
 
     Parameters
     ----------
@@ -55,8 +63,11 @@ def bubble_point(
     temperature_K, pressure_kPa : float
         Exactly one of them; the other is the answer.
     method : str
-        An identifier of `ALL_METHODS`.
+        An identifier of `ALL_METHODS`. "psrk" is the equation of state: gases and components
+        beyond their critical point are allowed.
     on_missing : {"refuse", "estimate"}
+    vapour : {"auto", "ideal", "virial"}
+        "auto" takes a real vapour where this mixture needs one.
 
     Returns
     -------
@@ -71,16 +82,12 @@ def bubble_point(
 
     Source
     ------
-    Modified Raoult's law, y_i P = x_i gamma_i Psat_i.
+    Modified Raoult's law, y_i P = x_i gamma_i Psat_i, with the correction of
+    `groups.vapour.virial_vapour`; `groups.vapour.psrk` for the equation of state.
     """
+    conditions = temperature_K, pressure_kPa
     return _phase_point(
-        components,
-        mole_fractions,
-        (temperature_K, pressure_kPa),
-        (bubble_pressure, bubble_temperature),
-        0.0,
-        method,
-        on_missing,
+        "bubble", components, mole_fractions, conditions, method, on_missing, vapour
     )
 
 
@@ -92,6 +99,7 @@ def dew_point(
     pressure_kPa: float | None = None,
     method: str = "auto",
     on_missing: OnMissing = "estimate",
+    vapour: VapourAsked = "auto",
 ) -> PhasePointAnswer:
     """Where a vapour begins to condense, and the first liquid.
 
@@ -103,8 +111,10 @@ def dew_point(
     temperature_K, pressure_kPa : float
         Exactly one of them; the other is the answer.
     method : str
-        An identifier of `ALL_METHODS`.
+        An identifier of `ALL_METHODS`; "psrk" is the equation of state.
     on_missing : {"refuse", "estimate"}
+    vapour : {"auto", "ideal", "virial"}
+        "auto" takes a real vapour where this mixture needs one.
 
     Returns
     -------
@@ -119,87 +129,151 @@ def dew_point(
 
     Source
     ------
-    Modified Raoult's law, y_i P = x_i gamma_i Psat_i.
+    As `bubble_point`.
     """
-    return _phase_point(
-        components,
-        mole_fractions,
-        (temperature_K, pressure_kPa),
-        (dew_pressure, dew_temperature),
-        1.0,
-        method,
-        on_missing,
-    )
+    conditions = temperature_K, pressure_kPa
+    return _phase_point("dew", components, mole_fractions, conditions, method, on_missing, vapour)
 
 
 def _phase_point(
+    kind: PointKind,
     components: Sequence[Component],
     mole_fractions: ArrayLike,
-    fixed: tuple[float | None, float | None],
-    solvers: tuple[Solver, Solver],
-    vapour_fraction: float,
+    conditions: tuple[float | None, float | None],
     method: str,
     on_missing: OnMissing,
+    vapour: VapourAsked,
 ) -> PhasePointAnswer:
-    temperature_K, pressure_kPa = fixed
+    temperature_K, pressure_kPa = conditions
     molecules = [component.molecule for component in components]
     check_components(molecules)
     fractions = check_fractions(mole_fractions, len(molecules))[:1]
     check_one_of(temperature_K, pressure_kPa)
+    check_vapour(vapour)
     if temperature_K is not None:
         check_temperatures(temperature_K)
     else:
         check_pressures(pressure_kPa if pressure_kPa is not None else np.nan)
+    if method == EQUATION_OF_STATE:
+        return saturation_by_state_equation(
+            kind, components, fractions, temperature_K=temperature_K, pressure_kPa=pressure_kPa
+        )
     mixture = boiling_mixture(
-        components, method, on_missing, temperature_K=temperature_K, pressure_kPa=pressure_kPa
+        components,
+        method,
+        on_missing,
+        temperature_K=temperature_K,
+        pressure_kPa=pressure_kPa,
+        vapour=vapour,
+        fractions=fractions,
     )
-    at_temperature, at_pressure = solvers
+    found = _solved(kind, mixture, temperature_K, pressure_kPa, fractions)
+    if not found.converged[0] and vapour == "auto" and not mixture.system.vapour.ideal:
+        mixture = mixture.under_ideal_vapour()
+        found = _solved(kind, mixture, temperature_K, pressure_kPa, fractions)
+    return _answer(kind, mixture, found, pressure_fixed=pressure_kPa is not None)
+
+
+def _solved(
+    kind: PointKind,
+    mixture: BoilingMixture,
+    temperature_K: float | None,
+    pressure_kPa: float | None,
+    fractions: FloatArray,
+) -> States | Flash:
+    if kind == "bubble":
+        if temperature_K is not None:
+            return stable_bubble_pressure(mixture.system, temperature_K, fractions)
+        return stable_bubble_temperature(mixture.system, pressure_kPa or np.nan, fractions)
     if temperature_K is not None:
-        states = at_temperature(mixture.system, np.array([temperature_K]), fractions)
-    else:
-        states = at_pressure(mixture.system, np.array([pressure_kPa]), fractions)
-    return _answer(mixture, states, vapour_fraction, pressure_fixed=pressure_kPa is not None)
+        return dew_pressure(mixture.system, temperature_K, fractions)
+    return dew_temperature(mixture.system, pressure_kPa or np.nan, fractions)
 
 
 def _answer(
-    mixture: BoilingMixture, states: States, vapour_fraction: float, *, pressure_fixed: bool
+    kind: PointKind, mixture: BoilingMixture, found: States | Flash, *, pressure_fixed: bool
 ) -> PhasePointAnswer:
     """The answer for the first of the states, with its reasons and intervals."""
-    T, P, x = states.temperature_K, states.pressure_kPa, states.liquid
-    stable = _stable(mixture, T, x) if states.converged[0] else None
-    reasons = mixture.reasons(T, P, x) + _state_reasons(states.failure[0], stable)
-    saturation = np.exp(mixture.system.ln_saturation(T))[0]
-    k_values = states.gamma[0] * saturation
-    ratio = k_values / k_values[-1]
+    T, P, x, y = found.temperature_K, found.pressure_kPa, found.liquid, found.vapour
+    stable = _stable(mixture, found) if found.converged[0] else None
+    reasons = mixture.reasons(T, P, x, y) + _state_reasons(kind, found.failure[0], stable)
+    ln_k = ln_volatilities(mixture, found)
+    ratio = np.exp(ln_k - ln_k[-1])
     bands = None
-    if states.converged[0]:
-        known = KnownStates(T, P, x, states.vapour, states.gamma, ratio[None], pressure_fixed)
-        bands = _bands(mixture, known, bubble=vapour_fraction == 0.0)
+    if found.converged[0]:
+        bands = _bands(kind, mixture, found, ratio, pressure_fixed)
     return PhasePointAnswer(
         mixture.liquid.molecules,
         mixture.liquid.method,
         mixture.liquid.methods_used,
         float(T[0]),
         float(P[0]),
-        vapour_fraction,
+        0.0 if kind == "bubble" else 1.0,
         x[0],
-        states.vapour[0],
-        states.gamma[0],
-        saturation,
+        y[0],
+        found.gamma[0],
+        np.exp(mixture.system.ln_saturation(T))[0],
         ratio,
         stable,
-        states.failure[0],
+        found.failure[0],
         mixture.lines,
         bands,
+        _phases(found),
+        mixture.vapour,
         _confidence(reasons, mixture, bands, pressure_fixed),
     )
 
 
-def _bands(mixture: BoilingMixture, known: KnownStates, *, bubble: bool) -> BoilingBands | None:
-    drawn = mixture.drawn(float(known.temperature_K[0]))
+def ln_volatilities(mixture: BoilingMixture, found: States | Flash) -> FloatArray:
+    """ln(gamma_i Psat_i), less the correction of a real vapour, of the first state.
+
+    Parameters
+    ----------
+    mixture : BoilingMixture
+    found : States or Flash
+
+    Returns
+    -------
+    array of shape (n_components,)
+        NaN where there is no state.
+    """
+    T, P, y = found.temperature_K[:1], found.pressure_kPa[:1], found.vapour[:1]
+    ln_volatility = np.log(found.gamma[0]) + mixture.system.ln_saturation(T)[0]
+    if mixture.system.vapour.ideal or not np.isfinite(y).all():
+        return np.asarray(ln_volatility)
+    return np.asarray(ln_volatility - mixture.system.vapour.ln_correction(T, P, y)[0])
+
+
+def _phases(found: States | Flash) -> tuple[PhaseAnswer, ...]:
+    if isinstance(found, Flash):
+        return phases_of(found)
+    if not found.converged[0]:
+        return ()
+    liquid = PhaseAnswer("liquid", 0.0, found.liquid[0])
+    return (liquid, PhaseAnswer("vapour", 1.0, found.vapour[0]))
+
+
+def _bands(
+    kind: PointKind,
+    mixture: BoilingMixture,
+    found: States | Flash,
+    ratio: FloatArray,
+    pressure_fixed: bool,
+) -> BoilingBands | None:
+    T, P, x, y = found.temperature_K, found.pressure_kPa, found.liquid, found.vapour
+    drawn = mixture.drawn(float(T[0]))
     if drawn is None:
         return None
-    return (bubble_bands if bubble else dew_bands)(drawn, mixture.system, known)
+    split = isinstance(found, Flash) and not found.liquid_stable[0]
+    if not split:
+        known = KnownStates(T, P, x, y, found.gamma, ratio[None], pressure_fixed)
+        return (bubble_bands if kind == "bubble" else dew_bands)(drawn, mixture.system, known)
+    assert isinstance(found, Flash)
+    one = found.liquids[:, 0]
+    gamma = np.exp(mixture.system.activity.ln_gamma(T, one))
+    share = np.divide(x, one, out=np.ones_like(x), where=one > 0.0)
+    known = KnownStates(T, P, one, y, gamma, ratio * share / share[:, -1:], pressure_fixed)
+    return of_both_liquids(bubble_bands(drawn, mixture.system, known), x, one)
 
 
 def _confidence(
@@ -220,20 +294,34 @@ def _confidence(
     )
 
 
-def _stable(mixture: BoilingMixture, temperature_K: FloatArray, x: FloatArray) -> bool:
-    return bool(stability(mixture.system.activity, temperature_K, x).stable[0])
+def _stable(mixture: BoilingMixture, found: States | Flash) -> bool:
+    if isinstance(found, Flash):
+        return bool(found.liquid_stable[0])
+    liquid = mixture.system.activity
+    return bool(stability(liquid, found.temperature_K, found.liquid).stable[0])
 
 
-def _state_reasons(failure: str | None, stable: bool | None) -> list[Reason]:
+def _state_reasons(kind: PointKind, failure: str | None, stable: bool | None) -> list[Reason]:
     if failure is not None:
         return [Reason("not_converged", f"No state was found: {failure}.", "state", "none")]
-    if stable is False:
-        return [liquid_split_reason()]
-    return []
+    if stable is not False:
+        return []
+    return [liquid_split_reason() if kind == "bubble" else unstable_liquid_reason()]
 
 
 def liquid_split_reason() -> Reason:
-    """The reason beside a state whose liquid would split in two."""
+    """The reason beside a state with two liquids."""
+    return Reason(
+        "possible_liquid_split",
+        "By this method the liquid splits in two, and the state is that of both liquids together; "
+        "where the split lies is more uncertain than a bubble point.",
+        "liquid",
+        "low",
+    )
+
+
+def unstable_liquid_reason() -> Reason:
+    """The reason beside a dew point whose liquid would split in two."""
     return Reason(
         "possible_liquid_split",
         "By this method the liquid is not stable and splits in two; the state given is that of "

@@ -30,6 +30,7 @@ from groups.prediction.checks import (
 )
 from groups.prediction.component import Component
 from groups.prediction.liquid import Liquid, liquid
+from groups.prediction.vapours import VapourAsked
 
 # Common practice, no source: pure boiling points closer than this make an azeotrope a close call.
 CLOSE_BOILING_K = 3.0
@@ -43,6 +44,7 @@ def azeotropes(
     temperature_K: float | None = None,
     method: str = "auto",
     on_missing: OnMissing = "estimate",
+    vapour: VapourAsked = "auto",
 ) -> AzeotropeAnswer:
     """Every azeotrope of a mixture at one pressure or one temperature.
 
@@ -54,6 +56,8 @@ def azeotropes(
     method : str
         An identifier of `ALL_METHODS`.
     on_missing : {"refuse", "estimate"}
+    vapour : {"auto", "ideal", "virial"}
+        "auto" takes a real vapour where this mixture needs one.
 
     Returns
     -------
@@ -78,7 +82,12 @@ def azeotropes(
     if pressure_kPa is not None:
         check_pressures(pressure_kPa)
     mixture = boiling_mixture(
-        components, method, on_missing, temperature_K=temperature_K, pressure_kPa=pressure_kPa
+        components,
+        method,
+        on_missing,
+        temperature_K=temperature_K,
+        pressure_kPa=pressure_kPa,
+        vapour=vapour,
     )
     found = solve_azeotropes(mixture.system, pressure_kPa=pressure_kPa, temperature_K=temperature_K)
     return AzeotropeAnswer(
@@ -90,6 +99,7 @@ def azeotropes(
         found,
         _chances(mixture, pressure_kPa, temperature_K),
         mixture.lines,
+        mixture.vapour,
         graded(_azeotrope_reasons(mixture, pressure_kPa, temperature_K), mixture.liquid.evidence),
     )
 

@@ -361,7 +361,25 @@ INVOLATILE = "C(C(C(C(C(CO)O)O)O)O)O"
             "fraction-sum",
             "/mole_fractions",
         ),
-        ("/v1/flash", POINT | {"temperature_K": 350.0}, "invalid-request", "/pressure_kPa"),
+        ("/v1/flash", POINT | {"temperature_K": 350.0}, "invalid-input", "/pressure_kPa"),
+        (
+            "/v1/flash",
+            POINT | {"temperature_K": 350.0, "vapour_fraction": 1.5},
+            "out-of-range",
+            "/vapour_fraction",
+        ),
+        (
+            "/v1/flash",
+            POINT | {"temperature_K": 350.0, "vapour_fraction": 0.5, "method": "psrk"},
+            "invalid-input",
+            "/vapour_fraction",
+        ),
+        (
+            "/v1/bubble-point",
+            POINT | {"temperature_K": 350.0, "vapour": "real"},
+            "invalid-request",
+            "/vapour",
+        ),
         ("/v1/diagrams", DIAGRAM | {"kind": "xy"}, "invalid-request", "/kind"),
         ("/v1/diagrams", DIAGRAM | {"kind": "Pxy"}, "invalid-input", "/temperature_K"),
         (

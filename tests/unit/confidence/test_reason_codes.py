@@ -100,8 +100,8 @@ CASES: list[Case] = [
     ),
     (
         "pressure_too_high_for_ideal_vapour",
+        lambda: boiling("CCC", "CCCCC", pressure_kPa=1500.0, vapour="ideal"),
         lambda: boiling("CCC", "CCCCC", pressure_kPa=1500.0),
-        lambda: boiling("CCC", "CCCCC", pressure_kPa=ONE_ATM),
     ),
     (
         "near_critical_component",  # propane: 369.8 K
@@ -115,8 +115,18 @@ CASES: list[Case] = [
     ),
     (
         "vapour_dimers",
+        lambda: boiling("CC(=O)O", "O", pressure_kPa=ONE_ATM, vapour="ideal"),
+        lambda: boiling("COC(C)=O", "O", pressure_kPa=ONE_ATM, vapour="ideal"),
+    ),
+    (
+        "vapour_dimers_included",
         lambda: boiling("CC(=O)O", "O", pressure_kPa=ONE_ATM),
-        lambda: boiling("COC(C)=O", "O", pressure_kPa=ONE_ATM),
+        lambda: boiling("CC(=O)O", "O", pressure_kPa=ONE_ATM, vapour="ideal"),
+    ),
+    (
+        "virial_beyond_range",
+        lambda: boiling("CCC", "CCCCC", temperature_K=400.0, vapour="virial"),
+        lambda: boiling("CCC", "CCCCC", temperature_K=250.0, vapour="virial"),
     ),
     (
         "neighbouring_polar_groups",
@@ -285,7 +295,7 @@ def test_the_direction_of_the_temperature_is_said():
     ("pressure_kPa", "cap"), [(250.0, None), (500.0, "moderate"), (1500.0, "low")]
 )
 def test_the_pressure_caps_the_grade_in_two_steps(pressure_kPa, cap):
-    reasons = boiling("CCCC", "CCCCC", pressure_kPa=pressure_kPa).reasons
+    reasons = boiling("CCCC", "CCCCC", pressure_kPa=pressure_kPa, vapour="ideal").reasons
     found = [r.cap for r in reasons if r.code == "pressure_too_high_for_ideal_vapour"]
     assert found == ([] if cap is None else [cap])
 

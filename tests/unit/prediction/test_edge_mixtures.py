@@ -30,7 +30,8 @@ def test_a_single_component_boils_at_its_boiling_point(method):
         answer = solve(mixture("O"), [1.0], pressure_kPa=ONE_ATM, method=method)
         # Water at 1 atm: 373.12 K (IAPWS-95, from memory); the published fits are within 0.05 K.
         assert answer.temperature_K == pytest.approx(373.12, abs=0.05)
-        assert answer.gamma == pytest.approx([1.0])
+        if method != "psrk":  # an equation of state has no activity coefficients
+            assert answer.gamma == pytest.approx([1.0])
         assert answer.relative_volatility == pytest.approx([1.0])
         assert answer.liquid_stable
 
