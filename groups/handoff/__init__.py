@@ -2,16 +2,20 @@
 
 from groups.handoff.compare_door import compare, parameters_of_fit
 from groups.handoff.comparisons import ComparisonAnswer, Measurements, Units, read_csv, read_records
+from groups.handoff.conditioned import Conditioned, UncertainDiagram, condition
 from groups.handoff.fit_door import FitAnswer, fit
 from groups.handoff.sheets import ParameterSet, to_csv, to_text
 
 __all__ = [
     "ComparisonAnswer",
+    "Conditioned",
     "FitAnswer",
     "Measurements",
     "ParameterSet",
+    "UncertainDiagram",
     "Units",
     "compare",
+    "condition",
     "fit",
     "parameters_of_fit",
     "read_csv",

@@ -13,6 +13,7 @@ from groups.confidence.calibration import TableWeight
 from groups.equilibrium import Azeotrope, LiquidModel, System, azeotropes
 from groups.equilibrium.subset import SubsetLiquid
 from groups.errors import InvalidInputError, OutOfRangeError
+from groups.handoff.calibrated_sigma import SCATTER, calibrated_sigma
 from groups.handoff.correlations import FORMS
 from groups.handoff.correlations.build import equation_of
 from groups.handoff.correlations.temperature_forms import form_terms
@@ -67,6 +68,8 @@ class FitAnswer:
     vapour_pressures : tuple of VapourPressure or None
     azeotropes_predicted, azeotropes_fitted : tuple of Azeotrope or None
         Of the whole mixture at `pressure_kPa`, of three or four components; None otherwise.
+    weighting : str
+        What the values were weighted by, in words.
     notes : tuple of FitNote
         Of the mixture as a whole.
     confidence : Confidence
@@ -83,6 +86,7 @@ class FitAnswer:
     vapour_pressures: tuple[VapourPressure, ...] | None
     azeotropes_predicted: tuple[Azeotrope, ...] | None
     azeotropes_fitted: tuple[Azeotrope, ...] | None
+    weighting: str
     notes: tuple[FitNote, ...]
     confidence: Confidence
 
@@ -107,7 +111,7 @@ def fit(
     pressure_kPa: float | None = None,
     temperatures: int = TEMPERATURES,
     compositions: int = COMPOSITIONS,
-    sigma: float | PairSigma = SIGMA_LN_GAMMA,
+    sigma: float | PairSigma | None = None,
     method: str = "auto",
     on_missing: OnMissing = "estimate",
 ) -> FitAnswer:
@@ -131,9 +135,10 @@ def fit(
         Where azeotropes of prediction and fit are compared, kPa.
     temperatures, compositions : int
         Points of the grid: 1 to 51 and 5 to 401.
-    sigma : float or callable
+    sigma : float or callable, optional
         Standard deviation of the predicted ln gamma: one number, or a function of the pair (i, j),
-        temperatures (t,) and x1 (m,) that answers what broadcasts to (t, m, 2).
+        temperatures (t,) and x1 (m,) that answers what broadcasts to (t, m, 2). Where not given,
+        that of the calibrated intervals for "auto", and equal weights for other methods.
     method : str
         An identifier of `groups.prediction.ALL_METHODS`.
     on_missing : {"refuse", "estimate"}
@@ -160,13 +165,14 @@ def fit(
     mixture, boiling = _mixture(components, method, on_missing, pressure_kPa)
     span = temperature_range_K or _boiling_range(boiling, pressure_kPa)
     T, x1 = fit_grid(span, temperatures, compositions)
+    spread, weighting = _weights(sigma, mixture, method, on_missing, float(np.median(T)))
     own = _sizes(model, mixture.molecules, wilson_volumes=wilson_volumes)
     lines = None if boiling is None else boiling.lines
     found = fit_mixture(
         mixture.model,
         T,
         x1,
-        sigma if callable(sigma) else lambda _pair, _T, _x1: sigma,
+        spread,
         model,
         form,
         alpha=alpha,
@@ -202,8 +208,34 @@ def fit(
         lines,
         before,
         after,
+        weighting,
         _mixture_notes(before, after),
         graded(mixture.reasons(*_corners(T, len(components)))),
+    )
+
+
+def _weights(
+    sigma: float | PairSigma | None,
+    mixture: Liquid,
+    method: str,
+    on_missing: OnMissing,
+    temperature_K: float,
+) -> tuple[PairSigma, str]:
+    """The standard deviations of ln gamma, and what they stand on."""
+    if callable(sigma):
+        return sigma, "standard deviations of ln gamma as given"
+    own = None
+    if sigma is None and method == "auto":
+        own = calibrated_sigma(mixture.molecules, on_missing, temperature_K)
+    if own is not None:
+        return own, (
+            "each ln gamma by the standard deviation of its calibrated interval at "
+            f"{temperature_K:.2f} K, joined with {SCATTER:g} for the scatter of good measurements"
+        )
+    each = SIGMA_LN_GAMMA if sigma is None else sigma
+    return (
+        lambda _pair, _T, _x1: each,
+        f"equal weights, standard deviation {each:g} of every ln gamma",
     )
 
 
