@@ -27,12 +27,14 @@ from groups.equilibrium import (
     distribution_coefficients,
 )
 from groups.errors import MixwrightError
+from groups.prediction.liquid import liquid
 from groups.pure import vapour_pressure
 from groups.structure.assignment import assign
 from groups.structure.molecule import molecule_from_smiles
 
 FOLDER = Path(__file__).parents[1] / "reference" / "equilibrium"
 METHODS = (
+    "auto",
     "unifac",
     "unifac-lle",
     "unifac-dortmund",
@@ -80,21 +82,23 @@ def source(name: str) -> str:
 
 
 def built(smiles: list[str], method: str) -> System:
-    """A mixture by one table; raises where the table does not reach it."""
+    """A mixture by one table, or by the weighted choice; raises where it is out of reach."""
     molecules = [molecule_from_smiles(each) for each in smiles]
+    lines = tuple(vapour_pressure(each) for each in molecules)
+    if method == "auto":
+        return System(liquid(molecules, "auto", "estimate").model, lines)
     counts = [assign(each, method).counts for each in molecules]
-    model = activity_model(counts, method)
-    return System(model, tuple(vapour_pressure(each) for each in molecules))
+    return System(activity_model(counts, method), lines)
 
 
 def solubilities(method: str) -> Iterator[Comparison]:
     """Solubility of an organic liquid in water and of water in it, as ln of the ratio."""
     for row in rows("mutual_solubilities"):
         try:
-            liquid = built([row["smiles1"], "O"], method).activity
+            phases = built([row["smiles1"], "O"], method).activity
         except MixwrightError:
             continue
-        split = binary_split(liquid, float(row["temperature_K"]))
+        split = binary_split(phases, float(row["temperature_K"]))
         low, high = (None, None) if split is None else (float(split[0][0]), float(split[1][1]))
         name, said = row["name1"], row["source"]
         measured = float(row["x1_in_water"]), float(row["x_water_in_1"])
@@ -106,12 +110,12 @@ def consolutes(method: str) -> Iterator[Comparison]:
     """Consolute temperatures in K."""
     for row in rows("consolute_points"):
         try:
-            liquid = built([row["smiles1"], row["smiles2"]], method).activity
+            phases = built([row["smiles1"], row["smiles2"]], method).activity
         except MixwrightError:
             continue
         wanted = float(row["temperature_K"])
         points = [
-            p.temperature_K for p in consolute_points(liquid, *RANGE_K) if p.kind == row["kind"]
+            p.temperature_K for p in consolute_points(phases, *RANGE_K) if p.kind == row["kind"]
         ]
         best = min(points, key=lambda T: abs(T - wanted)) if points else None
         label = f"{row['name1']}/{row['name2']} ({row['kind']})"
@@ -161,7 +165,7 @@ def tie_lines(method: str) -> Iterator[Comparison]:
     for row in rows("tie_lines"):
         smiles = [row[f"smiles{k}"] for k in (1, 2, 3)]
         try:
-            liquid = built(smiles, method).activity
+            phases = built(smiles, method).activity
         except MixwrightError:
             continue
         mass = np.array([molecule_from_smiles(each).molar_mass_g_mol for each in smiles])
@@ -170,7 +174,7 @@ def tie_lines(method: str) -> Iterator[Comparison]:
             moles = np.array([float(row[f"{layer}_wt{k}"]) for k in (1, 2, 3)]) / mass
             layers.append(moles / moles.sum())
         feed = 0.5 * (layers[0] + layers[1])
-        found = distribution_coefficients(liquid, float(row["temperature_K"]), feed)
+        found = distribution_coefficients(phases, float(row["temperature_K"]), feed)
         value = float(found.coefficient[0, 0])
         if np.isfinite(value):
             water = found.liquids.liquids[0, :2, 1]
