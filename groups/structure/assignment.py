@@ -20,7 +20,7 @@ from rdkit import Chem
 from groups.parameters import table
 from groups.structure.cover import Candidate, blocks, cheapest_cover
 from groups.structure.functional import FunctionalGroup, functional_groups
-from groups.structure.matching import Matcher, with_published_aromaticity
+from groups.structure.matching import Matcher, with_amides, with_published_aromaticity
 from groups.structure.molecule import Molecule
 from groups.structure.patterns import PatternSet, pattern_set
 
@@ -147,7 +147,7 @@ class _ByStructure:
 @lru_cache(maxsize=_REMEMBERED)
 def _remembered(structure: _ByStructure, method: str) -> Assignment:
     matcher = _matcher(method)
-    mol = with_published_aromaticity(structure.mol)
+    mol = with_published_aromaticity(with_amides(structure.mol))
     chosen, alternatives, left = _covered(matcher, mol, shared=True)
     if left and matcher.shares_atoms:
         chosen, _, left = _covered(matcher, mol, shared=False)

@@ -10,6 +10,7 @@ from groups.structure.cover import Candidate
 from groups.structure.patterns import PatternSet, atom_kind
 
 _EXOCYCLIC = Chem.MolFromSmarts("a=*")
+_IMIDIC = Chem.MolFromSmarts("[N;X1,X2;+0]=[C;X3]-[O;X2;H1]")
 _MOST_REMEMBERED = 4_096
 
 
@@ -130,6 +131,30 @@ def kinds_of_atoms(mol: Chem.Mol) -> dict[int, list[int]]:
         else:
             kinds[kind] = [index]
     return kinds
+
+
+def with_amides(mol: Chem.Mol) -> Chem.Mol:
+    """The molecule with every imidic acid, N=C-OH, drawn as the amide it is; atoms in their order.
+
+    Amides are the stable tautomers by far, but structures generated from identifiers often show the
+    acid; the tables have groups for amides only. Aromatic rings, such as that of 2-hydroxypyridine,
+    stay as they are.
+    """
+    matches = mol.GetSubstructMatches(_IMIDIC)
+    if not matches:
+        return mol
+    redrawn = Chem.RWMol(mol)
+    met: set[int] = set()
+    for nitrogen, carbon, oxygen in matches:
+        if met.isdisjoint((nitrogen, carbon)):
+            met.update((nitrogen, carbon))
+            redrawn.GetBondBetweenAtoms(nitrogen, carbon).SetBondType(Chem.BondType.SINGLE)
+            redrawn.GetBondBetweenAtoms(carbon, oxygen).SetBondType(Chem.BondType.DOUBLE)
+            for index in (nitrogen, oxygen):
+                redrawn.GetAtomWithIdx(index).SetNoImplicit(False)
+                redrawn.GetAtomWithIdx(index).SetNumExplicitHs(0)
+    Chem.SanitizeMol(redrawn)
+    return redrawn.GetMol()
 
 
 def with_published_aromaticity(mol: Chem.Mol) -> Chem.Mol:

@@ -50,8 +50,11 @@ def atoms_held(mol: Chem.Mol, atoms: tuple[int, ...], share: Counter[int]) -> di
 
 
 def hold_balance(found: Assignment, molecule: Molecule) -> None:
-    """Every atom in one group or unassigned, and each group made of its own elements."""
-    mol, known = molecule.mol, formulas(found.method)
+    """Every atom in one group or unassigned, and each group made of its own elements.
+
+    An imidic acid is split as its amide, so its hydrogens are counted where the amide has them.
+    """
+    mol, known = matching.with_amides(molecule.mol), formulas(found.method)
     share = Counter(i for g in found.groups for atoms in g.atoms for i in atoms)
     assert set(share).isdisjoint(found.unassigned_atoms)
     assert set(share) | set(found.unassigned_atoms) == set(range(mol.GetNumAtoms()))

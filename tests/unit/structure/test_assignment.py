@@ -136,3 +136,11 @@ def test_a_chain_carbon_joins_the_heteroatom_before_a_ring_carbon(
     found = assign(molecule_from_smiles(smiles), "unifac-dortmund")
     assert found.counts == counts
     assert found.alternatives == ()
+
+
+@pytest.mark.parametrize("method", ["unifac", "unifac-dortmund", "psrk"])
+def test_either_tautomer_of_an_amide_has_the_groups_of_the_amide(method: str) -> None:
+    amide = assign(molecule_from_smiles("CC(N)=O"), method)
+    acid = assign(molecule_from_smiles("CC(O)=N"), method)
+    assert amide.complete
+    assert acid.counts == amide.counts

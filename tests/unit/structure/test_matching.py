@@ -6,7 +6,7 @@ from pathlib import Path
 import pytest
 from rdkit import Chem
 
-from groups.structure.matching import Matcher, with_published_aromaticity
+from groups.structure.matching import Matcher, with_amides, with_published_aromaticity
 from groups.structure.molecule import molecule_from_smiles
 from groups.structure.patterns import ASSIGNED_METHODS, pattern_set
 
@@ -53,3 +53,25 @@ def test_rings_without_a_double_bond_out_of_them_are_left_as_they_are(smiles: st
 def test_a_ring_with_a_carbonyl_group_is_not_aromatic() -> None:
     mol = with_published_aromaticity(molecule_from_smiles("O=c1ccc2ccccc2o1").mol)
     assert sum(atom.GetIsAromatic() for atom in mol.GetAtoms()) == 6
+
+
+@pytest.mark.parametrize(
+    ("acid", "amide"),
+    [
+        ("CC(O)=N", "CC(N)=O"),
+        ("CC(O)=NC", "CNC(C)=O"),
+        ("N=C(O)c1ccccc1", "NC(=O)c1ccccc1"),
+        ("OC1=NCCC1", "O=C1CCCN1"),
+        ("OC(=N)CCC(O)=N", "NC(=O)CCC(N)=O"),
+        ("[H]N=C(C)O[H]", "CC(N)=O"),
+    ],
+)
+def test_an_imidic_acid_is_taken_for_its_amide(acid: str, amide: str) -> None:
+    redrawn = with_amides(molecule_from_smiles(acid).mol)
+    assert Chem.MolToSmiles(redrawn) == molecule_from_smiles(amide).canonical_smiles
+
+
+@pytest.mark.parametrize("smiles", ["CC(N)=O", "CC(=N)OC", "CC(C)=NO", "Oc1ccccn1"])
+def test_what_is_no_imidic_acid_is_left_as_it_is(smiles: str) -> None:
+    mol = molecule_from_smiles(smiles).mol
+    assert with_amides(mol) is mol
