@@ -1,22 +1,25 @@
 """How probable azeotropes and liquid splits of binaries are, and where they lie.
 
-Every drawn liquid is looked at on one grid of compositions, evenly spaced in ln(x1/x2) so that
-nothing hides at the dilute ends. An azeotrope lies where the relative volatility crosses one; a
-liquid splits where ln(a1/a2) falls.
+Every drawn liquid is looked at along `groups.prediction.composition_line`. An azeotrope lies where
+the relative volatility crosses one; a liquid splits where ln(a1/a2) falls. Where the crossing lies
+in the gap of a draw that splits, the azeotrope is the vapour over both liquids.
 """
 
 from dataclasses import dataclass
 
 import numpy as np
+from scipy.special import expit, logit
 
-from groups.arrays import BoolArray, FloatArray
+from groups.arrays import BoolArray, FloatArray, IntArray
 from groups.confidence import Interval
 from groups.equilibrium import bubble_pressure, bubble_temperature
 from groups.equilibrium.states import log_sum_exp, safe_log
 from groups.equilibrium.system import System
 from groups.prediction.bands import LEVEL, Drawn
+from groups.prediction.composition_line import GRID, coexisting
 
-GRID = 1.0 / (1.0 + np.exp(-np.linspace(-9.0, 9.0, 361)))  # x1 from 1.2e-4 to 1 - 1.2e-4
+LOGIT = logit(GRID)
+GAP_PASSES = 3  # the gap and its temperature, in turn
 # Fewer draws than this with an azeotrope or a split tell nothing of where it lies.
 LEAST_DRAWS = 20
 
@@ -39,6 +42,19 @@ class SplitChance:
     probability: float
     x1_lower: Interval | None
     x1_upper: Interval | None
+
+
+@dataclass(frozen=True, slots=True)
+class DrawnLine:
+    """Every draw along `GRID`: ln alpha, and ln P (kPa) or 1/T (1/K), (n_samples, n_grid).
+
+    `offset`, (n_samples or 1, n_grid), is ln alpha less ln(gamma1/gamma2) at the temperatures
+    where the prediction itself boils.
+    """
+
+    ln_alpha: FloatArray
+    level: FloatArray
+    offset: FloatArray
 
 
 def azeotrope_chance(
@@ -66,18 +82,18 @@ def azeotrope_chance(
     -------
     AzeotropeChance
     """
-    ln_alpha, level = drawn_ln_alpha(drawn, system, components, temperature_K, pressure_kPa)
-    return _found(components, ln_alpha, level, temperature_K, pressure_kPa)
+    line = drawn_line(drawn, system, components, temperature_K, pressure_kPa)
+    return _found(components, line, temperature_K, pressure_kPa)
 
 
-def drawn_ln_alpha(
+def drawn_line(
     drawn: Drawn,
     system: System,
     components: tuple[int, int],
     temperature_K: float | None,
     pressure_kPa: float | None,
-) -> tuple[FloatArray, FloatArray]:
-    """ln of the relative volatility along `GRID`, and ln P (kPa) or 1/T (1/K), for every draw.
+) -> DrawnLine:
+    """Relative volatility and boiling pressure or temperature along `GRID`, for every draw.
 
     Parameters
     ----------
@@ -89,7 +105,8 @@ def drawn_ln_alpha(
 
     Returns
     -------
-    tuple of FloatArray of shape (n_samples, n_grid)
+    DrawnLine
+        NaN where no liquid of the line boils at the condition.
     """
     first, second = components
     liquid = np.zeros((len(GRID), system.n_components))
@@ -100,11 +117,11 @@ def drawn_ln_alpha(
         temperatures, saturation = _boiling(system, liquid, temperature_K, pressure_kPa)
         if not np.isfinite(temperatures).all():
             unknown = np.full((len(drawn.shift), len(GRID)), np.nan)
-            return unknown, unknown
+            return DrawnLine(unknown, unknown, unknown)
     if saturation is None:
         saturation = system.ln_saturation(temperatures)
-    ln_volatility = drawn.models.ln_gamma(temperatures, liquid)
-    ln_volatility = ln_volatility + saturation + drawn.shift[:, None, :]
+    ln_gamma = drawn.models.ln_gamma(temperatures, liquid)
+    ln_volatility = ln_gamma + saturation + drawn.shift[:, None, :]
     slopes = system.ln_volatility_slope(temperatures, liquid)
     ln_P = log_sum_exp(safe_log(liquid) + ln_volatility)
     inverse = np.broadcast_to(1.0 / temperatures, ln_P.shape)
@@ -116,27 +133,29 @@ def drawn_ln_alpha(
     step = temperatures**2 * (1.0 / temperatures - inverse)
     ln_alpha = ln_volatility[..., first] - ln_volatility[..., second]
     ln_alpha = ln_alpha + (slopes[:, first] - slopes[:, second]) * step
-    return ln_alpha, ln_P if temperature_K is not None else inverse
+    level = ln_P if temperature_K is not None else inverse
+    return DrawnLine(ln_alpha, level, ln_alpha - ln_gamma[..., first] + ln_gamma[..., second])
 
 
-def nearest_to_azeotrope(ln_alpha: FloatArray) -> FloatArray:
+def nearest_to_azeotrope(ln_alpha: FloatArray, offset: FloatArray) -> FloatArray:
     """x1 where each draw has its azeotrope, or comes nearest to one.
 
     Parameters
     ----------
     ln_alpha : FloatArray of shape (n_samples, n_grid)
         Along `GRID`.
+    offset : FloatArray of shape (1, n_grid)
+        As in `DrawnLine`.
 
     Returns
     -------
     FloatArray of shape (n_samples,)
     """
-    crossing: BoolArray = np.signbit(ln_alpha[:, 1:]) != np.signbit(ln_alpha[:, :-1])
+    crossing = _crossing(ln_alpha)
     nearest: FloatArray = GRID[np.abs(ln_alpha).argmin(axis=1)]
     rows = np.flatnonzero(crossing.any(axis=1))
-    k = crossing.argmax(axis=1)[rows]
-    left, right = ln_alpha[rows, k], ln_alpha[rows, k + 1]
-    nearest[rows] = GRID[k] + left / (left - right) * (GRID[k + 1] - GRID[k])
+    some = DrawnLine(ln_alpha[rows], ln_alpha[rows], offset)
+    nearest[rows], _ = _places(some, crossing.argmax(axis=1)[rows])
     return nearest
 
 
@@ -157,6 +176,8 @@ def _boiling(
         return found, None
     places = np.arange(len(found))
     temperatures: FloatArray = np.interp(places, known, found[known])
+    if temperature_K is None:
+        temperatures = _level_gap(system, liquid, temperatures)
     if system.vapour.ideal:
         return temperatures, None
     correction = system.vapour.ln_correction(
@@ -166,33 +187,75 @@ def _boiling(
     return temperatures, system.ln_saturation(temperatures) - np.stack(filled, axis=-1)
 
 
+def _level_gap(system: System, liquid: FloatArray, temperatures: FloatArray) -> FloatArray:
+    """Temperatures along the line, that of both liquids over the gap where the prediction splits.
+
+    A single liquid there would boil tens of kelvin lower, too far from where anything happens.
+    """
+    first, second = liquid[-1].argmax(), liquid[0].argmax()
+    level = temperatures
+    for _ in range(GAP_PASSES):
+        ln_gamma = system.activity.ln_gamma(level, liquid)
+        ratio = ln_gamma[:, first] - ln_gamma[:, second] + LOGIT
+        falls = np.diff(ratio) < 0.0
+        if not falls.any():
+            return level
+        [left], [right] = coexisting(ratio[None], np.array([falls.argmax()]))
+        level = temperatures.copy()
+        level[left : right + 1] = (temperatures[left] + temperatures[right]) / 2.0
+    return level
+
+
 def _found(
     components: tuple[int, int],
-    ln_alpha: FloatArray,
-    level: FloatArray,
+    line: DrawnLine,
     temperature_K: float | None,
     pressure_kPa: float | None,
 ) -> AzeotropeChance:
-    """First crossing of each draw; `level` is ln P (kPa) or 1/T (1/K) along the grid."""
-    crossing: BoolArray = np.signbit(ln_alpha[:, 1:]) != np.signbit(ln_alpha[:, :-1])
+    """First crossing of each draw."""
+    crossing = _crossing(line.ln_alpha)
     has = crossing.any(axis=1)
     probability = float(has.mean())
     if has.sum() < LEAST_DRAWS:
         return AzeotropeChance(components, probability, None, None, None)
-    rows, k = np.flatnonzero(has), crossing.argmax(axis=1)[has]
-    left, right = ln_alpha[rows, k], ln_alpha[rows, k + 1]
-    share = left / (left - right)
-    x1 = GRID[k] + share * (GRID[k + 1] - GRID[k])
-    at = level[rows, k] + share * (level[rows, k + 1] - level[rows, k])
+    some = DrawnLine(line.ln_alpha[has], line.level[has], line.offset[has])
+    x1, at = _places(some, crossing.argmax(axis=1)[has])
     temperature = None if temperature_K is not None else _interval(1.0 / at)
     pressure = None if pressure_kPa is not None else _interval(np.exp(at))
     return AzeotropeChance(components, probability, _interval(x1), temperature, pressure)
 
 
-def split_chance(drawn: Drawn, temperature_K: float) -> SplitChance:
-    """Probability of a liquid split of a binary and the ends of its unstable range.
+def _crossing(ln_alpha: FloatArray) -> BoolArray:
+    """Between which neighbours on the grid the volatilities change places."""
+    crossing: BoolArray = np.signbit(ln_alpha[:, 1:]) != np.signbit(ln_alpha[:, :-1])
+    return crossing
 
-    The ends told are those of the coexisting liquids, by the rule of equal areas under ln(a1/a2).
+
+def _places(line: DrawnLine, crossing: IntArray) -> tuple[FloatArray, FloatArray]:
+    """x1 and level of the azeotrope of every draw, which all have one after place `crossing`."""
+    ln_alpha, level = line.ln_alpha, line.level
+    rows = np.arange(len(ln_alpha))
+    before, after = ln_alpha[rows, crossing], ln_alpha[rows, crossing + 1]
+    share = before / (before - after)
+    x1 = GRID[crossing] + share * (GRID[crossing + 1] - GRID[crossing])
+    at = level[rows, crossing] + share * (level[rows, crossing + 1] - level[rows, crossing])
+    ln_activity_ratio = ln_alpha - line.offset + LOGIT
+    two = np.flatnonzero((np.diff(ln_activity_ratio, axis=1) < 0.0).any(axis=1))
+    if two.size:
+        left, right = coexisting(ln_activity_ratio[two], crossing[two])
+        wide = right - left > 1
+        two, left, right = two[wide], left[wide], right[wide]
+        # Either component's share of the vapour from the liquid that is rich in it: both add up
+        # to one but for the steps of the grid.
+        first = expit(ln_alpha[two, right] + LOGIT[right])
+        second = expit(-ln_alpha[two, left] - LOGIT[left])
+        x1[two] = first / (first + second)
+        at[two] = (level[two, left] + level[two, right]) / 2.0
+    return x1, at
+
+
+def split_chance(drawn: Drawn, temperature_K: float) -> SplitChance:
+    """Probability of a liquid split of a binary, and the two liquids.
 
     Parameters
     ----------
@@ -212,31 +275,9 @@ def split_chance(drawn: Drawn, temperature_K: float) -> SplitChance:
     probability = float(splits.mean())
     if splits.sum() < LEAST_DRAWS:
         return SplitChance(probability, None, None)
-    ends = np.array([_equal_areas(row) for row in difference[splits]])
-    return SplitChance(probability, _interval(ends[:, 0]), _interval(ends[:, 1]))
-
-
-def _equal_areas(difference: FloatArray) -> tuple[float, float]:
-    """x1 of the coexisting liquids: the lower convex hull of the energy of mixing.
-
-    The energy is the integral of ln(a1/a2) over x1; its hull touches at both liquids.
-    """
-    steps = (difference[1:] + difference[:-1]) / 2.0 * np.diff(GRID)
-    energy = np.concatenate([[0.0], np.cumsum(steps)])
-    hull: list[int] = []
-    for k in range(len(GRID)):
-        while len(hull) > 1 and _above(energy, hull[-2], hull[-1], k):
-            hull.pop()
-        hull.append(k)
-    gaps = np.diff(hull)
-    widest = int(gaps.argmax())
-    return float(GRID[hull[widest]]), float(GRID[hull[widest + 1]])
-
-
-def _above(energy: FloatArray, a: int, b: int, c: int) -> bool:
-    """Whether point b lies on or above the line from a to c."""
-    rise = (energy[c] - energy[a]) * (GRID[b] - GRID[a])
-    return bool((energy[b] - energy[a]) * (GRID[c] - GRID[a]) >= rise)
+    falls = (np.diff(difference[splits], axis=1) < 0.0).argmax(axis=1)
+    left, right = coexisting(difference[splits], falls)
+    return SplitChance(probability, _interval(GRID[left]), _interval(GRID[right]))
 
 
 def _interval(values: FloatArray) -> Interval:

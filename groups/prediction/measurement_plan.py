@@ -1,6 +1,7 @@
 """What to measure to settle an azeotrope or a relative volatility of one mixture."""
 
 from collections.abc import Sequence
+from functools import partial
 from itertools import combinations, permutations
 from typing import Literal
 
@@ -15,7 +16,7 @@ from groups.errors import InvalidInputError, PredictionError
 from groups.prediction.answers import MeasurementPlan, PlannedMeasurement
 from groups.prediction.bands import Drawn
 from groups.prediction.boiling_mixture import BoilingMixture, boiling_mixture
-from groups.prediction.chances import GRID, drawn_ln_alpha, nearest_to_azeotrope
+from groups.prediction.chances import drawn_line, nearest_to_azeotrope
 from groups.prediction.checks import (
     check_components,
     check_fractions,
@@ -24,6 +25,7 @@ from groups.prediction.checks import (
     check_temperatures,
 )
 from groups.prediction.component import Component
+from groups.prediction.composition_line import GRID
 from groups.prediction.greedy_plan import (
     BOILING_NOISE,
     DILUTE_NOISE,
@@ -78,9 +80,10 @@ def measurement_plan(
         raise PredictionError("No table describes this mixture, so there is no doubt to shrink.")
     trials = _trials(mixture, drawn, T)
     if question == "azeotrope":
-        ln_alpha, _ = drawn_ln_alpha(drawn, mixture.system, (0, 1), temperature_K, pressure_kPa)
-        there = int(np.abs(GRID - np.median(nearest_to_azeotrope(ln_alpha))).argmin())
-        place = Question("x1 of the azeotrope", ln_alpha, nearest_to_azeotrope, there)
+        line = drawn_line(drawn, mixture.system, (0, 1), temperature_K, pressure_kPa)
+        where = partial(nearest_to_azeotrope, offset=line.offset.mean(axis=0, keepdims=True))
+        there = int(np.abs(GRID - np.median(where(line.ln_alpha))).argmin())
+        place = Question("x1 of the azeotrope", line.ln_alpha, where, there)
         return greedy_plan(place, trials)
     first, second = (label(component.molecule) for component in components[:2])
     name = f"ln of the relative volatility of {first} over {second}"
