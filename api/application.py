@@ -12,7 +12,9 @@ from api.openapi_description import describe
 from api.problems import add_problem_handlers
 from api.routers import (
     activity,
+    comparisons,
     diagrams,
+    fits,
     measurement_plans,
     methods,
     molecules,
@@ -59,6 +61,8 @@ def create_app(settings: Settings | None = None) -> FastAPI:
         diagrams,
         separations,
         measurement_plans,
+        fits,
+        comparisons,
         pages,
     ):
         app.include_router(module.router)

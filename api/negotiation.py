@@ -7,7 +7,15 @@ from fastapi import Request
 
 from api.problem_types import RequestProblemError
 
-MediaType = Literal["application/json", "text/csv", "image/svg+xml", "image/png", "text/html"]
+MediaType = Literal[
+    "application/json",
+    "text/csv",
+    "text/plain",
+    "text/html",
+    "application/xml",
+    "image/svg+xml",
+    "image/png",
+]
 
 
 def choose(accept: str | None, offered: Sequence[MediaType]) -> MediaType:

@@ -17,7 +17,7 @@ from groups.prediction.answers import DiagramAnswer
 from groups.structure.molecule import Molecule
 
 # One drawing at a time: matplotlib's font cache is shared and not safe between threads.
-_drawing = threading.Lock()
+drawing = threading.Lock()
 matplotlib.rcParams["svg.hashsalt"] = "mixwright"  # the same diagram gives the same bytes
 
 _LIQUID = "#12355b"
@@ -48,7 +48,7 @@ def diagram_picture(answer: DiagramAnswer, file_format: Literal["svg", "png"]) -
     bytes
         The file. Where the liquid splits, the homogeneous curve is left out and the gap is marked.
     """
-    with _drawing:
+    with drawing:
         figure = Figure(figsize=(7.2, 6.0), layout="constrained")
         axes = figure.add_subplot()
         _draw_bands(axes, answer)
@@ -56,10 +56,11 @@ def diagram_picture(answer: DiagramAnswer, file_format: Literal["svg", "png"]) -
         _draw_azeotropes(axes, answer.diagram)
         _tell_chance(axes, answer)
         _label(figure, axes, answer)
-        return _file(figure, file_format)
+        return picture_file(figure, file_format)
 
 
-def _file(figure: Figure, file_format: Literal["svg", "png"]) -> bytes:
+def picture_file(figure: Figure, file_format: Literal["svg", "png"]) -> bytes:
+    """The bytes of a figure, the same each time."""
     target = io.BytesIO()
     metadata = {"Date": None, "Creator": "Mixwright"} if file_format == "svg" else {}
     figure.savefig(target, format=file_format, dpi=150, metadata=metadata)

@@ -31,4 +31,9 @@ def picture_as(media: MediaType, content: str | bytes) -> Response:
     return Response(content, media_type=media, headers=_VARY)
 
 
+def text_as(media: MediaType, content: str) -> Response:
+    """A text, such as a sheet, a table or an XML document."""
+    return Response(content, media_type=f"{media}; charset=utf-8", headers=_VARY)
+
+
 _VARY = {"Vary": "Accept"}

@@ -23,3 +23,7 @@ class Settings(BaseSettings):
     max_pairs: int = Field(default=50_000, ge=1, description="Solute/solvent pairs in a request.")
     max_points: int = Field(default=20_000, ge=1, description="Points of activity coefficients.")
     max_grid_points: int = Field(default=1_001, ge=2, description="Points of one diagram.")
+    max_fit_values: int = Field(
+        default=20_000, ge=1, description="Temperatures times compositions times pairs of a fit."
+    )
+    max_measurements: int = Field(default=1_000, ge=1, description="Points of one comparison.")

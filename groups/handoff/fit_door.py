@@ -59,7 +59,10 @@ class FitAnswer:
     method : str
         The table whose prediction was fitted.
     methods_used : tuple of TableWeight
-    temperature_range_K : tuple of float
+    prediction : LiquidModel
+        What was fitted.
+    temperatures_K, compositions : FloatArray of shape (t,) and (m,)
+        The grid of each pair.
     pressure_kPa : float or None
         At which azeotropes were compared.
     fit : MixtureFit
@@ -79,7 +82,9 @@ class FitAnswer:
     components: tuple[Molecule, ...]
     method: str
     methods_used: tuple[TableWeight, ...]
-    temperature_range_K: tuple[float, float]
+    prediction: LiquidModel
+    temperatures_K: FloatArray
+    compositions: FloatArray
     pressure_kPa: float | None
     fit: MixtureFit
     parameters: ParameterSet | None
@@ -89,6 +94,11 @@ class FitAnswer:
     weighting: str
     notes: tuple[FitNote, ...]
     confidence: Confidence
+
+    @property
+    def temperature_range_K(self) -> tuple[float, float]:
+        """Lowest and highest temperature of the fit, K."""
+        return float(self.temperatures_K[0]), float(self.temperatures_K[-1])
 
 
 @dataclass(frozen=True, slots=True)
@@ -201,7 +211,9 @@ def fit(
         named,
         mixture.method,
         mixture.methods_used,
-        (float(T[0]), float(T[-1])),
+        mixture.model,
+        T,
+        x1,
         pressure_kPa,
         found,
         sheet,

@@ -20,12 +20,14 @@ ABOVE = {
         "equilibrium",
         "confidence",
         "prediction",
+        "handoff",
     },
-    "structure": {"activity", "pure", "equilibrium", "confidence", "prediction"},
-    "activity": {"pure", "equilibrium", "confidence", "prediction"},
-    "pure": {"activity", "equilibrium", "confidence", "prediction"},
-    "equilibrium": {"confidence", "prediction"},
-    "confidence": {"prediction"},
+    "structure": {"activity", "pure", "equilibrium", "confidence", "prediction", "handoff"},
+    "activity": {"pure", "equilibrium", "confidence", "prediction", "handoff"},
+    "pure": {"activity", "equilibrium", "confidence", "prediction", "handoff"},
+    "equilibrium": {"confidence", "prediction", "handoff"},
+    "confidence": {"prediction", "handoff"},
+    "prediction": {"handoff"},
 }
 
 

@@ -60,7 +60,10 @@ def read_csv(
     if not lines:
         raise TooFewPointsError("The text holds no header and no point.", given=0, needed=1)
     separator = max(",;\t", key=lines[0].count)
-    rows = list(csv.DictReader(io.StringIO("\n".join(lines)), delimiter=separator))
+    try:
+        rows = list(csv.DictReader(io.StringIO("\n".join(lines)), delimiter=separator))
+    except csv.Error as error:
+        raise MeasurementError(f"The text is no CSV: {error}.", field="points") from error
     wrong = [k for k, row in enumerate(rows) if None in row or None in row.values()]
     if wrong:
         raise MeasurementError(
