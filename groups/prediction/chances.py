@@ -49,12 +49,14 @@ class DrawnLine:
     """Every draw along `GRID`: ln alpha, and ln P (kPa) or 1/T (1/K), (n_samples, n_grid).
 
     `offset`, (n_samples or 1, n_grid), is ln alpha less ln(gamma1/gamma2) at the temperatures
-    where the prediction itself boils.
+    where the prediction itself boils. `steepness`, (n_samples, n_grid), is -d ln P / d(1/T) in K
+    where the level is 1/T, and 1 where it is ln P.
     """
 
     ln_alpha: FloatArray
     level: FloatArray
     offset: FloatArray
+    steepness: FloatArray
 
 
 def azeotrope_chance(
@@ -117,7 +119,7 @@ def drawn_line(
         temperatures, saturation = _boiling(system, liquid, temperature_K, pressure_kPa)
         if not np.isfinite(temperatures).all():
             unknown = np.full((len(drawn.shift), len(GRID)), np.nan)
-            return DrawnLine(unknown, unknown, unknown)
+            return DrawnLine(unknown, unknown, unknown, unknown)
     if saturation is None:
         saturation = system.ln_saturation(temperatures)
     ln_gamma = drawn.models.ln_gamma(temperatures, liquid)
@@ -125,16 +127,17 @@ def drawn_line(
     slopes = system.ln_volatility_slope(temperatures, liquid)
     ln_P = log_sum_exp(safe_log(liquid) + ln_volatility)
     inverse = np.broadcast_to(1.0 / temperatures, ln_P.shape)
+    steepness = np.ones_like(ln_P)
     if pressure_kPa is not None:
         weight = np.exp(safe_log(liquid) + ln_volatility - ln_P[..., None])
-        inverse = inverse - (np.log(pressure_kPa) - ln_P) / (
-            np.sum(weight * slopes, axis=-1) * temperatures**2
-        )
+        steepness = np.sum(weight * slopes, axis=-1) * temperatures**2
+        inverse = inverse - (np.log(pressure_kPa) - ln_P) / steepness
     step = temperatures**2 * (1.0 / temperatures - inverse)
     ln_alpha = ln_volatility[..., first] - ln_volatility[..., second]
     ln_alpha = ln_alpha + (slopes[:, first] - slopes[:, second]) * step
     level = ln_P if temperature_K is not None else inverse
-    return DrawnLine(ln_alpha, level, ln_alpha - ln_gamma[..., first] + ln_gamma[..., second])
+    offset = ln_alpha - ln_gamma[..., first] + ln_gamma[..., second]
+    return DrawnLine(ln_alpha, level, offset, steepness)
 
 
 def nearest_to_azeotrope(ln_alpha: FloatArray, offset: FloatArray) -> FloatArray:
@@ -154,7 +157,7 @@ def nearest_to_azeotrope(ln_alpha: FloatArray, offset: FloatArray) -> FloatArray
     crossing = _crossing(ln_alpha)
     nearest: FloatArray = GRID[np.abs(ln_alpha).argmin(axis=1)]
     rows = np.flatnonzero(crossing.any(axis=1))
-    some = DrawnLine(ln_alpha[rows], ln_alpha[rows], offset)
+    some = DrawnLine(ln_alpha[rows], ln_alpha[rows], offset, np.ones_like(ln_alpha[rows]))
     nearest[rows], _ = _places(some, crossing.argmax(axis=1)[rows])
     return nearest
 
@@ -218,7 +221,7 @@ def _found(
     probability = float(has.mean())
     if has.sum() < LEAST_DRAWS:
         return AzeotropeChance(components, probability, None, None, None)
-    some = DrawnLine(line.ln_alpha[has], line.level[has], line.offset[has])
+    some = DrawnLine(line.ln_alpha[has], line.level[has], line.offset[has], line.steepness[has])
     x1, at = _places(some, crossing.argmax(axis=1)[has])
     temperature = None if temperature_K is not None else _interval(1.0 / at)
     pressure = None if pressure_kPa is not None else _interval(np.exp(at))
@@ -245,12 +248,13 @@ def _places(line: DrawnLine, crossing: IntArray) -> tuple[FloatArray, FloatArray
         left, right = coexisting(ln_activity_ratio[two], crossing[two])
         wide = right - left > 1
         two, left, right = two[wide], left[wide], right[wide]
-        # Either component's share of the vapour from the liquid that is rich in it: both add up
-        # to one but for the steps of the grid.
+        # Either component's partial pressure is that over the liquid rich in it. Both make up the
+        # pressure but for the steps of the grid, by which the level is mended.
         first = expit(ln_alpha[two, right] + LOGIT[right])
         second = expit(-ln_alpha[two, left] - LOGIT[left])
         x1[two] = first / (first + second)
-        at[two] = (level[two, left] + level[two, right]) / 2.0
+        both = x1[two] * level[two, right] + (1.0 - x1[two]) * level[two, left]
+        at[two] = both + np.log(first + second) / line.steepness[two, right]
     return x1, at
 
 
