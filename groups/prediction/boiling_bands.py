@@ -175,7 +175,7 @@ def _first_drops(
         gap = np.where(right == left, 1.0, right - left)
         crossed = own[:-1, None] + (at - left) / gap * (own[1:] - own[:-1])[:, None]
         outside = np.where(at < y.min(), own[y.argmin()], own[y.argmax()])
-        highest = np.max(np.where(between, crossed, -np.inf), axis=0)
+        highest = np.max(np.where(between, crossed, -np.inf), axis=0, initial=-np.inf)
         read[k] = np.where(between.any(axis=0), highest, outside)
     found: FloatArray = sign * read
     return found
