@@ -34,7 +34,7 @@ BOILING_NOISE = 0.005  # ln P of a pure boiling point, about 0.15 K
 MOST_MEASUREMENTS = 4
 LEAST_GAIN = 0.02  # a measurement that shrinks the width by a smaller share is not worth naming
 WORTH_ALONE = 0.05  # below this share of the width a measurement is looked at with a second one
-N_TRUTHS = 40  # draws that are each taken for the truth once
+N_TRUTHS = 40  # draws, evenly spread, that are each taken for the truth once
 USED_UP = 1e-24  # product of variances (ln units) below which nothing but rounding is left
 
 
@@ -160,6 +160,8 @@ def _interval(values: FloatArray) -> tuple[float, float]:
 
 def _expected_width(question: Question, rest: FloatArray) -> float:
     """Mean width of the interval around every draw taken for the truth, in the question's unit."""
-    known = (question.drawn - rest)[:N_TRUTHS]  # what the measurements tell of each truth
-    ends = [_interval(question.answer(rest + one)) for one in known]
+    known = question.drawn - rest  # what the measurements tell of each draw, were it the truth
+    order = np.argsort(known[:, question.followed])
+    truths = order[((np.arange(N_TRUTHS) + 0.5) / N_TRUTHS * len(order)).astype(int)]
+    ends = [_interval(question.answer(rest + one)) for one in known[truths]]
     return float(np.mean([upper - lower for lower, upper in ends]))
