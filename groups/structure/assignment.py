@@ -246,4 +246,4 @@ def _explained(structure: _ByStructure, left: tuple[int, ...], method: str) -> s
 @lru_cache(maxsize=_REMEMBERED)
 def _functional_groups(structure: _ByStructure) -> tuple[FunctionalGroup, ...]:
     """Remembered, since a molecule is often asked for by several methods."""
-    return functional_groups(structure.mol)
+    return functional_groups(with_amides(structure.mol))

@@ -144,3 +144,9 @@ def test_either_tautomer_of_an_amide_has_the_groups_of_the_amide(method: str) ->
     acid = assign(molecule_from_smiles("CC(O)=N"), method)
     assert amide.complete
     assert acid.counts == amide.counts
+
+
+def test_an_uncovered_imidic_acid_is_named_as_its_amide() -> None:
+    found = assign(molecule_from_smiles("CC(O)=Nc1ccccc1"), "unifac")
+    assert not found.complete
+    assert found.explanation == "The table of unifac has no group for: secondary amide."
