@@ -2,6 +2,7 @@
 
 from collections import defaultdict
 from collections.abc import Mapping, Sequence
+from functools import lru_cache
 
 import numpy as np
 
@@ -31,6 +32,7 @@ from groups.prediction.checks import check_components, check_temperatures
 from groups.prediction.choosing import Choice, choose, weighted_choice
 from groups.prediction.liquid import liquid
 from groups.prediction.mixture_reasons import choice_evidence, mixture_reasons
+from groups.structure.assignment import assign
 from groups.structure.molecule import Molecule
 
 DilutePair = tuple[Molecule, Molecule, float]
@@ -164,23 +166,20 @@ def _numbers_by_method(
     numbers = {}
     for method, indices in rows.items():
         column = np.full(len(pairs), np.nan)
-        counts = [_counts(choices[k], method) for k in indices]
         column[indices] = ln_gamma_infinite_pairs(
             method,
-            [solute for solute, _ in counts],
-            [solvent for _, solvent in counts],
+            [_counts(pairs[k][0], method) for k in indices],
+            [_counts(pairs[k][1], method) for k in indices],
             np.array([pairs[k][2] for k in indices]),
         )
         numbers[method] = column
     return numbers
 
 
-def _counts(
-    choice: Choice | PredictionError, method: str
-) -> tuple[Mapping[int, int], Mapping[int, int]]:
-    assert isinstance(choice, Choice)
-    solute, solvent = choice.counts(method)
-    return solute, solvent
+@lru_cache(maxsize=100_000)
+def _counts(molecule: Molecule, method: str) -> Mapping[int, int]:
+    """Subgroup counts; one object a molecule, which the batch is quick to tell apart."""
+    return assign(molecule, method).counts
 
 
 def _answered(
