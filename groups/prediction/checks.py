@@ -22,7 +22,21 @@ SUM_TOLERANCE = 1e-6
 
 
 def check_components(molecules: Sequence[Molecule], *, least: int = 1, most: int = 20) -> None:
-    """Refuse too few or too many components and any given twice."""
+    """Refuse too few or too many components and any given twice.
+
+    Parameters
+    ----------
+    molecules : sequence of Molecule
+    least, most : int
+        Allowed number of components.
+
+    Raises
+    ------
+    ShapeError
+        If there are too few or too many.
+    DuplicateComponentError
+        If a molecule stands twice.
+    """
     if not least <= len(molecules) <= most:
         allowed = f"{least} to {most}" if least < most else f"exactly {least}"
         raise ShapeError(
@@ -38,17 +52,60 @@ def check_components(molecules: Sequence[Molecule], *, least: int = 1, most: int
 
 
 def check_temperatures(temperature_K: ArrayLike) -> FloatArray:
-    """Temperatures as a float array, each finite and within `TEMPERATURE_RANGE_K`."""
+    """Temperatures as a float array, each finite and within `TEMPERATURE_RANGE_K`.
+
+    Parameters
+    ----------
+    temperature_K : array_like, K
+        One or many.
+
+    Returns
+    -------
+    FloatArray of shape (n,)
+
+    Raises
+    ------
+    OutOfRangeError
+        For the first value outside; NaN and infinities are outside.
+    ShapeError
+        If there is none.
+    """
     return _check_range("temperature_K", temperature_K, TEMPERATURE_RANGE_K)
 
 
 def check_pressures(pressure_kPa: ArrayLike) -> FloatArray:
-    """Pressures as a float array, each finite and within `PRESSURE_RANGE_KPA`."""
+    """Pressures as a float array, each finite and within `PRESSURE_RANGE_KPA`.
+
+    Parameters
+    ----------
+    pressure_kPa : array_like, kPa
+        One or many.
+
+    Returns
+    -------
+    FloatArray of shape (n,)
+
+    Raises
+    ------
+    OutOfRangeError
+        For the first value outside; NaN and infinities are outside.
+    ShapeError
+        If there is none.
+    """
     return _check_range("pressure_kPa", pressure_kPa, PRESSURE_RANGE_KPA)
 
 
 def check_one_of(temperature_K: float | None, pressure_kPa: float | None) -> None:
-    """Refuse both or neither of temperature and pressure."""
+    """Refuse both or neither of temperature and pressure.
+
+    Parameters
+    ----------
+    temperature_K, pressure_kPa : float or None
+
+    Raises
+    ------
+    InvalidInputError
+    """
     if (temperature_K is None) == (pressure_kPa is None):
         raise InvalidInputError(
             "Exactly one of 'temperature_K' and 'pressure_kPa' must be given. Got "
@@ -60,7 +117,23 @@ def check_one_of(temperature_K: float | None, pressure_kPa: float | None) -> Non
 
 
 def check_fractions(mole_fractions: ArrayLike, n_components: int) -> FloatArray:
-    """Mole fractions of shape (n_points, n_components), each 0..1, each row summing to one."""
+    """Mole fractions of shape (n_points, n_components), each 0..1, each row summing to one.
+
+    Parameters
+    ----------
+    mole_fractions : array_like of shape (n_points, n_components) or (n_components,)
+    n_components : int
+
+    Returns
+    -------
+    FloatArray of shape (n_points, n_components)
+        Rows that sum to one exactly.
+
+    Raises
+    ------
+    ShapeError, OutOfRangeError, FractionSumError
+        With the `field` as the sender wrote it.
+    """
     try:
         given = np.asarray(mole_fractions, dtype=float)
     except ValueError as error:
