@@ -329,8 +329,19 @@ def azeotropes(answer: answers.AzeotropeAnswer) -> AzeotropesResponse:
 def liquid_split(answer: answers.LiquidSplitAnswer) -> LiquidSplitResponse:
     """The coexisting liquids."""
     phases = [
-        LiquidPhase(mole_fractions=x.tolist(), ln_gamma=ln_gamma.tolist())
-        for x, ln_gamma in zip(answer.phases, answer.ln_gamma, strict=True)
+        LiquidPhase(
+            mole_fractions=x.tolist(),
+            ln_gamma=ln_gamma.tolist(),
+            fraction=share,
+            distribution=numbers(ratio),
+        )
+        for x, ln_gamma, share, ratio in zip(
+            answer.phases,
+            answer.ln_gamma,
+            answer.fractions or [None] * len(answer.phases),
+            answer.distribution,
+            strict=True,
+        )
     ]
     return LiquidSplitResponse(
         components=identities(answer.components),
@@ -340,6 +351,7 @@ def liquid_split(answer: answers.LiquidSplitAnswer) -> LiquidSplitResponse:
         splits=answer.splits,
         phases=phases,
         chance=None if answer.chance is None else split_chance(answer.chance),
+        failure=answer.failure,
         confidence=confidence(answer.confidence),
         cautions=cautions(),
     )

@@ -21,6 +21,7 @@ from api.schemas.activity import (
     InfiniteDilutionResponse,
     Pair,
 )
+from api.schemas.comparisons import ComparisonRequest, ComparisonResponse
 from api.schemas.equilibrium import (
     AzeotropesRequest,
     AzeotropesResponse,
@@ -32,6 +33,15 @@ from api.schemas.equilibrium import (
     PhasePointResponse,
     PointRequest,
 )
+from api.schemas.fits import FitRequest, FitResponse
+from api.schemas.gas_solubility import GasSolubilityRequest, GasSolubilityResponse
+from api.schemas.liquid_regions import (
+    MutualSolubilitiesRequest,
+    MutualSolubilitiesResponse,
+    TernaryDiagramRequest,
+    TernaryDiagramResponse,
+)
+from api.schemas.measurement_plan import MeasurementPlanRequest, MeasurementPlanResponse
 from api.schemas.molecule import (
     DepictionRequest,
     MoleculeInput,
@@ -41,6 +51,7 @@ from api.schemas.molecule import (
 )
 from api.schemas.prediction import OnMissing
 from api.schemas.problem import Problem
+from api.schemas.residue_curves import ResidueCurvesRequest, ResidueCurvesResponse
 from api.schemas.service import Health, MethodDetail, MethodsResponse, Readiness
 
 Answer = TypeVar("Answer", bound=BaseModel)
@@ -138,13 +149,16 @@ class MixwrightClient:
         *,
         method: str = "auto",
         on_missing: OnMissing = "estimate",
+        level: float | None = None,
     ) -> InfiniteDilutionResponse:
-        """Limits of (solute, solvent, temperature_K) triples."""
+        """Limits of (solute, solvent, temperature_K) triples; `level` asks for a second interval."""
         asked = [
             Pair(solute=molecule_input(u), solvent=molecule_input(v), temperature_K=T)
             for u, v, T in pairs
         ]
-        request = InfiniteDilutionRequest(pairs=asked, method=method, on_missing=on_missing)
+        request = InfiniteDilutionRequest(
+            pairs=asked, method=method, on_missing=on_missing, level=level
+        )
         return self._post("/v1/infinite-dilution", request, InfiniteDilutionResponse)
 
     def bubble_point(
@@ -282,6 +296,132 @@ class MixwrightClient:
             on_missing=on_missing,
         )
         return self._post("/v1/liquid-splits", request, LiquidSplitResponse)
+
+    def fit(self, request: FitRequest) -> FitResponse:
+        """An equation fitted to the prediction of a mixture."""
+        return self._post("/v1/fits", request, FitResponse)
+
+    def fit_sheet(self, request: FitRequest) -> str:
+        """The parameter sheet of a fit, as a text to read."""
+        return self._send("/v1/fits", request, "text/plain").text
+
+    def predicted_thermoml(self, request: FitRequest) -> str:
+        """The data that a fit stands on, as ThermoML."""
+        return self._send("/v1/fits", request, "application/xml").text
+
+    def compare(self, request: ComparisonRequest) -> ComparisonResponse:
+        """Measured points tested, compared with every model, and used to narrow the prediction."""
+        return self._post("/v1/comparisons", request, ComparisonResponse)
+
+    def comparison_picture(self, request: ComparisonRequest) -> bytes:
+        """A comparison as PNG."""
+        return self._send("/v1/comparisons", request, "image/png").content
+
+    def mutual_solubilities(
+        self,
+        components: Sequence[MoleculeLike],
+        *,
+        lowest_K: float,
+        highest_K: float,
+        points: int = 21,
+        method: str = "auto",
+        on_missing: OnMissing = "estimate",
+    ) -> MutualSolubilitiesResponse:
+        """What two liquids dissolve of each other, and their consolute points."""
+        request = MutualSolubilitiesRequest(
+            components=_molecules(components),
+            lowest_K=lowest_K,
+            highest_K=highest_K,
+            points=points,
+            method=method,
+            on_missing=on_missing,
+        )
+        return self._post("/v1/mutual-solubilities", request, MutualSolubilitiesResponse)
+
+    def ternary_diagram(
+        self,
+        components: Sequence[MoleculeLike],
+        *,
+        temperature_K: float,
+        tie_lines: int = 15,
+        method: str = "auto",
+        on_missing: OnMissing = "estimate",
+    ) -> TernaryDiagramResponse:
+        """Two-liquid regions of a ternary."""
+        request = TernaryDiagramRequest(
+            components=_molecules(components),
+            temperature_K=temperature_K,
+            tie_lines=tie_lines,
+            method=method,
+            on_missing=on_missing,
+        )
+        return self._post("/v1/ternary-diagrams", request, TernaryDiagramResponse)
+
+    def residue_curves(
+        self,
+        components: Sequence[MoleculeLike],
+        *,
+        pressure_kPa: float,
+        starts: Sequence[Sequence[float]] | None = None,
+        method: str = "auto",
+        on_missing: OnMissing = "estimate",
+        vapour: Vapour = "auto",
+    ) -> ResidueCurvesResponse:
+        """Paths of an open still, nodes, saddles and boundaries of a ternary."""
+        request = ResidueCurvesRequest(
+            components=_molecules(components),
+            pressure_kPa=pressure_kPa,
+            starts=None if starts is None else [list(start) for start in starts],
+            method=method,
+            on_missing=on_missing,
+            vapour=vapour,
+        )
+        return self._post("/v1/residue-curves", request, ResidueCurvesResponse)
+
+    def gas_solubility(
+        self,
+        gas: MoleculeLike,
+        solvents: Sequence[MoleculeLike],
+        *,
+        temperature_K: float | Sequence[float],
+        pressure_kPa: float = 101.325,
+        solvent_mole_fractions: Sequence[float] | None = None,
+    ) -> GasSolubilityResponse:
+        """Henry's constant and solubility of a gas."""
+        single = isinstance(temperature_K, (int, float))
+        request = GasSolubilityRequest(
+            gas=molecule_input(gas),
+            solvents=_molecules(solvents),
+            temperature_K=[temperature_K] if single else list(temperature_K),  # type: ignore[list-item, arg-type]
+            pressure_kPa=pressure_kPa,
+            solvent_mole_fractions=None
+            if solvent_mole_fractions is None
+            else list(solvent_mole_fractions),
+        )
+        return self._post("/v1/gas-solubility", request, GasSolubilityResponse)
+
+    def measurement_plan(
+        self,
+        components: Sequence[MoleculeLike],
+        question: Literal["azeotrope", "relative_volatility", "ranking"],
+        *,
+        mole_fractions: Sequence[float] | None = None,
+        temperature_K: float | None = None,
+        pressure_kPa: float | None = None,
+        solvents: Sequence[MoleculeLike] | None = None,
+        on_missing: OnMissing = "estimate",
+    ) -> MeasurementPlanResponse:
+        """The few measurements that shrink the doubt about a question most."""
+        request = MeasurementPlanRequest(
+            components=_molecules(components),
+            question=question,
+            mole_fractions=None if mole_fractions is None else list(mole_fractions),
+            temperature_K=temperature_K,
+            pressure_kPa=pressure_kPa,
+            solvents=None if solvents is None else _molecules(solvents),
+            on_missing=on_missing,
+        )
+        return self._post("/v1/measurement-plan", request, MeasurementPlanResponse)
 
     def _get(self, path: str, kind: type[Answer]) -> Answer:
         return kind.model_validate_json(_checked(self._http.get(path)).content)

@@ -71,15 +71,19 @@ def _outcomes(fields: Sequence[tuple[str, MoleculeInput]]) -> list[Molecule | Re
 
 def components_of(given: Sequence[MoleculeInput]) -> list[Component]:
     """The components of a mixture, with the user's vapour pressures."""
-    molecules = molecules_of([(f"/components/{k}", value) for k, value in enumerate(given)])
+    return components_at([(f"/components/{k}", value) for k, value in enumerate(given)])
+
+
+def components_at(fields: Sequence[tuple[str, MoleculeInput]]) -> list[Component]:
+    """The same from any fields; `fields` pairs the JSON pointer of each with what was given."""
     return [
         Component(
             molecule,
             None
             if value.vapour_pressure is None
-            else own_vapour_pressure(value.vapour_pressure, f"/components/{k}/vapour_pressure"),
+            else own_vapour_pressure(value.vapour_pressure, f"{field}/vapour_pressure"),
         )
-        for k, (molecule, value) in enumerate(zip(molecules, given, strict=True))
+        for molecule, (field, value) in zip(molecules_of(fields), fields, strict=True)
     ]
 
 

@@ -11,6 +11,10 @@ from api.negotiation import MediaType
 Answer = TypeVar("Answer", bound=BaseModel)
 
 CSV_ALSO = {"text/csv": "as CSV with `Accept: text/csv`"}
+PICTURE_ALSO = {
+    "image/svg+xml": "drawn with `Accept: image/svg+xml`",
+    "image/png": "or `image/png`",
+}
 
 
 def answer_as(

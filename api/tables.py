@@ -35,7 +35,8 @@ def _cell(value: Cell) -> Cell:
     return value
 
 
-def _trust(confidence: Confidence) -> list[Cell]:
+def trust_cells(confidence: Confidence) -> list[Cell]:
+    """Grade and codes of the reasons."""
     return [confidence.grade, " ".join(reason.code for reason in confidence.reasons)]
 
 
@@ -48,10 +49,11 @@ def _smiles(molecule: MoleculeIdentity | None) -> str | None:
     return None if molecule is None else molecule.canonical_smiles
 
 
-_TRUST = ["grade", "reasons"]
+TRUST = ["grade", "reasons"]
 
 
-def _numbered(name: str, count: int) -> list[str]:
+def numbered(name: str, count: int) -> list[str]:
+    """Column names from 1 on."""
     return [f"{name}_{k}" for k in range(1, count + 1)]
 
 
@@ -85,14 +87,14 @@ def activity_csv(answer: ActivityResponse) -> str:
     n = len(answer.components)
     header = [
         "temperature_K",
-        *_numbered("x", n),
-        *_numbered("gamma", n),
-        *_numbered("ln_gamma", n),
-        *_numbered("ln_gamma_lower", n),
-        *_numbered("ln_gamma_upper", n),
+        *numbered("x", n),
+        *numbered("gamma", n),
+        *numbered("ln_gamma", n),
+        *numbered("ln_gamma_lower", n),
+        *numbered("ln_gamma_upper", n),
         "excess_gibbs_RT",
         "excess_enthalpy_J_mol",
-        *_TRUST,
+        *TRUST,
     ]
     nothing: list[Cell] = [None] * n
     rows = (
@@ -105,7 +107,7 @@ def activity_csv(answer: ActivityResponse) -> str:
             *(point.ln_gamma_upper or nothing),
             point.excess_gibbs_RT,
             point.excess_enthalpy_J_mol,
-            *_trust(point.confidence),
+            *trust_cells(point.confidence),
         ]
         for point in answer.points
     )
@@ -124,11 +126,11 @@ def infinite_dilution_csv(answer: InfiniteDilutionResponse) -> str:
             result.gamma_inf,
             result.method,
             *_ends(result.confidence),
-            *_trust(result.confidence),
+            *trust_cells(result.confidence),
         ]
         for result in answer.results
     )
-    return csv_text([*header, "method", "lower_90", "upper_90", *_TRUST], rows)
+    return csv_text([*header, "method", "lower_90", "upper_90", *TRUST], rows)
 
 
 def phase_point_csv(answer: PhasePointResponse) -> str:
@@ -162,11 +164,11 @@ def phase_point_csv(answer: PhasePointResponse) -> str:
             answer.vapour_fraction,
             answer.method,
             *_ends(answer.confidence),
-            *_trust(answer.confidence),
+            *trust_cells(answer.confidence),
         ]
         for component, *values in columns
     )
-    return csv_text([*header.split(","), *_TRUST], rows)
+    return csv_text([*header.split(","), *TRUST], rows)
 
 
 def diagram_csv(answer: DiagramResponse) -> str:
@@ -196,9 +198,9 @@ def diagram_csv(answer: DiagramResponse) -> str:
         answer.stable,
         strict=True,
     )
-    trust = _trust(answer.confidence)
+    trust = trust_cells(answer.confidence)
     return csv_text(
-        [*header.split(","), "method", *_TRUST], ([*row, answer.method, *trust] for row in rows)
+        [*header.split(","), "method", *TRUST], ([*row, answer.method, *trust] for row in rows)
     )
 
 
@@ -213,11 +215,11 @@ def azeotropes_csv(answer: AzeotropesResponse) -> str:
             found.pressure_kPa,
             *found.mole_fractions,
             answer.method,
-            *_trust(answer.confidence),
+            *trust_cells(answer.confidence),
         ]
         for found in answer.azeotropes
     )
-    return csv_text([*header, *_numbered("x", len(answer.components)), "method", *_TRUST], rows)
+    return csv_text([*header, *numbered("x", len(answer.components)), "method", *TRUST], rows)
 
 
 def liquid_split_csv(answer: LiquidSplitResponse) -> str:
@@ -226,11 +228,15 @@ def liquid_split_csv(answer: LiquidSplitResponse) -> str:
         [
             index,
             answer.temperature_K,
+            phase.fraction,
             *phase.mole_fractions,
+            *phase.distribution,
             answer.method,
-            *_trust(answer.confidence),
+            *trust_cells(answer.confidence),
         ]
         for index, phase in enumerate(answer.phases, start=1)
     )
-    header = ["liquid", "temperature_K", *_numbered("x", len(answer.components))]
-    return csv_text([*header, "method", *_TRUST], rows)
+    n = len(answer.components)
+    header = ["liquid", "temperature_K", "fraction", *numbered("x", n)]
+    header += numbered("distribution", n)
+    return csv_text([*header, "method", *TRUST], rows)

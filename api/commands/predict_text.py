@@ -1,5 +1,6 @@
 """Predictions as text: the numbers, where they come from, the doubts, the cautions."""
 
+from api.commands import interval_text
 from api.commands.text import aligned, cautions_text, doubts, named, wrapped
 from api.schemas.activity import ActivityResponse, InfiniteDilutionResponse
 from api.schemas.equilibrium import (
@@ -20,10 +21,18 @@ def point_text(answer: PhasePointResponse) -> str:
         for component, *values in zip(answer.components, *columns, strict=True)
     ]
     header = ["component", "x", "y", "gamma", "Psat / kPa", "rel. volatility"]
+    if answer.relative_volatility_lower is not None:
+        header.append("90 % interval")
+        widths = interval_text.column(
+            answer.relative_volatility_lower, answer.relative_volatility_upper, len(rows)
+        )
+        rows = [[*row, width] for row, width in zip(rows, widths, strict=True)]
     state = f"T = {_shown(answer.temperature_K)} K, P = {_shown(answer.pressure_kPa)} kPa"
     if answer.vapour_fraction not in (None, 0.0, 1.0):
         state += f", vapour fraction {answer.vapour_fraction:.4f}"
     lines = [state, aligned(header, rows)]
+    if answer.confidence.interval_90 is not None:
+        lines.insert(1, _sought(answer))
     if answer.failure:
         lines.append(wrapped(answer.failure, "Not converged: "))
     if len(answer.phases) > 1 and answer.liquid_stable is False:
@@ -31,6 +40,16 @@ def point_text(answer: PhasePointResponse) -> str:
     elif answer.liquid_stable is False:
         lines.append("This liquid would split in two: the state shown is not stable.")
     return _with_doubts("\n".join(lines), answer, doubts(answer.confidence))
+
+
+def _sought(answer: PhasePointResponse) -> str:
+    """The interval, of the temperature or of the pressure: that in the middle of which it lies."""
+    found = answer.confidence.interval_90
+    assert found is not None
+    middle = (found.lower + found.upper) / 2.0
+    values = {"K": answer.temperature_K, "kPa": answer.pressure_kPa}
+    away = {unit: abs(value - middle) for unit, value in values.items() if value is not None}
+    return interval_text.sought(answer.confidence, min(away, key=lambda unit: away[unit]))
 
 
 def _phases_table(answer: PhasePointResponse) -> str:
@@ -44,6 +63,7 @@ def _phases_table(answer: PhasePointResponse) -> str:
 def diagram_text(answer: DiagramResponse) -> str:
     """A diagram as a table of at most 21 rows."""
     step = max(1, (len(answer.x1) - 1) // 20)
+    symbol, levels = _level_intervals(answer)
     kept = sorted({*range(0, len(answer.x1), step), len(answer.x1) - 1})
     rows = [
         [
@@ -52,15 +72,19 @@ def diagram_text(answer: DiagramResponse) -> str:
             answer.temperature_K[k],
             answer.pressure_kPa[k],
             answer.relative_volatility[k],
+            levels[k],
             "" if answer.stable[k] else "two liquids",
         ]
         for k in kept
     ]
-    header = ["x1", "y1", "T / K", "P / kPa", "rel. volatility", ""]
+    header = ["x1", "y1", "T / K", "P / kPa", "rel. volatility", f"90 % interval of {symbol}", ""]
     lines = [f"1 = {named(answer.components[0])}, 2 = {named(answer.components[1])}"]
     lines += [aligned(header, rows), *map(_azeotrope_line, answer.azeotropes)]
     if not answer.azeotropes:
         lines.append("No azeotrope.")
+    if answer.azeotrope_chance is not None:
+        names = [component.name or component.canonical_smiles for component in answer.components]
+        lines.append(interval_text.azeotrope_line(answer.azeotrope_chance, names))
     if answer.liquid_split is not None:
         split = answer.liquid_split
         lines.append(
@@ -70,12 +94,25 @@ def diagram_text(answer: DiagramResponse) -> str:
     return _with_doubts("\n".join(lines), answer, doubts(answer.confidence))
 
 
+def _level_intervals(answer: DiagramResponse) -> tuple[str, list[str]]:
+    """T or P, whichever varies, and its intervals."""
+    count = len(answer.x1)
+    known = [value for value in answer.pressure_kPa if value is not None]
+    if known and min(known) == max(known):
+        return "T", interval_text.column(
+            answer.temperature_K_lower, answer.temperature_K_upper, count
+        )
+    return "P", interval_text.column(answer.pressure_kPa_lower, answer.pressure_kPa_upper, count)
+
+
 def azeotropes_text(answer: AzeotropesResponse) -> str:
     """All azeotropes."""
     order = ", ".join(f"{k} = {named(c)}" for k, c in enumerate(answer.components, start=1))
     lines = [order, *map(_azeotrope_line, answer.azeotropes)]
     if not answer.azeotropes:
         lines.append("No azeotrope.")
+    names = [component.name or component.canonical_smiles for component in answer.components]
+    lines += [interval_text.azeotrope_line(chance, names) for chance in answer.chances]
     return _with_doubts("\n".join(lines), answer, doubts(answer.confidence))
 
 
@@ -87,8 +124,14 @@ def split_text(answer: LiquidSplitResponse) -> str:
         names = [named(component) for component in answer.components]
         columns = [phase.mole_fractions for phase in answer.phases]
         rows = [[name, *values] for name, *values in zip(names, *columns, strict=True)]
+        shares = [phase.fraction for phase in answer.phases]
+        if None not in shares:
+            rows.insert(0, ["moles in a mole", *shares])
         header = ["component", *(f"liquid {k}" for k in range(1, len(columns) + 1))]
-        body = f"Two liquids at {answer.temperature_K:g} K.\n" + aligned(header, rows)
+        count = "Two" if len(columns) == 2 else "Three"
+        body = f"{count} liquids at {answer.temperature_K:g} K.\n" + aligned(header, rows)
+    chance = interval_text.split_line(answer.chance)
+    body = "\n".join(part for part in (body, chance) if part)
     return _with_doubts(body, answer, doubts(answer.confidence))
 
 
@@ -101,7 +144,9 @@ def activity_text(answer: ActivityResponse) -> str:
             answer.components, point.mole_fractions, point.gamma, point.ln_gamma, strict=True
         )
     ]
-    body = aligned(["component", "x", "gamma", "ln gamma"], rows)
+    widths = interval_text.column(point.ln_gamma_lower, point.ln_gamma_upper, len(rows))
+    rows = [[*row, width] for row, width in zip(rows, widths, strict=True)]
+    body = aligned(["component", "x", "gamma", "ln gamma", "90 % interval"], rows)
     excess = f"gE/RT = {_shown(point.excess_gibbs_RT)}, hE = "
     body += f"\n{excess}{_shown(point.excess_enthalpy_J_mol)} J/mol at {point.temperature_K:g} K"
     return _with_doubts(body, answer, doubts(point.confidence))
@@ -109,18 +154,23 @@ def activity_text(answer: ActivityResponse) -> str:
 
 def dilution_text(answer: InfiniteDilutionResponse) -> str:
     """Limits of every component in every other."""
+    level = next((r.interval.level for r in answer.results if r.interval is not None), None)
     rows = [
         [
             named(result.solute),
             named(result.solvent),
             result.ln_gamma_inf,
+            interval_text.interval(result.confidence.interval_90),
+            *([] if level is None else [interval_text.interval(result.interval)]),
             result.gamma_inf,
             result.method or "none",
             result.confidence.grade,
         ]
         for result in answer.results
     ]
-    header = ["solute", "in solvent", "ln gamma inf", "gamma inf", "method", "confidence"]
+    asked = [] if level is None else [f"{100.0 * level:g} % interval"]
+    header = ["solute", "in solvent", "ln gamma inf", "90 % interval", *asked]
+    header += ["gamma inf", "method", "confidence"]
     worst = [
         f"{named(result.solute)} in {named(result.solvent)}\n{doubts(result.confidence)}"
         for result in answer.results

@@ -29,9 +29,14 @@ _AZEOTROPE_EXAMPLES: dict[str, Any] = {
     }
 }
 _SPLIT_EXAMPLES: dict[str, Any] = {
-    "1-butanol/water at 25 °C": {
-        "value": {"components": ["CCCCO", "O"], "temperature_K": 298.15, "method": "unifac-lle"}
-    }
+    "1-butanol/water at 25 °C": {"value": {"components": ["CCCCO", "O"], "temperature_K": 298.15}},
+    "a feed of water, benzene and ethanol at 25 °C": {
+        "value": {
+            "components": ["O", "c1ccccc1", "CCO"],
+            "mole_fractions": [0.45, 0.35, 0.2],
+            "temperature_K": 298.15,
+        }
+    },
 }
 
 
@@ -63,7 +68,7 @@ def find_azeotropes(
 @router.post(
     "/liquid-splits",
     operation_id="find_liquid_split",
-    summary="Does the liquid split in two, and into which",
+    summary="Does the liquid split, and into which liquids",
     response_model=LiquidSplitResponse,
     responses=post_responses(*MIXTURE_PROBLEMS, also=CSV_ALSO),
 )
@@ -72,7 +77,7 @@ def find_liquid_split(
     media: _json_or_csv,
     settings: SettingsDependency,
 ) -> Response:
-    """The coexisting liquids at one temperature."""
+    """The coexisting liquids, their amounts and distribution coefficients, at one temperature."""
     check_length("components", len(request.components), settings.max_components)
     answer = prediction.liquid_splits(
         components_of(request.components),

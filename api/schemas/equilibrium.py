@@ -181,6 +181,13 @@ class LiquidPhase(StrictModel):
 
     mole_fractions: list[float]
     ln_gamma: list[float]
+    fraction: float | None = Field(
+        description="Moles of this liquid in a mole of mixture; null where no overall composition "
+        "was given"
+    )
+    distribution: list[float | None] = Field(
+        description="Mole fraction of each component here over that in the first liquid"
+    )
 
 
 class SplitChance(StrictModel):
@@ -196,6 +203,7 @@ class LiquidSplitResponse(PredictionResponse):
 
     temperature_K: float
     splits: bool
-    phases: list[LiquidPhase]
+    phases: list[LiquidPhase] = Field(description="The poorest in the first component first")
     chance: SplitChance | None = Field(description="Of a binary")
+    failure: str | None
     confidence: Confidence

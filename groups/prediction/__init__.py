@@ -18,11 +18,16 @@ from groups.prediction.choosing import ALL_METHODS
 from groups.prediction.component import Component
 from groups.prediction.diagrams import diagram
 from groups.prediction.flashes import flash
+from groups.prediction.gas_solubilities import GasSolubilityAnswer, gas_solubility
 from groups.prediction.infinite_dilution import infinite_dilution
+from groups.prediction.liquid_splits import liquid_splits
 from groups.prediction.measurement_plan import measurement_plan
+from groups.prediction.mutual_solubilities import MutualSolubilityAnswer, mutual_solubilities
 from groups.prediction.phase_points import bubble_point, dew_point
 from groups.prediction.ranking_plan import ranking_plan
-from groups.prediction.special_points import azeotropes, liquid_splits
+from groups.prediction.residue_maps import ResidueMapAnswer, residue_curves
+from groups.prediction.special_points import azeotropes
+from groups.prediction.ternary_diagrams import TernaryDiagramAnswer, ternary_diagram
 
 __all__ = [
     "ALL_METHODS",
@@ -32,12 +37,16 @@ __all__ = [
     "AzeotropeChance",
     "Component",
     "DiagramAnswer",
+    "GasSolubilityAnswer",
     "InfiniteDilutionAnswer",
     "LiquidSplitAnswer",
     "MeasurementPlan",
+    "MutualSolubilityAnswer",
     "PhasePointAnswer",
     "PlannedMeasurement",
+    "ResidueMapAnswer",
     "SplitChance",
+    "TernaryDiagramAnswer",
     "activity_coefficients",
     "assign_groups",
     "azeotropes",
@@ -45,8 +54,12 @@ __all__ = [
     "dew_point",
     "diagram",
     "flash",
+    "gas_solubility",
     "infinite_dilution",
     "liquid_splits",
     "measurement_plan",
+    "mutual_solubilities",
     "ranking_plan",
+    "residue_curves",
+    "ternary_diagram",
 ]

@@ -86,7 +86,7 @@ class PhasePointAnswer:
 
 @dataclass(frozen=True, slots=True)
 class LiquidSplitAnswer:
-    """Two liquids in equilibrium at one temperature, or none (`phases` empty)."""
+    """Liquids in equilibrium at one temperature, or none (`phases` empty)."""
 
     components: tuple[Molecule, ...]
     method: str
@@ -95,7 +95,10 @@ class LiquidSplitAnswer:
     splits: bool
     phases: tuple[FloatArray, ...]  # compositions (n_components,) of the coexisting liquids
     ln_gamma: tuple[FloatArray, ...]
+    fractions: tuple[float, ...] | None  # moles of each liquid; None without an overall composition
+    distribution: tuple[FloatArray, ...]  # mole fraction in each liquid over that in the first
     chance: SplitChance | None  # of a binary
+    failure: str | None
     confidence: Confidence
 
 
