@@ -138,8 +138,12 @@ def _dilution(given: argparse.Namespace, components: list[Component]) -> _Outcom
     molecules = [component.molecule for component in components]
     temperature = _temperature(given)
     pairs = [(u, v, temperature) for u in molecules for v in molecules if u is not v]
-    found = prediction.infinite_dilution(pairs, **_choice(given))
-    return answers.infinite_dilution(found), dilution_text, tables.infinite_dilution_csv
+    found = prediction.infinite_dilution(pairs, level=given.level, **_choice(given))
+    return (
+        answers.infinite_dilution(found, given.level),
+        dilution_text,
+        tables.infinite_dilution_csv,
+    )
 
 
 _COMMANDS: dict[str, Callable[[argparse.Namespace, list[Component]], _Outcome]] = {
