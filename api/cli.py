@@ -1,4 +1,4 @@
-"""The command line: `mixwright serve`, `predict`, `groups`, `methods`, `demo`.
+"""The command line: `mixwright serve`, `predict`, `fit`, `compare`, `groups`, ...
 
 Exit status: 0 done; 2 the input is at fault; 3 no method gives the number; 1 anything else.
 """
@@ -22,7 +22,7 @@ def main(arguments: Sequence[str] | None = None) -> int:
         print(f"{kind.title}.\n  {error}\n  {error.cure or kind.cure}", file=sys.stderr)
         return 3 if isinstance(error, PredictionError) else 2
     except OSError as error:
-        print(f"A file cannot be written or a port opened.\n  {error}", file=sys.stderr)
+        print(f"A file cannot be read or written, or a port opened.\n  {error}", file=sys.stderr)
         return 1
     if text:
         try:
@@ -43,6 +43,9 @@ def parser() -> argparse.ArgumentParser:
     commands = top.add_subparsers(required=True, metavar="COMMAND")
     _add_serve(commands.add_parser("serve", help="start the HTTP service"))
     _add_predict(commands.add_parser("predict", help="predict one mixture"))
+    _add_fit(commands.add_parser("fit", help="parameters for a flowsheet, from the prediction"))
+    _add_compare(commands.add_parser("compare", help="measured points against every model"))
+    _add_plan(commands.add_parser("plan", help="what to measure to settle a question"))
     _add_groups(commands.add_parser("groups", help="split a molecule into groups"))
     _add_methods(commands.add_parser("methods", help="list the methods, or show one"))
     _add_demo(commands.add_parser("demo", help="a worked example, with diagrams as files"))
@@ -62,6 +65,13 @@ def _port(text: str) -> int:
     if not 0 <= port <= 65535:
         raise argparse.ArgumentTypeError(f"{port} is no port; give one from 1 to 65535")
     return port
+
+
+def _level(text: str) -> float:
+    level = float(text)
+    if not 0.01 <= level <= 0.99:
+        raise argparse.ArgumentTypeError(f"{text} is no probability from 0.01 to 0.99")
+    return level
 
 
 def _workers(text: str) -> int:
@@ -112,6 +122,9 @@ def _add_predict(command: argparse.ArgumentParser) -> None:
         default="auto",
         help="ideal or real vapour (default: real where the mixture needs it)",
     )
+    command.add_argument(
+        "--level", type=_level, help="probability of a second interval with --what dilution"
+    )
     command.add_argument("--what", choices=WHAT, help="what to predict")
     command.add_argument("--method", default="auto", help="see `mixwright methods`")
     command.add_argument(
@@ -132,6 +145,27 @@ def _add_predict(command: argparse.ArgumentParser) -> None:
     shape.add_argument("--json", action="store_true", help="print the whole answer as JSON")
     shape.add_argument("--csv", action="store_true", help="print the table as CSV")
     command.set_defaults(run=_predict)
+
+
+def _add_fit(command: argparse.ArgumentParser) -> None:
+    from api.commands.hand_over_options import add_fit
+
+    add_fit(command)
+    command.set_defaults(run=_fit)
+
+
+def _add_compare(command: argparse.ArgumentParser) -> None:
+    from api.commands.hand_over_options import add_compare
+
+    add_compare(command, _picture(".svg", ".png"))
+    command.set_defaults(run=_compare)
+
+
+def _add_plan(command: argparse.ArgumentParser) -> None:
+    from api.commands.plan_options import add_plan
+
+    add_plan(command)
+    command.set_defaults(run=_plan)
 
 
 def _add_groups(command: argparse.ArgumentParser) -> None:
@@ -169,6 +203,24 @@ def _predict(given: argparse.Namespace) -> str:
     from api.commands.predict import predict
 
     return predict(given)
+
+
+def _fit(given: argparse.Namespace) -> str:
+    from api.commands.fit import fit
+
+    return fit(given)
+
+
+def _compare(given: argparse.Namespace) -> str:
+    from api.commands.compare import compare
+
+    return compare(given)
+
+
+def _plan(given: argparse.Namespace) -> str:
+    from api.commands.plan import plan
+
+    return plan(given)
 
 
 def _groups(given: argparse.Namespace) -> str:

@@ -151,7 +151,7 @@ class MixwrightClient:
         on_missing: OnMissing = "estimate",
         level: float | None = None,
     ) -> InfiniteDilutionResponse:
-        """Limits of (solute, solvent, temperature_K) triples; `level` asks for a second interval."""
+        """Limits of (solute, solvent, temperature_K) triples; `level`: of a second interval."""
         asked = [
             Pair(solute=molecule_input(u), solvent=molecule_input(v), temperature_K=T)
             for u, v, T in pairs

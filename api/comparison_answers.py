@@ -32,8 +32,6 @@ from groups.handoff.comparisons import ComparedModel as GroupsModel
 from groups.handoff.correlations import CORRELATIONS
 from groups.handoff.thermoml import read_thermoml
 from groups.prediction import ALL_METHODS, Component
-from groups.prediction.checks import check_components, check_pressures, check_temperatures
-from groups.prediction.diagrams import POINTS_RANGE
 from groups.prediction.vapours import VapourUsed
 
 
@@ -50,8 +48,6 @@ class Compared:
 def compared(request: ComparisonRequest, most_points: int) -> Compared:
     """The comparison that a request asks for."""
     components = components_of(request.components)
-    check_components([one.molecule for one in components], least=2, most=2)
-    _check_diagram(request)
     points, notes = _points(request, components)
     if points.n_points > most_points:
         raise InvalidInputError(
@@ -82,25 +78,6 @@ def compared(request: ComparisonRequest, most_points: int) -> Compared:
     return Compared(answer, conditioned, None if vapour is None else vapour[1], notes)
 
 
-def _check_diagram(request: ComparisonRequest) -> None:
-    if request.pressure_kPa is not None and request.temperature_K is not None:
-        raise InvalidInputError(
-            "A diagram has one pressure or one temperature, not both.",
-            cure="Give 'pressure_kPa' or 'temperature_K', or neither.",
-            field="pressure_kPa",
-        )
-    if request.pressure_kPa is not None:
-        check_pressures(request.pressure_kPa)
-    if request.temperature_K is not None:
-        check_temperatures(request.temperature_K)
-    if not POINTS_RANGE[0] <= request.diagram_points <= POINTS_RANGE[1]:
-        raise InvalidInputError(
-            f"'diagram_points' must lie between {POINTS_RANGE[0]} and {POINTS_RANGE[1]}.",
-            cure="Give a number of points in this range.",
-            field="diagram_points",
-        )
-
-
 def _given(request: ComparisonRequest) -> str:
     return next(n for n in ("points", "csv", "thermoml") if getattr(request, n) is not None)
 
@@ -108,7 +85,7 @@ def _given(request: ComparisonRequest) -> str:
 def _points(
     request: ComparisonRequest, components: list[Component]
 ) -> tuple[handoff.Measurements, tuple[str, ...]]:
-    first, second = (one.molecule for one in components)
+    first, second = components[0].molecule, components[1].molecule
     masses = (first.molar_mass_g_mol, second.molar_mass_g_mol)
     units = handoff.Units(**request.units.model_dump())
     try:

@@ -124,11 +124,7 @@ def _diagram(axes: Axes, answer: ComparisonAnswer, found: Conditioned) -> None:
     axes.plot(before.x1, _level(found.before, found.kind), ":", color="black", lw=1.5)
     axes.plot(after.x1, _level(found.after, found.kind), "-", color=_LIQUID, lw=1.8)
     axes.plot(after.y1, _level(found.after, found.kind), "--", color=_VAPOUR, lw=1.6)
-    points = answer.measurements.vapour_liquid
-    if _fits_condition(answer, found):
-        level = points.temperature_K if found.kind == "Txy" else points.pressure_kPa
-        axes.plot(points.x1, level, "o", color="black", ms=6, zorder=5)
-        axes.plot(points.y1, level, "s", color="black", mfc="white", ms=6, mew=1.4, zorder=5)
+    marks = _diagram_points(axes, answer, found)
     axes.set_xlim(0.0, 1.0)
     axes.set_xlabel(f"Mole fraction of {_name(answer, 0)}", parse_math=False)
     axes.set_ylabel("Temperature / K" if found.kind == "Txy" else "Pressure / kPa")
@@ -137,8 +133,7 @@ def _diagram(axes: Axes, answer: ComparisonAnswer, found: Conditioned) -> None:
         (Line2D([], [], ls=":", color="black", lw=1.5), "Liquid, predicted before"),
         (Line2D([], [], ls="-", color=_LIQUID, lw=1.8), "Liquid, with the points"),
         (Line2D([], [], ls="--", color=_VAPOUR, lw=1.6), "Vapour, with the points"),
-        (Line2D([], [], ls="none", marker="o", color="black"), "Measured liquid"),
-        (Line2D([], [], ls="none", marker="s", color="black", mfc="white"), "Measured vapour"),
+        *marks,
     ]
     axes.legend(
         [*handles, *(line for line, _ in extra)],
@@ -147,6 +142,25 @@ def _diagram(axes: Axes, answer: ComparisonAnswer, found: Conditioned) -> None:
         framealpha=0.92,
     )
     _tidy(axes, "Before and after the points")
+
+
+def _diagram_points(
+    axes: Axes, answer: ComparisonAnswer, found: Conditioned
+) -> list[tuple[Line2D, str]]:
+    """Measured liquids and vapours at the diagram's condition, and their entries in the legend."""
+    if not _fits_condition(answer, found):
+        return []
+    points = answer.measurements.vapour_liquid
+    level = points.temperature_K if found.kind == "Txy" else points.pressure_kPa
+    marks = []
+    for at, mark, face, words in (
+        (points.x1, "o", "black", "liquid"),
+        (points.y1, "s", "white", "vapour"),
+    ):
+        if np.isfinite(at).any():
+            [line] = axes.plot(at, level, mark, color="black", mfc=face, ms=6, mew=1.4, zorder=5)
+            marks.append((line, f"Measured {words}"))
+    return marks
 
 
 def _level(one: UncertainDiagram, kind: str) -> FloatArray:

@@ -34,14 +34,16 @@ from groups.confidence.calibration.samples import MARGULES
 from groups.equilibrium import Diagram, System
 from groups.equilibrium import diagram as solve_diagram
 from groups.equilibrium.system import SaturationLine
-from groups.errors import PredictionError
+from groups.errors import InvalidInputError, OutOfRangeError, PredictionError
 from groups.handoff.comparisons import ComparisonAnswer, Measurements, Observations
 from groups.handoff.comparisons.observations import QUANTITIES, LnGamma
 from groups.prediction.bands import SEED, Drawn
 from groups.prediction.boiling_bands import BoilingBands, KnownStates, bubble_bands
 from groups.prediction.boiling_mixture import BoilingMixture, boiling_mixture
 from groups.prediction.chances import AzeotropeChance, azeotrope_chance
+from groups.prediction.checks import check_pressures, check_temperatures
 from groups.prediction.component import Component
+from groups.prediction.diagrams import POINTS_RANGE
 from groups.prediction.vapours import VapourAsked
 
 #: Standard deviation left to the shape of the liquid at a point, as a share of what it was there
@@ -144,10 +146,16 @@ def condition(
         None where no table or no vapour pressure is to be had, or the points hold nothing that
         moves it (excess enthalpies alone: the drawn errors do not depend on temperature).
 
+    Raises
+    ------
+    InvalidInputError
+        If both a pressure and a temperature are given, or one number lies outside its range.
+
     Source
     ------
     See the module.
     """
+    _check(pressure_kPa, temperature_K, points)
     if pressure_kPa is None and temperature_K is None:
         pressure_kPa, temperature_K = usual_condition(answer.measurements)
     middle = float(np.median(answer.measurements.temperatures_K))
@@ -166,6 +174,21 @@ def condition(
     if drawn is None or not len(answer.seen.temperature_K):
         return None
     return _conditioned(mixture, drawn, answer.seen, (pressure_kPa, temperature_K), points, middle)
+
+
+def _check(pressure_kPa: float | None, temperature_K: float | None, points: int) -> None:
+    if pressure_kPa is not None and temperature_K is not None:
+        raise InvalidInputError(
+            "A diagram has one pressure or one temperature, not both.",
+            cure="Give 'pressure_kPa' or 'temperature_K', or neither.",
+            field="pressure_kPa",
+        )
+    if pressure_kPa is not None:
+        check_pressures(pressure_kPa)
+    if temperature_K is not None:
+        check_temperatures(temperature_K)
+    if not POINTS_RANGE[0] <= points <= POINTS_RANGE[1]:
+        raise OutOfRangeError("diagram_points", points, *POINTS_RANGE)
 
 
 def usual_condition(points: Measurements) -> tuple[float | None, float | None]:

@@ -8,6 +8,7 @@ from groups.activity.choice import OnMissing
 from groups.equilibrium import VapourModel
 from groups.handoff.comparisons import Measurements
 from groups.prediction.boiling_mixture import boiling_mixture
+from groups.prediction.checks import check_components
 from groups.prediction.component import Component
 from groups.prediction.vapours import VapourAsked, VapourUsed
 
@@ -35,9 +36,12 @@ def vapour_over(
 
     Raises
     ------
+    ShapeError, DuplicateComponentError
+        If the components are not two different molecules.
     PredictionError
         If no table or no vapour pressure is to be had.
     """
+    check_components([one.molecule for one in components], least=2, most=2)
     boiling = points.vapour_liquid
     if not len(boiling.number):
         return None

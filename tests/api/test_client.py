@@ -11,7 +11,9 @@ from pydantic import ValidationError
 
 from api.application import create_app
 from api.client import MixwrightClient, ServiceProblemError
-from api.schemas.molecule import MoleculeInput
+from api.schemas.comparisons import ComparisonRequest
+from api.schemas.fits import FitRequest
+from api.schemas.molecule import MoleculeInput, molecule_input
 from api.settings import Settings
 
 
@@ -88,3 +90,21 @@ def test_a_request_that_cannot_be_right_is_not_sent(client):
         client.molecules([{"smiles": "CCO", "name": "ethanol"}])
     with pytest.raises(ValidationError):
         client.bubble_point(["CCO"], [float("nan")], pressure_kPa=101.325)
+
+
+def test_fits_and_comparisons_come_back_typed(client):
+    components = [molecule_input("CCO"), molecule_input("O")]
+    request = FitRequest(
+        components=components, temperature_range_K=[330.0, 370.0], compositions=11, temperatures=2
+    )
+    assert client.fit(request).pairs[0].components == [0, 1]
+    assert client.fit_sheet(request).startswith("Parameters of nrtl")
+    assert "<DataReport" in client.predicted_thermoml(request)
+    asked = ComparisonRequest(
+        components=components,
+        points=[{"temperature_C": 80.0, "pressure_bar": 1.013, "x1": 0.5}],
+        methods=["auto"],
+        models=[],
+    )
+    assert client.compare(asked).models[0].name == "auto"
+    assert client.comparison_picture(asked).startswith(b"\x89PNG")

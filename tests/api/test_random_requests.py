@@ -61,6 +61,29 @@ SOUND: dict[str, dict[str, Any]] = {
     },
     "/v1/azeotropes": {"components": ["CCO", "O"], "pressure_kPa": 101.3},
     "/v1/liquid-splits": {"components": ["CCO", "O"], "temperature_K": 300.0},
+    "/v1/fits": {
+        "components": ["CCO", "O"],
+        "model": "nrtl",
+        "form": "b/T",
+        "alpha": 0.3,
+        "temperature_range_K": [330.0, 350.0],
+        "pressure_kPa": 101.3,
+        "temperatures": 2,
+        "compositions": 9,
+        "method": "unifac",
+    },
+    "/v1/comparisons": {
+        "components": ["CCO", "O"],
+        "points": [
+            {"temperature": 352.0, "pressure": 101.3, "x1": 0.5, "y1": 0.65},
+            {"temperature": 330.0, "gamma_inf_1": 5.0},
+        ],
+        "units": {"temperature": "K"},
+        "methods": ["unifac", "auto"],
+        "models": ["nrtl", "margules-2"],
+        "pressure_kPa": 101.3,
+        "diagram_points": 11,
+    },
 }
 
 

@@ -29,6 +29,8 @@ CONTRACT = {
     "POST /v1/diagrams",
     "POST /v1/azeotropes",
     "POST /v1/liquid-splits",
+    "POST /v1/fits",
+    "POST /v1/comparisons",
 }
 
 

@@ -89,7 +89,7 @@ def test_the_truth_lies_inside_at_the_nominal_rate():
         found = conditioned(rows(T, measured, y1), points=11).after
         band, true = found.bands.temperature_K, predicted(asked, truth).temperature_K
         held.append(((band.lower[1:-1] <= true) & (true <= band.upper[1:-1])).mean())
-    # The share left to the form makes it wider than a truth of the very form needs: never below, up to all.
+    # The share left to the form makes it wider than a truth of the very form needs: up to all.
     assert np.mean(held) > 0.82
 
 
