@@ -21,8 +21,9 @@ from groups.prediction import (
     azeotropes,
     bubble_point,
     diagram,
+    measurement_plan,
 )
-from groups.prediction.answers import DiagramAnswer, PhasePointAnswer
+from groups.prediction.answers import DiagramAnswer, MeasurementPlan, PhasePointAnswer
 from groups.structure.molecule import molecule_from_smiles
 
 ISOPROPANOL = replace(molecule_from_smiles("CC(C)O"), name="isopropanol")
@@ -106,10 +107,25 @@ def _first_question(reactants: DiagramAnswer) -> str:
         [
             "1. ISOPROPANOL (1) / METHYL ACRYLATE (2): THE AZEOTROPE BY EVERY PUBLISHED TABLE",
             aligned(header, rows),
+            *_chance(reactants),
             wrapped(verdict),
             *_doubts("Taken: " + reactants.method, reactants.confidence),
         ]
     )
+
+
+def _chance(reactants: DiagramAnswer) -> list[str]:
+    """How probable the azeotrope is, and where it lies, by all tables and measurements together."""
+    chance = reactants.azeotrope_chance
+    if chance is None or chance.x1 is None:
+        return []
+    return [
+        wrapped(
+            f"By all of them and the open measurements together an azeotrope exists at 101.3 kPa "
+            f"with probability {chance.probability:.2f}, x1 between {chance.x1.lower:.2f} and "
+            f"{chance.x1.upper:.2f}."
+        )
+    ]
 
 
 def _azeotrope_cells(method: str, pressure_kPa: float) -> list[object]:
@@ -130,7 +146,7 @@ def _second_question(pot: dict[float, PhasePointAnswer]) -> str:
         [
             f"{pressure:g} kPa",
             f"{answer.temperature_K - 273.15:.0f} C",
-            *(f"{value:.1f}" for value in answer.relative_volatility[:2]),
+            *(_ratio(answer, k) for k in (0, 1)),
             f"{100 * answer.y[2]:.0f} %",
         ]
         for pressure, answer in pot.items()
@@ -138,7 +154,7 @@ def _second_question(pot: dict[float, PhasePointAnswer]) -> str:
     header = ["at", "pot", "isopropanol/product", "acrylate/product", "product in the vapour"]
     return "\n".join(
         [
-            "2. THE POT WITH 1 MOL-% OF EACH REACTANT LEFT IN THE PRODUCT",
+            "2. THE POT WITH 1 MOL-% OF EACH REACTANT LEFT (90 % INTERVAL OF EACH VOLATILITY)",
             aligned(header, rows),
             wrapped(
                 "Volatilities this far from one strip easily; what goes over at the end is mostly "
@@ -147,6 +163,15 @@ def _second_question(pot: dict[float, PhasePointAnswer]) -> str:
             ),
         ]
     )
+
+
+def _ratio(answer: PhasePointAnswer, k: int) -> str:
+    """A volatility over the product, with its 90 % interval."""
+    text = f"{answer.relative_volatility[k]:.1f}"
+    if answer.bands is None:
+        return text
+    band = answer.bands.relative_volatility
+    return f"{text} ({band.lower[0, k]:.0f} to {band.upper[0, k]:.0f})"
 
 
 def _cooler(pot: dict[float, PhasePointAnswer]) -> float:
@@ -158,21 +183,47 @@ def _third_question(reactants: DiagramAnswer, pot: PhasePointAnswer) -> str:
     """The doubts side by side, and the measurement that settles most."""
     product_line = pot.vapour_pressures[2]
     sigma = 100.0 * product_line.uncertainty_ln
+    stripping = measurement_plan(
+        (CRUDE[0], CRUDE[2]),
+        "relative_volatility",
+        mole_fractions=[0.01, 0.99],
+        pressure_kPa=VACUUM_KPA,
+    )
+    place = measurement_plan(REACTANTS, "azeotrope", pressure_kPa=ATMOSPHERIC_KPA)
     return "\n".join(
         [
             "3. WHAT TO DOUBT, AND WHAT TO MEASURE FIRST",
             *_doubts("Reactants", reactants.confidence),
             *_doubts("Pot", pot.confidence),
             wrapped(
-                f"Measure first the boiling point of the product at two pressures: its vapour "
-                f"pressure is {product_line.source} and about {sigma:.0f} % uncertain, and every "
-                "number of part 2 scales with it. Give the points as 'vapour_pressure' and run "
-                "again. Then one boiling point and one vapour sample of isopropanol/methyl "
-                "acrylate near the azeotrope.",
+                f"The vapour pressure of the product is {product_line.source} and about "
+                f"{sigma:.0f} % uncertain, and every number of part 2 scales with it. Give "
+                "measured points as 'vapour_pressure' and run again.",
                 "-> ",
             ),
+            *_planned("the isopropanol left in the pot", stripping),
+            *_planned("the azeotrope of the reactants", place),
         ]
     )
+
+
+def _planned(subject: str, plan: MeasurementPlan) -> list[str]:
+    """The measurements that shrink the doubt about a number, in order."""
+    width = plan.interval[1] - plan.interval[0]
+    lines = [
+        wrapped(
+            f"To measure for {subject} ({plan.question}, now {plan.interval[0]:.2f} to "
+            f"{plan.interval[1]:.2f}, {width:.2f} wide):",
+            "-> ",
+        )
+    ]
+    return lines + [
+        wrapped(
+            f"{one.what} at {one.temperature_K:.0f} K; expected width {one.expected_width:.2f}",
+            f"   {k}. ",
+        )
+        for k, one in enumerate(plan.measurements, start=1)
+    ]
 
 
 def _doubts(title: str, confidence: Confidence) -> Sequence[str]:

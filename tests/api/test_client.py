@@ -108,3 +108,10 @@ def test_fits_and_comparisons_come_back_typed(client):
     )
     assert client.compare(asked).models[0].name == "auto"
     assert client.comparison_picture(asked).startswith(b"\x89PNG")
+
+
+def test_plans_and_levels(client):
+    plan = client.measurement_plan(["CCO", "O"], "azeotrope", pressure_kPa=101.325)
+    assert plan.measurements[-1].expected_width < plan.interval.upper - plan.interval.lower
+    [limit] = client.infinite_dilution([("CCO", "O", 330.0)], level=0.5).results
+    assert limit.interval is not None and limit.interval.level == 0.5
