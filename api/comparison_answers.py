@@ -197,7 +197,7 @@ def conditioned_text(found: handoff.Conditioned) -> str:
     words = [
         f"The 90 % interval of the boiling {name} is {before:.2g} {unit} wide on average before "
         f"the points and {after:.2g} {unit} with them.",
-        f"Azeotrope: probability {_chance(found.before)} before, {_chance(found.after)} after.",
+        f"Azeotrope: {_azeotrope(found.before)} before; {_azeotrope(found.after)} with them.",
     ]
     if found.scatter > 1.0:
         words.append(
@@ -212,7 +212,11 @@ def _width(found: handoff.UncertainDiagram, kind: str) -> float:
     return float(np.nanmean(band.upper - band.lower))
 
 
-def _chance(found: handoff.UncertainDiagram) -> str:
+def _azeotrope(found: handoff.UncertainDiagram) -> str:
+    """Where it lies, the interval of the place, and how probable it is."""
     chance, x1 = found.azeotrope.probability, found.azeotrope.x1
-    place = "" if x1 is None else f" (x1 {x1.lower:.3f} to {x1.upper:.3f})"
-    return f"{100.0 * chance:.0f} %{place}"
+    at = ", ".join(f"{one.mole_fractions[0]:.3f}" for one in found.diagram.azeotropes)
+    place = f"x1 {at}" if at else "none"
+    if x1 is not None:
+        place += f" ({x1.lower:.3f} to {x1.upper:.3f})"
+    return f"{place}, probability {100.0 * chance:.0f} %"

@@ -14,6 +14,7 @@ from api.schemas.comparisons import (
     MeasurementUnits,
 )
 from groups.errors import InvalidInputError, MeasurementError
+from groups.handoff import parameters_of_fit, to_text
 from groups.handoff.comparisons import points_to_csv, regions_to_csv
 
 _LISTED_MODELS = 8
@@ -37,6 +38,8 @@ def compare(given: argparse.Namespace) -> str:
     if given.csv is not None:
         table = points_to_csv if given.csv == "points" else regions_to_csv
         return table(found.answer).rstrip()
+    if given.sheet is not None:
+        return to_text(parameters_of_fit(found.answer, given.sheet)).rstrip()
     answer = comparison_answers.comparison(found)
     return answer.model_dump_json(indent=2) if given.json else comparison_text(answer)
 

@@ -74,6 +74,11 @@ def add_compare(command: argparse.ArgumentParser, picture: Callable[[str], str])
     shape = command.add_mutually_exclusive_group()
     shape.add_argument("--json", action="store_true", help="print the whole answer as JSON")
     shape.add_argument("--csv", choices=("points", "regions"), help="print this table as CSV")
+    shape.add_argument(
+        "--sheet",
+        choices=get_args(ModelName),
+        help="print the parameters of this equation, fitted to the points",
+    )
 
 
 def alpha(text: str) -> float | str:

@@ -75,6 +75,12 @@ def test_the_csv_of_a_comparison_is_the_table_of_the_service(run, service, point
     assert out.splitlines() == answered.splitlines()
 
 
+def test_the_sheet_of_an_equation_fitted_to_the_points(run, points):
+    status, out, _ = run("compare", *PAIR, points, "--sheet", "margules-2")
+    assert status == 0
+    assert "2 measured points" in out
+
+
 @pytest.mark.parametrize(
     ("arguments", "status", "words"),
     [
