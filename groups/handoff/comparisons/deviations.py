@@ -140,8 +140,11 @@ def point_deviations(
 
 def _boiling(points: Measurements, system: System) -> list[PointDeviation]:
     v = points.vapour_liquid
-    at_T = bubble_pressure(system, v.temperature_K, v.fractions)
-    at_P = bubble_temperature(system, v.pressure_kPa, v.fractions)
+    # An equation fitted to wild points may have no finite value far from them; states that are not
+    # reached come back as NaN and are left out.
+    with np.errstate(invalid="ignore", over="ignore"):
+        at_T = bubble_pressure(system, v.temperature_K, v.fractions)
+        at_P = bubble_temperature(system, v.pressure_kPa, v.fractions)
     where = (v.number, v.temperature_K, v.x1)
     isobaric = v.condition == "isobaric"
     vapour = at_P.vapour[:, 0] if isobaric else at_T.vapour[:, 0]
