@@ -2,6 +2,7 @@
 
 from collections import defaultdict
 from collections.abc import Mapping, Sequence
+from dataclasses import dataclass
 from functools import lru_cache
 
 import numpy as np
@@ -9,7 +10,7 @@ import numpy as np
 from groups.activity import ln_gamma_infinite_pairs
 from groups.activity.choice import OnMissing
 from groups.arrays import FloatArray
-from groups.confidence import Interval, Reason, graded
+from groups.confidence import Evidence, Interval, Reason, graded
 from groups.confidence.agreement_rules import agreement_reasons, correction_reasons
 from groups.confidence.calibration import (
     TABLES,
@@ -86,7 +87,7 @@ def infinite_dilution(
         if isinstance(choice, PredictionError)
         else _answered(
             pair,
-            choice,
+            _told(pair, choice),
             {m: float(column[k]) for m, column in numbers.items()},
             float(numbers[choice.heaviest.method][k]),
             ends[k],
@@ -104,16 +105,19 @@ def _by_auto(
     ends = _ends(found, LEVEL)
     wished = None if level is None else _ends(found, level)
     weights = pair_weights(found)
+    told: dict[tuple[str, str], _Told] = {}
     answers = []
     for k, pair in enumerate(pairs):
         if weights[k]:
-            choice = weighted_choice(pair[:2], weights[k])
+            key = (pair[0].canonical_smiles, pair[1].canonical_smiles)
+            if key not in told:  # weights and reasons do not depend on temperature
+                told[key] = _told(pair, weighted_choice(pair[:2], weights[k]))
             numbers = dict(zip(TABLES, map(float, found.tables.ln_gamma[k]), strict=True))
             other = None if wished is None else wished[k]
             value, added = float(found.ln_gamma[k]), float(found.correction[k])
             answers.append(
                 _answered(
-                    pair, choice, numbers, value, ends[k], other, correction_reasons(abs(added))
+                    pair, told[key], numbers, value, ends[k], other, correction_reasons(abs(added))
                 )
             )
         else:
@@ -182,9 +186,24 @@ def _counts(molecule: Molecule, method: str) -> Mapping[int, int]:
     return assign(molecule, method).counts
 
 
+@dataclass(frozen=True, slots=True)
+class _Told:
+    """What a choice has to tell of a pair, whatever the temperature."""
+
+    choice: Choice
+    compared: tuple[str, ...]
+    reasons: tuple[Reason, ...]
+    evidence: tuple[Evidence, ...]
+
+
+def _told(pair: DilutePair, choice: Choice) -> _Told:
+    reasons = mixture_reasons(pair[:2], choice)
+    return _Told(choice, choice.compared, reasons, choice_evidence(choice))
+
+
 def _answered(
     pair: DilutePair,
-    choice: Choice,
+    told: _Told,
     numbers: Mapping[str, float],
     ln_gamma: float,
     ends: tuple[float, float],
@@ -192,12 +211,12 @@ def _answered(
     extra: Sequence[Reason] = (),
 ) -> InfiniteDilutionAnswer:
     solute, solvent, temperature_K = pair
-    spreads = {other: abs(numbers[other] - ln_gamma) for other in choice.compared}
-    heaviest = choice.heaviest
+    choice = told.choice
+    spreads = {other: abs(numbers[other] - ln_gamma) for other in told.compared}
     reasons = [
-        *mixture_reasons((solute, solvent), choice),
+        *told.reasons,
         *gas_reasons(solute, temperature_K),
-        *temperature_reasons(table(heaviest.method), temperature_K, temperature_K),
+        *temperature_reasons(table(choice.heaviest.method), temperature_K, temperature_K),
         *agreement_reasons(choice.method, spreads),
         *extra,
     ]
@@ -209,7 +228,7 @@ def _answered(
         choice.method,
         choice.weights,
         None if wished is None else _holding(wished, ln_gamma),
-        graded(reasons, choice_evidence(choice), interval=_holding(ends, ln_gamma)),
+        graded(reasons, told.evidence, interval=_holding(ends, ln_gamma)),
     )
 
 
