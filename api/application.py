@@ -12,6 +12,7 @@ from api.openapi_description import describe
 from api.problems import add_problem_handlers
 from api.routers import (
     activity,
+    advice,
     comparisons,
     diagrams,
     fits,
@@ -66,6 +67,7 @@ def create_app(settings: Settings | None = None) -> FastAPI:
         liquid_regions,
         residue_curves,
         gas_solubility,
+        advice,
         measurement_plans,
         fits,
         comparisons,

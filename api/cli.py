@@ -46,6 +46,7 @@ def parser() -> argparse.ArgumentParser:
     _add_fit(commands.add_parser("fit", help="parameters for a flowsheet, from the prediction"))
     _add_compare(commands.add_parser("compare", help="measured points against every model"))
     _add_plan(commands.add_parser("plan", help="what to measure to settle a question"))
+    _add_advise(commands.add_parser("advise", help="which class of property method is needed"))
     _add_groups(commands.add_parser("groups", help="split a molecule into groups"))
     _add_methods(commands.add_parser("methods", help="list the methods, or show one"))
     _add_demo(commands.add_parser("demo", help="a worked example, with diagrams as files"))
@@ -168,6 +169,47 @@ def _add_plan(command: argparse.ArgumentParser) -> None:
     command.set_defaults(run=_plan)
 
 
+def _add_advise(command: argparse.ArgumentParser) -> None:
+    from api.commands.quantities import pressure_kPa, temperature_K
+
+    command.description = (
+        "Ideal or real gas, ideal or real solution, by computation for this mixture; what each "
+        "simplification would cost; the class of method for a flowsheet."
+    )
+    command.add_argument(
+        "components",
+        nargs="+",
+        metavar="MOLECULE",
+        help="SMILES, a name or a CAS number; smiles:, name: or cas: in front say which",
+    )
+    command.add_argument(
+        "-T",
+        "--temperature",
+        type=temperature_K,
+        nargs="+",
+        required=True,
+        help="lowest and highest, such as 350K 390K; or one",
+    )
+    command.add_argument(
+        "-P",
+        "--pressure",
+        type=pressure_kPa,
+        nargs="+",
+        required=True,
+        help="lowest and highest, such as 1atm 3bar; or one",
+    )
+    command.add_argument(
+        "--on-missing",
+        choices=("estimate", "refuse"),
+        default="estimate",
+        help="what to do where no parameter is published",
+    )
+    shape = command.add_mutually_exclusive_group()
+    shape.add_argument("--json", action="store_true", help="print the whole answer as JSON")
+    shape.add_argument("--csv", action="store_true", help="print the table as CSV")
+    command.set_defaults(run=_advise)
+
+
 def _add_groups(command: argparse.ArgumentParser) -> None:
     command.add_argument("molecule", metavar="MOLECULE", help="SMILES, a name or a CAS number")
     command.add_argument("--method", action="append", help="a method; may be repeated")
@@ -221,6 +263,12 @@ def _plan(given: argparse.Namespace) -> str:
     from api.commands.plan import plan
 
     return plan(given)
+
+
+def _advise(given: argparse.Namespace) -> str:
+    from api.commands.advise import advise
+
+    return advise(given)
 
 
 def _groups(given: argparse.Namespace) -> str:

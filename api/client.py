@@ -21,6 +21,7 @@ from api.schemas.activity import (
     InfiniteDilutionResponse,
     Pair,
 )
+from api.schemas.advice import AdviceRequest, AdviceResponse
 from api.schemas.comparisons import ComparisonRequest, ComparisonResponse
 from api.schemas.equilibrium import (
     AzeotropesRequest,
@@ -422,6 +423,25 @@ class MixwrightClient:
             on_missing=on_missing,
         )
         return self._post("/v1/measurement-plan", request, MeasurementPlanResponse)
+
+    def advice(
+        self,
+        components: Sequence[MoleculeLike],
+        *,
+        temperature_K: tuple[float, float],
+        pressure_kPa: tuple[float, float],
+        mole_fractions: Sequence[tuple[float, float]] | None = None,
+        on_missing: OnMissing = "estimate",
+    ) -> AdviceResponse:
+        """Which class of property method a mixture needs over these ranges."""
+        request = AdviceRequest(
+            components=_molecules(components),
+            temperature_K=list(temperature_K),
+            pressure_kPa=list(pressure_kPa),
+            mole_fractions=None if mole_fractions is None else [list(r) for r in mole_fractions],
+            on_missing=on_missing,
+        )
+        return self._post("/v1/advice", request, AdviceResponse)
 
     def _get(self, path: str, kind: type[Answer]) -> Answer:
         return kind.model_validate_json(_checked(self._http.get(path)).content)

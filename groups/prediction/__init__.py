@@ -1,6 +1,7 @@
 """The doors: one function for each question, used alike by service, command line and client."""
 
 from groups.prediction.activity_coefficients import activity_coefficients
+from groups.prediction.advice import AdviceAnswer, advice
 from groups.prediction.answers import (
     ActivityAnswer,
     AzeotropeAnswer,
@@ -33,6 +34,7 @@ __all__ = [
     "ALL_METHODS",
     "CAUTIONS",
     "ActivityAnswer",
+    "AdviceAnswer",
     "AzeotropeAnswer",
     "AzeotropeChance",
     "Component",
@@ -48,6 +50,7 @@ __all__ = [
     "SplitChance",
     "TernaryDiagramAnswer",
     "activity_coefficients",
+    "advice",
     "assign_groups",
     "azeotropes",
     "bubble_point",

@@ -68,12 +68,30 @@ def test_every_prediction_comes_back_typed(client):
     assert len(client.diagram("Txy", pair, pressure_kPa=101.325, points=11).x1) == 11
     assert len(client.azeotropes(pair, pressure_kPa=101.325).azeotropes) == 1
     assert client.liquid_split(["CCCCO", "O"], temperature_K=298.15).splits
+    half = client.flash(["CO", "O"], [0.4, 0.6], pressure_kPa=101.325, vapour_fraction=0.5)
+    assert len(half.phases) == 2 and half.vapour.reason
     one = client.activity_coefficients(pair, 300.0, [[0.5, 0.5], [0.0, 1.0]])
     assert [p.temperature_K for p in one.points] == [300.0, 300.0]
     two = client.activity_coefficients(pair, [300.0, 310.0], [[0.5, 0.5], [0.5, 0.5]])
     assert [p.temperature_K for p in two.points] == [300.0, 310.0]
     limits = client.infinite_dilution([("CCO", "O", 300.0), ("O", "CCO", 300.0)])
     assert all(result.ln_gamma_inf is not None for result in limits.results)
+
+
+def test_phase_behaviour_comes_back_typed(client):
+    extraction = ["CC(=O)O", "O", "CC(C)OC(C)C"]
+    assert len(client.ternary_diagram(extraction, temperature_K=293.15).regions) == 1
+    found = client.mutual_solubilities(["CCCCO", "O"], lowest_K=290.0, highest_K=300.0, points=3)
+    assert all(found.splits)
+    still = ["CC(C)=O", "ClC(Cl)Cl", "CO"]
+    drawn = client.residue_curves(
+        still, pressure_kPa=101.325, starts=[[0.3, 0.3, 0.4]], vapour="ideal"
+    )
+    assert len(drawn.curves) == 1
+    one = client.gas_solubility("O=C=O", ["CO"], temperature_K=298.15)
+    assert len(one.points) == 1 and one.points[0].henry_kPa is not None
+    advice = client.advice(["CCO", "O"], temperature_K=(350.0, 375.0), pressure_kPa=(100.0, 110.0))
+    assert advice.liquid.verdict == "real solution"
 
 
 def test_a_problem_is_an_exception_with_type_field_and_cure(client):

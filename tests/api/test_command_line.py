@@ -68,6 +68,37 @@ def test_each_question_is_answered(run, arguments, words):
     assert "Confidence: " in out
 
 
+def test_advice_is_that_of_the_service(run, service):
+    arguments = ["advise", "acetic acid", "water", "-T", "370K", "395K", "-P", "1atm"]
+    status, out, _ = run(*arguments)
+    assert status == 0
+    assert "For a flowsheet: activity coefficients, real vapour" in out
+    assert "Confidence: " in out and CAUTIONS[0] in out
+    _, out, _ = run(*arguments, "--json")
+    body = {
+        "components": ["CC(=O)O", "O"],
+        "temperature_K": [370.0, 395.0],
+        "pressure_kPa": [101.325, 101.325],
+    }
+    assert json.loads(out) == service.post("/v1/advice", body).json()
+    _, out, _ = run(*arguments, "--csv")
+    assert out.splitlines() == service.post("/v1/advice", body, "text/csv").text.splitlines()
+
+
+def test_vapour_fraction_and_vapour_are_options(run):
+    pair = ["predict", "CC(=O)O", "O", "-x", "0.3", "0.7", "-P", "1atm"]
+    _, half, _ = run(*pair, "--vapour-fraction", "0.5")
+    assert "vapour fraction 0.5" in half and "Vapour virial" in half
+    _, ideal, _ = run(*pair, "--vapour", "ideal")
+    assert "Vapour ideal: asked for" in ideal
+    _, split, _ = run("predict", "CCCCO", "O", "-x", "0.2", "0.8", "-P", "1atm")
+    assert "The phases:" in split and "moles in a mole" in split
+    status, _, _ = run(
+        "predict", "CO", "O=C=O", "-x", "0.8", "0.2", "-T", "40C", "--method", "psrk"
+    )
+    assert status == 0
+
+
 def test_pictures_are_written(run, tmp_path):
     drawing, picture = tmp_path / "diagram.svg", tmp_path / "diagram.png"
     run("predict", "CCO", "O", "-P", "1atm", "--points", "11", "--picture", str(drawing))
@@ -106,6 +137,7 @@ def test_json_is_json(run, command):
     ("arguments", "status", "words"),
     [
         (["predict", "CCO", "C(C", "-P", "1atm"], 2, "position"),
+        (["advise", "CCO", "O", "-T", "300", "310", "320", "-P", "1atm"], 2, "-T"),
         (["predict", "unobtainium", "O", "-P", "1atm"], 2, "unobtainium"),
         (["predict", "CCO", "O", "-x", "0.3", "0.8", "-P", "1atm"], 2, "sum of 1.1"),
         (["predict", "CCO", "O"], 2, "-P 1atm"),

@@ -107,7 +107,7 @@ def test_flashes_by_vapour_fraction_come_back_at_temperature_and_pressure(fracti
     at_temperature = flash(
         components, z, temperature_K=at_pressure.temperature_K, vapour_fraction=fraction
     )
-    # The vapour is chosen at a pressure or at a temperature: here it is ideal either way.
+    # The vapour is chosen at a pressure or at a temperature: here it is the same either way.
     assert at_temperature.vapour.kind == at_pressure.vapour.kind
     assert at_temperature.pressure_kPa == pytest.approx(ONE_ATM, rel=1e-7)
     if 0.0 < fraction < 1.0:
