@@ -7,8 +7,7 @@ set are given, the others held out.
 import numpy as np
 
 from groups.arrays import FloatArray
-from groups.confidence.calibration.addition import added_ln_gamma
-from groups.confidence.calibration.samples import MARGULES
+from groups.confidence.calibration import SampledModels
 from groups.handoff import Measurements, read_records
 from groups.handoff.comparisons import observations
 from groups.handoff.conditioned import updated
@@ -17,7 +16,7 @@ from groups.prediction.component import Component
 from groups.structure.molecule import molecule_from_smiles
 from tests.bench.open_data import VleSet, vle
 
-GIVEN = (0, 1, 2, 4)
+GIVEN = (0, 1, 2, 4, 6)
 
 
 def rows(one: VleSet, kept: FloatArray) -> Measurements:
@@ -52,12 +51,12 @@ def held_out(one: VleSet, given: int) -> tuple[FloatArray, FloatArray, FloatArra
     posterior = prior
     if given:
         seen = observations(rows(one, kept), lines, model)
-        posterior, _ = updated(prior, seen, model.ln_gamma)
+        posterior, _ = updated(prior, seen, model)
     found = observations(rows(one, rest), lines, model)
     matrices = np.zeros((len(posterior), 2, 2))
     matrices[:, 0, 1], matrices[:, 1, 0] = posterior[:, 0], posterior[:, 1]
     own = model.ln_gamma(found.temperature_K, found.fractions)
-    added = added_ln_gamma(matrices, MARGULES, found.fractions) + posterior[:, None, 2:]
+    added = SampledModels(model, matrices).errors(found.fractions) + posterior[:, None, 2:]
     ln_P = np.array([found.boil(own + one_draw)[0] for one_draw in added])
     noise = np.random.default_rng(1).standard_normal(ln_P.shape) * found.sigma_ln_pressure
     lower, upper = np.quantile(ln_P + noise, [0.05, 0.95], axis=0)
