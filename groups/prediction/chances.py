@@ -158,7 +158,7 @@ def nearest_to_azeotrope(ln_alpha: FloatArray, offset: FloatArray) -> FloatArray
     nearest: FloatArray = GRID[np.abs(ln_alpha).argmin(axis=1)]
     rows = np.flatnonzero(crossing.any(axis=1))
     some = DrawnLine(ln_alpha[rows], ln_alpha[rows], offset, np.ones_like(ln_alpha[rows]))
-    nearest[rows], _ = _places(some, crossing.argmax(axis=1)[rows])
+    nearest[rows], _ = _places(some, _steepest(crossing, ln_alpha)[rows])
     return nearest
 
 
@@ -215,14 +215,14 @@ def _found(
     temperature_K: float | None,
     pressure_kPa: float | None,
 ) -> AzeotropeChance:
-    """First crossing of each draw."""
+    """The crossing of each draw, the steepest where it has several."""
     crossing = _crossing(line.ln_alpha)
     has = crossing.any(axis=1)
     probability = float(has.mean())
     if has.sum() < LEAST_DRAWS:
         return AzeotropeChance(components, probability, None, None, None)
     some = DrawnLine(line.ln_alpha[has], line.level[has], line.offset[has], line.steepness[has])
-    x1, at = _places(some, crossing.argmax(axis=1)[has])
+    x1, at = _places(some, _steepest(crossing, line.ln_alpha)[has])
     temperature = None if temperature_K is not None else _interval(1.0 / at)
     pressure = None if pressure_kPa is not None else _interval(np.exp(at))
     return AzeotropeChance(components, probability, _interval(x1), temperature, pressure)
@@ -232,6 +232,13 @@ def _crossing(ln_alpha: FloatArray) -> BoolArray:
     """Between which neighbours on the grid the volatilities change places."""
     crossing: BoolArray = np.signbit(ln_alpha[:, 1:]) != np.signbit(ln_alpha[:, :-1])
     return crossing
+
+
+def _steepest(crossing: BoolArray, ln_alpha: FloatArray) -> IntArray:
+    """Place of the steepest crossing of each draw: it does not depend on which comes first."""
+    steepness = np.where(crossing, np.abs(np.diff(ln_alpha, axis=1)), -1.0)
+    places: IntArray = steepness.argmax(axis=1)
+    return places
 
 
 def _places(line: DrawnLine, crossing: IntArray) -> tuple[FloatArray, FloatArray]:
@@ -279,7 +286,7 @@ def split_chance(drawn: Drawn, temperature_K: float) -> SplitChance:
     probability = float(splits.mean())
     if splits.sum() < LEAST_DRAWS:
         return SplitChance(probability, None, None)
-    falls = (np.diff(difference[splits], axis=1) < 0.0).argmax(axis=1)
+    falls = np.diff(difference[splits], axis=1).argmin(axis=1)  # the deepest gap
     left, right = coexisting(difference[splits], falls)
     return SplitChance(probability, _interval(GRID[left]), _interval(GRID[right]))
 

@@ -1,10 +1,10 @@
 """Whole activity-coefficient curves drawn at random, each consistent in itself.
 
-The error of the prediction is taken as one random excess Gibbs energy that is added to it, in the
-two-constant Margules form (`groups.confidence.calibration.addition` with q = 2). The errors of
-both directions of a binary are drawn from the calibrated distribution with the measured
-correlation; those of different binaries independently. So every draw obeys Gibbs-Duhem, and its
-error vanishes at the pure components.
+The error of the prediction is taken as one random excess Gibbs energy that is added to it
+(`groups.confidence.calibration.addition` with q = 3). The errors of both directions of a
+binary are drawn from the calibrated distribution with the measured correlation; those of different
+binaries independently. So every draw obeys Gibbs-Duhem, and its error vanishes at the pure
+components.
 """
 
 from collections.abc import Iterator, Sequence
@@ -24,7 +24,10 @@ from groups.confidence.calibration.model import calibration
 from groups.errors import ShapeError
 from groups.structure.molecule import Molecule
 
-MARGULES = 2
+# How far a dilute error reaches into the middle. On the 161 mixed states of the open boiling sets
+# the 90 % intervals of P or T hold 0.90, 0.89, 0.74 and 0.66 of the measured values with q = 2, 3,
+# 4 and 5, those of y 0.97, 0.91, 0.85 and 0.82; with 3 they are a third narrower than with 2.
+POWER = 3
 
 
 @dataclass(frozen=True, slots=True)
@@ -48,7 +51,7 @@ class SampledModels:
     def __iter__(self) -> Iterator[AddedExcess]:
         """Every draw as an activity model of its own."""
         for one in self.dilute:
-            yield AddedExcess(self.base, one, MARGULES)
+            yield AddedExcess(self.base, one, POWER)
 
     def ln_gamma(self, temperature_K: ArrayLike, mole_fractions: ArrayLike) -> FloatArray:
         """ln gamma of all draws at once; the underlying model is evaluated only once.
@@ -68,11 +71,11 @@ class SampledModels:
     def errors(self, mole_fractions: ArrayLike) -> FloatArray:
         """Drawn errors of ln gamma alone, (n_samples, ..., n_components)."""
         x = np.asarray(mole_fractions, dtype=np.float64)
-        return added_ln_gamma(self.dilute, MARGULES, x)
+        return added_ln_gamma(self.dilute, POWER, x)
 
     def errors_each(self, mole_fractions: FloatArray) -> FloatArray:
         """The same at liquids (n_samples, n_points, n_components) of each draw's own."""
-        return added_ln_gamma_each(self.dilute, MARGULES, mole_fractions)
+        return added_ln_gamma_each(self.dilute, POWER, mole_fractions)
 
 
 def sample_models(
