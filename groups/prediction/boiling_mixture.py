@@ -102,6 +102,7 @@ class BoilingMixture:
             *critical_reasons(molecules, self.lines, highest),
             *saturation_reasons(molecules, self.lines, lowest, highest),
             *self._vapour_reasons(T, P, None if vapour is None else vapour[known]),
+            *([_ACTIVITY_ONLY] if self.liquid.method == "psrk" else []),
         ]
 
     def _vapour_reasons(
@@ -115,6 +116,16 @@ class BoilingMixture:
         if self.vapour.judged:
             return []  # an ideal vapour was weighed against a real one and found good enough
         return [*pressure_reasons(float(P.max())), *association_reasons(molecules)]
+
+
+_ACTIVITY_ONLY = Reason(
+    "equation_of_state_not_used",
+    "Of psrk only the activity coefficients are used here, with vapour pressures; its equation of "
+    "state answers bubble points, dew points, flashes at temperature and pressure, and gas "
+    "solubilities.",
+    "psrk",
+    "moderate",
+)
 
 
 def boiling_mixture(

@@ -14,9 +14,11 @@ from collections.abc import Sequence
 
 from groups.activity.choice import OnMissing
 from groups.confidence import Reason
+from groups.confidence.labels import label
 from groups.errors import PredictionError
 from groups.parameters import table
 from groups.prediction.liquid import Liquid, liquid
+from groups.structure.facts import molecule_facts
 from groups.structure.molecule import Molecule
 
 SPLIT_METHOD = "unifac-lle"
@@ -56,7 +58,8 @@ def splitting_liquid(
     lower, upper = table(SPLIT_METHOD).temperature_range_K
     if lower - MARGIN_K <= lowest_K and highest_K <= upper + MARGIN_K:
         try:
-            return liquid(molecules, SPLIT_METHOD, "refuse"), [_TAKEN]
+            taken = liquid(molecules, SPLIT_METHOD, "refuse")
+            return taken, [_TAKEN, *_traces(molecules)]
         except PredictionError:
             pass  # a group or a parameter is missing: the weighted choice may have it
     return liquid(molecules, "auto", on_missing), []
@@ -70,6 +73,23 @@ _TAKEN = Reason(
     SPLIT_METHOD,
     "moderate",
 )
+
+
+def _traces(molecules: Sequence[Molecule]) -> list[Reason]:
+    """A reason for each hydrocarbon-like molecule beside water."""
+    if not any(molecule.canonical_smiles == "O" for molecule in molecules):
+        return []
+    return [
+        Reason(
+            "trace_in_water",
+            f"What water dissolves of {label(molecule)} is a trace that no table here was fitted "
+            "to; for hexane this table gives 25 times the measured solubility.",
+            label(molecule),
+            "low",
+        )
+        for molecule in molecules
+        if molecule_facts(molecule).is_hydrophobe
+    ]
 
 
 def split_reasons(method: str, splits: bool) -> list[Reason]:

@@ -138,6 +138,11 @@ CASES: list[Case] = [
         lambda: dilute("N#CCCCCC#N", "O"),
         lambda: dilute("CCCCC#N", "O"),
     ),
+    (
+        "trace_in_water",
+        lambda: liquid_splits(mixture("CCCCCC", "O"), temperature_K=300.0).confidence,
+        lambda: liquid_splits(mixture("CCCCO", "O"), temperature_K=300.0).confidence,
+    ),
     ("polyol", lambda: dilute("OCCCO", "O"), lambda: dilute("CCCO", "O")),
     (
         "long_chain",
@@ -186,7 +191,11 @@ CASES: list[Case] = [
     ),
     (
         "table_not_fitted_to_splits",
-        lambda: liquid_splits(mixture("CCCCCC", "O"), temperature_K=300.0).confidence,
+        lambda: (
+            liquid_splits(
+                mixture("CCCCCC", "O"), temperature_K=300.0, method="unifac-dortmund"
+            ).confidence
+        ),
         lambda: (
             liquid_splits(
                 mixture("CCCCCC", "O"), temperature_K=300.0, method="unifac-lle"

@@ -144,6 +144,13 @@ def test_a_vapour_that_does_not_exist_is_refused_by_name():
     assert caught.value.field == "vapour"
 
 
+def test_where_the_equation_of_state_is_not_used_the_answer_says_so():
+    drawn = diagram("Txy", mixture("CCO", "O"), pressure_kPa=ONE_ATM, points=5, method="psrk")
+    point = bubble_point(mixture("CCO", "O"), HALF, pressure_kPa=ONE_ATM, method="psrk")
+    told = [{r.code for r in answer.confidence.reasons} for answer in (drawn, point)]
+    assert ["equation_of_state_not_used" in codes for codes in told] == [True, False]
+
+
 def test_the_equation_of_state_takes_gases_and_says_what_it_is():
     components = mixture("CO", "O=C=O")
     answer = bubble_point(components, [0.7, 0.3], temperature_K=313.15, method="psrk")
