@@ -244,8 +244,14 @@ def _split_marks(scene: _Scene, fitted: list[ComparedModel]) -> list[Mark]:
             "liquids were measured: do not use it before that is settled.",
         )
         for one in fitted
-        if may_split(one.model, np.array([T])) and binary_split(one.model, T) is not None
+        if _splits(one.model, T)
     ]
+
+
+def _splits(model: LiquidModel, T: float) -> bool:
+    # Fitted to wild points an equation may overflow somewhere; that is no split.
+    with np.errstate(invalid="ignore", over="ignore", divide="ignore"):
+        return bool(may_split(model, np.array([T]))) and binary_split(model, T) is not None
 
 
 def _marks(

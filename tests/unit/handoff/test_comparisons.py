@@ -310,3 +310,35 @@ def test_points_that_scatter_wildly_are_compared_without_a_number_that_is_not_on
     ]
     answer = compare(pair, read_records(rows, (60.1, 86.1)), methods=())
     assert all(np.isfinite(one.calculated) for model in answer.models for one in model.points)
+
+
+def test_points_that_contradict_each_other_are_answered():
+    # Found by random points: a fitted equation overflows where its liquids are looked for.
+    pair = [Component(molecule_from_smiles(one)) for one in ("CCCCCC", "c1ccccc1")]
+    rows = [
+        {
+            "temperature": 351.0,
+            "x1": 0.9820873275093553,
+            "pressure": 733.6481670647346,
+            "gamma_inf_1": 69232.53067010948,
+            "u_x1": 0.9765625,
+            "gamma_2": 20.309822576798965,
+        },
+        {
+            "temperature": 349.1031519826052,
+            "gamma_2": 0.1,
+            "x1": 0.0,
+            "gamma_inf_1": 31300.784884980778,
+            "excess_enthalpy": 0.0,
+        },
+        {
+            "temperature": 351.0,
+            "x1": 0.9820873275093553,
+            "pressure": 733.6481670647346,
+            "u_x1": 0.9765625,
+            "excess_enthalpy": 0.0,
+            "gamma_inf_1": 69232.53067010948,
+        },
+    ]
+    answer = compare(pair, read_records(rows, (86.2, 78.1)), methods=())
+    assert answer.models
