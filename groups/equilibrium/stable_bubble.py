@@ -148,15 +148,18 @@ class _SplitBoiling:
             fresh = find_phases(problem.rows(rows))
             self.amounts[index[rows]], self.liquids[index[rows]] = fresh.amounts, fresh.liquids
         P = np.exp(self.ln_pressure[index])
-        y, total = _vapour(self.system, problem, self.amounts[index], P)
+        y, total = _vapour(self.system, problem, self.amounts[index], P, at_own=False)
         slope = (y * self.system.ln_saturation_slope(T)).sum(axis=1)
         return total - self.ln_pressure[index], slope
 
 
 def _vapour(
-    system: System, problem: PhaseProblem, amounts: FloatArray, P: FloatArray
+    system: System, problem: PhaseProblem, amounts: FloatArray, P: FloatArray, *, at_own: bool
 ) -> tuple[FloatArray, FloatArray]:
-    """First vapour over the stable liquids, and ln of its pressure in kPa."""
+    """First vapour over the stable liquids, and ln of its pressure in kPa.
+
+    A real vapour is corrected at P, or at the pressure that it is found to have.
+    """
     T = problem.temperature_K
     # Activities are the same in all liquids; the one that holds most of a component tells them.
     totals = amounts.sum(axis=2, keepdims=True)
@@ -175,7 +178,7 @@ def _vapour(
         y = np.exp(terms - correction - total[:, None])
         if system.vapour.ideal:
             break
-        fresh = system.vapour.ln_correction(T, P, y)
+        fresh = system.vapour.ln_correction(T, np.exp(total) if at_own else P, y)
         change = np.abs(fresh - correction).max(initial=0.0)
         correction = fresh
         if change <= VAPOUR_TOLERANCE:
@@ -203,7 +206,9 @@ def _boiling(
         found = find_phases(problem)
         split = Phases.of_amounts(found.amounts, found.liquids, found.vapour)
         liquids[rows], shares[rows] = split.liquids, split.liquid_fractions
-        vapour[rows], ln_total = _vapour(system, problem, found.amounts, pressure[rows])
+        vapour[rows], ln_total = _vapour(
+            system, problem, found.amounts, pressure[rows], at_own=True
+        )
         pressure[rows] = np.exp(ln_total)
         for k, row in enumerate(rows.tolist()):
             failure[row] = found.failure[k]

@@ -64,8 +64,8 @@ def test_the_chance_of_a_split_is_the_share_of_solved_draws_that_split(smiles):
     pairs = np.array([sorted((p[0][0], p[1][0])) for p in solved if p])
     for interval, values in ((found.x1_lower, pairs[:, 0]), (found.x1_upper, pairs[:, 1])):
         lower, upper = ends(np.log(values / (1.0 - values)))
-        # Four steps of the line, 0.0625 in ln(x1/x2) each: near a consolute point it is flat, and of
-        # two gaps that all but touch either may be the deeper one.
+        # Four steps of the line, 0.0625 in ln(x1/x2) each: near a consolute point it is flat, and
+        # of two gaps that all but touch either may be the deeper one.
         assert np.log(interval.lower / (1.0 - interval.lower)) == pytest.approx(lower, abs=0.25)
         assert np.log(interval.upper / (1.0 - interval.upper)) == pytest.approx(upper, abs=0.25)
 

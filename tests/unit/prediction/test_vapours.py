@@ -165,3 +165,18 @@ def test_the_equation_of_state_takes_gases_and_says_what_it_is():
     assert 0.0 < middle.vapour_fraction < 1.0
     mixed = sum(phase.fraction * phase.mole_fractions for phase in middle.phases)
     np.testing.assert_allclose(mixed, [0.7, 0.3], atol=1e-9)
+
+
+@pytest.mark.parametrize("vapour_fraction", [0.1, 0.5, 0.9])
+def test_a_splitting_liquid_under_a_real_vapour_is_flashed_at_a_vapour_fraction(vapour_fraction):
+    components = [Component(molecule_from_smiles(text)) for text in ("CC(=O)O", "O", "CCOC(C)=O")]
+    answer = flash(
+        components,
+        [0.1, 0.5, 0.4],
+        temperature_K=350.0,
+        vapour_fraction=vapour_fraction,
+        vapour="virial",
+    )
+    assert answer.failure is None
+    assert answer.vapour_fraction == pytest.approx(vapour_fraction)
+    assert answer.pressure_kPa > 0.0
