@@ -169,9 +169,8 @@ def test_the_equation_of_state_takes_gases_and_says_what_it_is():
 
 @pytest.mark.parametrize("vapour_fraction", [0.1, 0.5, 0.9])
 def test_a_splitting_liquid_under_a_real_vapour_is_flashed_at_a_vapour_fraction(vapour_fraction):
-    components = [Component(molecule_from_smiles(text)) for text in ("CC(=O)O", "O", "CCOC(C)=O")]
     answer = flash(
-        components,
+        mixture("CC(=O)O", "O", "CCOC(C)=O"),
         [0.1, 0.5, 0.4],
         temperature_K=350.0,
         vapour_fraction=vapour_fraction,
