@@ -11,9 +11,11 @@ tests/bench/measure_phase_behaviour.py.
 """
 
 from collections.abc import Sequence
+from dataclasses import replace
 
 from groups.activity.choice import OnMissing
 from groups.confidence import Reason
+from groups.confidence.calibration import TableWeight
 from groups.confidence.labels import label
 from groups.errors import PredictionError
 from groups.parameters import table
@@ -59,7 +61,9 @@ def splitting_liquid(
     if lower - MARGIN_K <= lowest_K and highest_K <= upper + MARGIN_K:
         try:
             taken = liquid(molecules, SPLIT_METHOD, "refuse")
-            return taken, [_TAKEN, *_traces(molecules)]
+            why = "the default for liquid splits near room temperature"
+            use = TableWeight(SPLIT_METHOD, 1.0, why)
+            return replace(taken, methods_used=(use,)), [_TAKEN, *_traces(molecules)]
         except PredictionError:
             pass  # a group or a parameter is missing: the weighted choice may have it
     return liquid(molecules, "auto", on_missing), []
