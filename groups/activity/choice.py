@@ -23,11 +23,6 @@ class Candidate:
     completed: tuple[Pair, ...]
     suspect: tuple[Pair, ...]
 
-    @property
-    def published(self) -> bool:
-        """Every parameter is published and fitted to measurements."""
-        return not self.missing and not self.completed
-
 
 def candidate(method: str, counts: Sequence[Mapping[int, int]]) -> Candidate:
     """What the table of a method holds for a mixture.

@@ -13,7 +13,6 @@ from groups.structure.molecule import Molecule
 # at 1 MPa for organic vapours.
 MODERATE_PRESSURE_KPA = 300.0
 HIGH_PRESSURE_KPA = 1000.0
-NEAR_CRITICAL_REDUCED_TEMPERATURE = 0.9
 # One standard deviation of ln P; common practice, no source: 15 % of a K-value changes a design,
 # 5 % is below the error of the activity coefficient beside it.
 LOW_ERROR_LN = 0.15
@@ -44,16 +43,16 @@ def critical_reasons(
     reasons = []
     for molecule, line in zip(molecules, lines, strict=True):
         critical = line.critical_temperature_K
-        if critical is None or highest_K <= NEAR_CRITICAL_REDUCED_TEMPERATURE * critical:
+        if critical is None:
             continue
         name = label(molecule)
-        if highest_K >= critical:
+        if line.supercritical(highest_K):
             text = (
                 f"{name} is above its critical temperature ({critical:.1f} K): it has no vapour "
                 "pressure there, and the continued one is only a rough stand-in."
             )
             reasons.append(Reason("supercritical_component", text, name, "low"))
-        else:
+        elif line.near_critical(highest_K):
             text = (
                 f"{name} is near its critical temperature ({critical:.1f} K); its vapour is far "
                 "from ideal and its liquid compressible."

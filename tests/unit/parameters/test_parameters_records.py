@@ -1,5 +1,6 @@
 """Each CSV stands beside a record that tells where it is from and what was changed."""
 
+import tomllib
 from importlib.resources import files
 from pathlib import Path
 
@@ -18,6 +19,13 @@ def test_every_file_of_the_folder_belongs_to_a_record() -> None:
     present = {path.name for path in TABLES.glob("*.csv")}
     assert present == recorded | WRITTEN_BY_COMMANDS
     assert {path.stem for path in TABLES.glob("*.toml")} == set(METHODS)
+
+
+def test_every_file_that_a_command_writes_has_its_record() -> None:
+    records = tomllib.loads((TABLES.parent / "derived_tables.toml").read_text(encoding="utf-8"))
+    assert {record["file"] for record in records.values()} == WRITTEN_BY_COMMANDS
+    for record in records.values():
+        assert record["what"] and record["made_by"] and record["data"] and record["licence"]
 
 
 @pytest.mark.parametrize("method", METHODS)
